@@ -1,0 +1,112 @@
+// Package operating holds what the stages do: every figure with its spread and
+// how it was worked out, and the comparisons of a figure with its limit at the
+// worst corner. One file per topology; all physics of the project is here.
+package operating
+
+import (
+	"standoff/netlist/circuit"
+	"standoff/netlist/part"
+	"standoff/netlist/stage"
+)
+
+// Corner names the board on which a value is reached: variable -> value.
+// Part values stand under the designator, device data under their symbol.
+type Corner []Setting
+
+// Setting is one variable of a corner.
+type Setting struct {
+	Name  string
+	Value float64
+	Unit  string
+}
+
+// Figure is one computed quantity over all boards. SI units without prefix.
+type Figure struct {
+	Name, Unit         string
+	Low, Nominal, High float64
+	LowAt, HighAt      Corner
+	Working            string    // in words and numbers
+	Assumed            []string  // what it rests on that nobody declared, in words
+	Mark               part.Mark // worst mark of the data that entered
+}
+
+// Bound says on which side of the limit the value has to be.
+type Bound string
+
+// The bounds.
+const (
+	Min Bound = "min" // value must not be below the limit
+	Max Bound = "max" // value must not be above the limit
+)
+
+// Comparison is a value held against its limit on the board where it comes off
+// worst. Value and Limit belong to one and the same board.
+type Comparison struct {
+	Name         string // figure name; key for rules
+	Value, Limit float64
+	LimitName    string // figure or rating that is the limit: "peak_current_required"
+	Bound        Bound
+	Unit         string
+	Corner       Corner
+	Working      string
+	// Certain is false where the verdict rests on a memory value, an assumed
+	// rating or a derating: a doubt at most. Because says which, in words.
+	Certain bool
+	Because string
+	// Inexact lists assumptions that do not weaken the verdict but belong in the message.
+	Assumed []string
+}
+
+// Fails reports whether the limit is broken.
+func (c Comparison) Fails() bool {
+	if c.Bound == Min {
+		return c.Value < c.Limit
+	}
+	return c.Value > c.Limit
+}
+
+// Tight reports whether the limit is kept by less than a quarter of itself.
+func (c Comparison) Tight() bool {
+	if c.Bound == Min {
+		return c.Value < 1.25*c.Limit
+	}
+	return c.Value > 0.75*c.Limit
+}
+
+// Unchecked is something that could not be worked out, and why.
+type Unchecked struct {
+	Rule    string // rule it keeps from being judged; "" for the whole stage
+	Because string
+}
+
+// Account is everything worked out of one stage.
+type Account struct {
+	Stage       *stage.Stage
+	Figures     []Figure // in the order of the worksheet
+	Comparisons []Comparison
+	Facts       map[string]bool // yes/no findings of the physics, by name
+	Unchecked   []Unchecked
+}
+
+// Figure returns the figure of that name.
+func (a *Account) Figure(name string) (Figure, bool) {
+	for _, f := range a.Figures {
+		if f.Name == name {
+			return f, true
+		}
+	}
+	return Figure{}, false
+}
+
+// Comparison returns the comparison of that name.
+func (a *Account) Comparison(name string) (Comparison, bool) {
+	for _, c := range a.Comparisons {
+		if c.Name == name {
+			return c, true
+		}
+	}
+	return Comparison{}, false
+}
+
+// Compute works out every stage of a circuit.
+func Compute(c *circuit.Circuit, stages []*stage.Stage) []*Account { return nil }

@@ -1,0 +1,67 @@
+// Package stage holds the topologies that a circuit contains: an anchor part
+// and the roles of the parts around it. It decides by wiring, never by names
+// or values, and computes nothing.
+package stage
+
+import "standoff/netlist/circuit"
+
+// Kind names a topology.
+type Kind string
+
+// The kinds of stages.
+const (
+	UJTOscillator       Kind = "ujt-oscillator"
+	PUTOscillator       Kind = "put-oscillator"
+	BreakoverOscillator Kind = "breakover-oscillator"
+	PhaseControl        Kind = "phase-control"
+	SCRGate             Kind = "scr-gate"
+	TriacGate           Kind = "triac-gate"
+	ClippedSupply       Kind = "clipped-supply"
+)
+
+// Role names what a part does in a stage.
+type Role string
+
+// The roles, in the order in which a worksheet lists them.
+const (
+	TimingResistor   Role = "timing-resistor"
+	TimingCapacitor  Role = "timing-capacitor"
+	CurrentSource    Role = "current-source"
+	BaseOne          Role = "base-one"
+	BaseTwo          Role = "base-two"
+	EmitterSeries    Role = "emitter-series"
+	GateDivider      Role = "gate-divider"
+	Supply           Role = "supply"
+	GateSeries       Role = "gate-series"
+	GateShunt        Role = "gate-shunt"
+	GateCoupling     Role = "gate-coupling"
+	PulseTransformer Role = "pulse-transformer"
+	Driver           Role = "driver"
+	Load             Role = "load"
+	Snubber          Role = "snubber"
+	Freewheel        Role = "freewheel"
+	Dropper          Role = "dropper"
+	Zener            Role = "zener"
+	Rectifier        Role = "rectifier"
+	Reservoir        Role = "reservoir"
+)
+
+// Roles lists all roles in worksheet order.
+var Roles = [...]Role{TimingResistor, TimingCapacitor, CurrentSource, BaseOne, BaseTwo, EmitterSeries,
+	GateDivider, Supply, GateSeries, GateShunt, GateCoupling, PulseTransformer, Driver, Load, Snubber,
+	Freewheel, Dropper, Zener, Rectifier, Reservoir}
+
+// Stage is one recognised topology.
+type Stage struct {
+	Kind   Kind
+	Anchor *circuit.Element
+	// Parts lists the elements of each role, in the order of their cards.
+	Parts map[Role][]*circuit.Element
+	// Drives lists the stages that this one fires.
+	Drives []*Stage
+	// Nodes holds the nodes that matter, by name: "emitter", "capacitor",
+	// "base1", "base2", "upper", "lower", "anode", "gate", "cathode".
+	Nodes map[string]circuit.NodeID
+	// Gap says why the stage could not be recognised in full; "" where it was.
+	Gap string
+}
