@@ -1,0 +1,250 @@
+package network
+
+import "math"
+
+// Solver solves a compiled network for the Values it is given. It is not safe
+// for use by several goroutines at once.
+type Solver struct {
+	// Values holds one value a branch: ohm, volt, ampere, or a diode's threshold.
+	Values []float64
+
+	branches []branch
+	root     []int
+	offsets  [][]offset
+	row      []int // row of a node, -1 where its potential is fixed
+	rows     int
+	touched  [][]int
+
+	matrix   []float64 // rows x rows, factorised in place
+	rhs      []float64
+	solution []float64
+	shift    []float64 // offset of each node in volt
+	diodes   []diodeState
+}
+
+// diodeState is the shape of one diode and the segment it is on.
+type diodeState struct {
+	branch                           Branch
+	slope, breakdown, breakdownSlope float64
+	segment                          int8 // -1 broken down, 0 blocking, 1 conducting
+}
+
+// leak ties every free node to the reference, in siemens, so that a node that
+// hangs free still has an answer; 1e-15 S is far below any real insulation.
+const leak = 1e-15
+
+// blocking is the conductance of a blocking diode in siemens.
+const blocking = 1e-12
+
+func (s *Solver) allocate() {
+	s.matrix = make([]float64, s.rows*s.rows)
+	s.rhs = make([]float64, s.rows)
+	s.solution = make([]float64, s.rows)
+	s.shift = make([]float64, len(s.root))
+	for i, b := range s.branches {
+		if b.kind == diode {
+			s.diodes = append(s.diodes, diodeState{branch: Branch(i), slope: 1, breakdown: math.Inf(1), breakdownSlope: 1})
+		}
+	}
+}
+
+// SetDiode shapes a diode: slope resistance in ohm when it conducts, breakdown
+// voltage (positive; +Inf for none) and the slope resistance there.
+func (s *Solver) SetDiode(b Branch, slope, breakdown, breakdownSlope float64) {
+	for i := range s.diodes {
+		if d := &s.diodes[i]; d.branch == b {
+			d.slope, d.breakdown, d.breakdownSlope = slope, breakdown, breakdownSlope
+		}
+	}
+}
+
+// IsFixed reports whether voltage sources alone set the node's potential.
+func (s *Solver) IsFixed(n Node) bool { return s.row[n] < 0 }
+
+// Solve factorises the network for the present Values and solves it. It reports
+// whether the diodes came to rest in a consistent state.
+func (s *Solver) Solve() bool {
+	s.shifts()
+	for range 4 + 8*len(s.diodes) {
+		s.assemble()
+		s.factorise()
+		copy(s.solution, s.rhs)
+		s.substitute(s.solution)
+		if !s.flip() {
+			return true
+		}
+	}
+	return len(s.diodes) == 0
+}
+
+// shifts works out how far each node lies above its root.
+func (s *Solver) shifts() {
+	for i, list := range s.offsets {
+		v := 0.0
+		for _, o := range list {
+			v += o.sign * s.Values[o.source]
+		}
+		s.shift[i] = v
+	}
+}
+
+// assemble writes the conductance matrix and the injected currents.
+func (s *Solver) assemble() {
+	clear(s.matrix)
+	clear(s.rhs)
+	for i := range s.rows {
+		s.matrix[i*s.rows+i] = leak
+	}
+	for i, b := range s.branches {
+		switch b.kind {
+		case resistor:
+			s.stamp(b, 1/s.Values[i], 0)
+		case current:
+			s.inject(b.a, -s.Values[i])
+			s.inject(b.b, s.Values[i])
+		}
+	}
+	for _, d := range s.diodes {
+		g, e := d.line(s.Values[d.branch])
+		s.stamp(s.branches[d.branch], g, e)
+	}
+}
+
+// line returns conductance and voltage offset of the segment a diode is on:
+// i = g (v - e).
+func (d *diodeState) line(threshold float64) (g, e float64) {
+	switch d.segment {
+	case 1:
+		return 1 / d.slope, threshold
+	case -1:
+		return 1 / d.breakdownSlope, -d.breakdown
+	}
+	return blocking, 0
+}
+
+// stamp adds a branch with i = g (va - vb - e).
+func (s *Solver) stamp(b branch, g, e float64) {
+	i, j := s.row[b.a], s.row[b.b]
+	if i == j && i < 0 {
+		return
+	}
+	inject := g * (s.shift[b.a] - s.shift[b.b] - e)
+	if i >= 0 {
+		s.matrix[i*s.rows+i] += g
+		s.rhs[i] -= inject
+	}
+	if j >= 0 {
+		s.matrix[j*s.rows+j] += g
+		s.rhs[j] += inject
+	}
+	if i >= 0 && j >= 0 {
+		s.matrix[i*s.rows+j] -= g
+		s.matrix[j*s.rows+i] -= g
+	}
+}
+
+func (s *Solver) inject(n Node, amperes float64) {
+	if i := s.row[n]; i >= 0 {
+		s.rhs[i] += amperes
+	}
+}
+
+// factorise eliminates in place; below the diagonal stay the factors. The
+// matrix is symmetric and positive, so no pivoting is needed.
+func (s *Solver) factorise() {
+	m := s.rows
+	for k, list := range s.touched {
+		pivot := 1 / s.matrix[k*m+k]
+		for _, i := range list {
+			factor := s.matrix[i*m+k] * pivot
+			if factor == 0 {
+				continue
+			}
+			for _, j := range list {
+				s.matrix[i*m+j] -= factor * s.matrix[k*m+j]
+			}
+			s.matrix[i*m+k] = factor
+		}
+	}
+}
+
+// substitute solves for one right side in place.
+func (s *Solver) substitute(v []float64) {
+	m := s.rows
+	for k, list := range s.touched {
+		for _, i := range list {
+			v[i] -= s.matrix[i*m+k] * v[k]
+		}
+	}
+	for k := m - 1; k >= 0; k-- {
+		sum := v[k]
+		for _, j := range s.touched[k] {
+			sum -= s.matrix[k*m+j] * v[j]
+		}
+		v[k] = sum / s.matrix[k*m+k]
+	}
+}
+
+// flip moves every diode to the segment its voltage asks for and reports
+// whether any moved. A conducting diode stays while its current is forward.
+func (s *Solver) flip() bool {
+	moved := false
+	for i := range s.diodes {
+		d := &s.diodes[i]
+		b := s.branches[d.branch]
+		v, threshold := s.Voltage(b.a)-s.Voltage(b.b), s.Values[d.branch]
+		segment := int8(0)
+		switch {
+		case v > threshold:
+			segment = 1
+		case v < -d.breakdown:
+			segment = -1
+		}
+		if segment != d.segment {
+			d.segment, moved = segment, true
+		}
+	}
+	return moved
+}
+
+// Conducts reports whether a diode conducts forward in the last solution.
+func (s *Solver) Conducts(b Branch) bool {
+	for _, d := range s.diodes {
+		if d.branch == b {
+			return d.segment == 1
+		}
+	}
+	return false
+}
+
+// Voltage returns the potential of a node against the reference.
+func (s *Solver) Voltage(n Node) float64 {
+	if i := s.row[n]; i >= 0 {
+		return s.solution[i] + s.shift[n]
+	}
+	return s.shift[n]
+}
+
+// Transfer fills ohms with the rise of every node, in volt per ampere, for a
+// current injected into node n (taken out at the reference), diodes staying on
+// their segments. ohms needs one entry a node, the reference included.
+func (s *Solver) Transfer(n Node, ohms []float64) {
+	clear(s.rhs)
+	i := s.row[n]
+	if i < 0 {
+		clear(ohms)
+		return
+	}
+	s.rhs[i] = 1
+	s.substitute(s.rhs)
+	for node := range ohms {
+		if r := s.row[node]; r >= 0 {
+			ohms[node] = s.rhs[r]
+		} else {
+			ohms[node] = 0
+		}
+	}
+}
+
+// Nodes returns how many nodes there are, the reference included.
+func (s *Solver) Nodes() int { return len(s.root) }
