@@ -192,8 +192,9 @@ func (a *Area) HasNet(w *Wiring, n NodeID) bool { return a.netSet[w.Net(n)] }
 func (a *Area) Has(e *Element) bool { return a.partSet[e] }
 
 // Walk goes out from the nets in from, through every two-terminal element for
-// which through says yes, and does not go on from nets for which stop says yes
-// (a starting net is always left). Nets where it stopped are part of the area.
+// which through says yes, and does not go on from nets for which stop says yes.
+// A starting net is left whatever stop says, unless voltage sources fix it: a
+// rail leads everywhere. Nets where it stopped are part of the area.
 func (w *Wiring) Walk(from []NodeID, through func(*Element) bool, stop func(NodeID) bool) *Area {
 	area := &Area{netSet: map[NodeID]bool{}, partSet: map[*Element]bool{}}
 	var queue []NodeID
@@ -201,7 +202,9 @@ func (w *Wiring) Walk(from []NodeID, through func(*Element) bool, stop func(Node
 		if n = w.Net(n); !area.netSet[n] {
 			area.netSet[n] = true
 			area.Nets = append(area.Nets, n)
-			queue = append(queue, n)
+			if !w.fixed[n] {
+				queue = append(queue, n)
+			}
 		}
 	}
 	for len(queue) > 0 {

@@ -18,6 +18,9 @@ type Variable struct {
 type Extreme struct {
 	Low, Nominal, High float64
 	LowAt, HighAt      []float64
+	// Moves tells for each variable whether taking it from end to end around the
+	// nominal point moved the output.
+	Moves []bool
 }
 
 // Function computes all outputs y at the point x. It must not keep either slice.
@@ -60,6 +63,7 @@ type search struct {
 	f       Function
 	x, y    []float64
 	nominal []float64
+	moves   []bool // output j, variable i at j*len(box)+i
 	best    []best // 2n: low of output j at 2j, high at 2j+1
 }
 
@@ -74,6 +78,7 @@ func newSearch(box []Variable, n int, f Function) *search {
 	s := &search{box: box, n: n, f: f}
 	s.x, s.y = make([]float64, len(box)), make([]float64, n)
 	s.best = make([]best, 2*n)
+	s.moves = make([]bool, n*len(box))
 	backing := make([]float64, 2*n*len(box))
 	for i := range s.best {
 		s.best[i].at, backing = backing[:len(box):len(box)], backing[len(box):]
@@ -133,6 +138,7 @@ func (s *search) start() {
 		s.x[i] = v.High
 		s.try()
 		for j := range s.y {
+			s.moves[j*len(s.box)+i] = s.y[j] != lowY[j] || s.y[j] != s.nominal[j]
 			switch {
 			case s.y[j] > lowY[j]:
 				sign[k*s.n+j] = 1
@@ -264,7 +270,7 @@ func (s *search) extremes() []Extreme {
 	for j := range result {
 		low, high := s.best[2*j], s.best[2*j+1]
 		result[j] = Extreme{Low: low.value, Nominal: s.nominal[j], High: high.value,
-			LowAt: low.at, HighAt: high.at}
+			LowAt: low.at, HighAt: high.at, Moves: s.moves[j*len(s.box) : (j+1)*len(s.box)]}
 	}
 	return result
 }

@@ -107,6 +107,3 @@ func (a *Account) Comparison(name string) (Comparison, bool) {
 	}
 	return Comparison{}, false
 }
-
-// Compute works out every stage of a circuit.
-func Compute(c *circuit.Circuit, stages []*stage.Stage) []*Account { return nil }

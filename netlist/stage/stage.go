@@ -64,4 +64,6 @@ type Stage struct {
 	Nodes map[string]circuit.NodeID
 	// Gap says why the stage could not be recognised in full; "" where it was.
 	Gap string
+	// Order is set where terminal order and wiring do not agree.
+	Order *OrderNote
 }

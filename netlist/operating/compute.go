@@ -1,0 +1,143 @@
+package operating
+
+import (
+	"standoff/netlist/circuit"
+	"standoff/netlist/stage"
+)
+
+// Compute works out every stage of a circuit, in their order. A stage that
+// cannot be worked out has an account all the same, which says why.
+func Compute(c *circuit.Circuit, stages []*stage.Stage) []*Account {
+	if len(stages) == 0 {
+		return nil
+	}
+	w := circuit.NewWiring(c)
+	accounts := make([]*Account, len(stages))
+	for i, s := range stages {
+		accounts[i] = account(w, s, stages)
+	}
+	return accounts
+}
+
+func account(w *circuit.Wiring, s *stage.Stage, stages []*stage.Stage) *Account {
+	a := &Account{Stage: s, Facts: map[string]bool{}}
+	if s.Gap != "" {
+		a.Unchecked = append(a.Unchecked, Unchecked{Because: "the stage is not complete: " + s.Gap})
+		return a
+	}
+	switch s.Kind {
+	case stage.UJTOscillator:
+		a.oscillator(w, s)
+	case stage.SCRGate:
+		a.gate(w, s, stages)
+	}
+	return a
+}
+
+// cannot notes that the whole stage could not be worked out.
+func (a *Account) cannot(err error) {
+	a.Unchecked = append(a.Unchecked, Unchecked{Because: err.Error()})
+}
+
+// oscillator fills the account of a unijunction oscillator.
+func (a *Account) oscillator(w *circuit.Wiring, s *stage.Stage) {
+	m, err := newUJT(w, s)
+	if err != nil {
+		a.cannot(err)
+		return
+	}
+	a.Figures, a.Comparisons = m.solve()
+	a.drift(drifting{&m.model, m.frequency}, s)
+	a.baseTwo(m)
+	a.Unchecked = append(a.Unchecked, m.unchecked()...)
+	a.Facts["base-one-missing"] = len(s.Parts[stage.BaseOne]) == 0 && !w.IsFixed(s.Nodes["base1"])
+}
+
+// drift adds the drift over the ambient range and what it is held against.
+func (a *Account) drift(d drifting, s *stage.Stage) {
+	if d.span() == 0 {
+		return
+	}
+	drift := d.figure()
+	a.Figures = append(a.Figures, drift)
+	t := s.Anchor.Intent
+	a.Comparisons = append(a.Comparisons, d.comparisons(drift, frequencyTarget(t.Frequency, t.Period))...)
+}
+
+// driver returns the stage that fires a gate stage, nil where none does.
+func driver(s *stage.Stage, stages []*stage.Stage) *stage.Stage {
+	for _, d := range stages {
+		for _, g := range d.Drives {
+			if g == s {
+				return d
+			}
+		}
+	}
+	return nil
+}
+
+// gate fills the account of a gate stage.
+func (a *Account) gate(w *circuit.Wiring, s *stage.Stage, stages []*stage.Stage) {
+	d := driver(s, stages)
+	if d == nil {
+		a.idleGate(w, s)
+		return
+	}
+	m, err := newSCRGate(w, s, d)
+	if err != nil {
+		a.cannot(err)
+		return
+	}
+	load, err := newLoad(m.bench, s)
+	if err != nil {
+		a.Unchecked = append(a.Unchecked, Unchecked{Rule: "latching-too-slow", Because: "the anode circuit: " + err.Error()})
+	} else {
+		m.withLoad(load)
+	}
+	a.Figures, a.Comparisons = m.solve()
+	a.Comparisons = severest(a.Comparisons)
+	a.Unchecked = append(a.Unchecked, m.unchecked()...)
+	m.evaluate(m.nominal())
+	a.Facts["gate-return-missing"] = m.g.shunt > noPath
+	a.Facts["gate-polarity"] = m.g.open <= 0
+}
+
+// withLoad adds the anode circuit to a gate stage.
+func (m *scrGate) withLoad(l *loadCircuit) {
+	gate := m.evaluate
+	m.evaluate = func(x []float64) {
+		gate(x)
+		l.at(x)
+	}
+	l.figures(&m.model, m.scr)
+	if latch, mark, ok := m.scr.Limit("il"); ok && l.hertz == 0 && m.need.ok {
+		m.compare(contest{name: "latching_time", limitName: "gate_pulse_width", unit: "s", bound: Max,
+			value: func() float64 { return l.latching(latch) }, limit: func() float64 {
+				if m.g.sheet.width == 0 && l.latching(latch) == 0 {
+					return 1 // a pulse that does not fire is another rule's matter
+				}
+				return max(m.g.sheet.width, 1e-12)
+			}, limitMark: mark, because: m.smallNote(""), working: func() string {
+				return "load of " + show(l.resistance, "ohm") + " and " + show(l.inductance, "H") + " on " + show(l.block, "V")
+			}})
+	}
+}
+
+// severest keeps one comparison of each name: the first that fails (they are
+// ordered from the certain to the assumed), else the one nearest to its limit.
+func severest(list []Comparison) []Comparison {
+	var kept []Comparison
+	at := map[string]int{}
+	for _, c := range list {
+		i, ok := at[c.Name]
+		if !ok {
+			at[c.Name] = len(kept)
+			kept = append(kept, c)
+			continue
+		}
+		if known := kept[i]; !known.Fails() && (c.Fails() || c.Tight() && !known.Tight()) {
+			kept[i] = c
+		}
+	}
+	return kept
+}

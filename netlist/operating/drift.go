@@ -1,0 +1,158 @@
+package operating
+
+import (
+	"fmt"
+	"math"
+
+	"standoff/netlist/numeric"
+	"standoff/netlist/quantity"
+)
+
+// driftGrid is at how many temperatures, ends included, a drift is sampled; a
+// parabola through the outermost sample and its neighbours does the rest.
+const driftGrid = 7
+
+// drifting is what a stage needs to have its drift worked out: the point is
+// loaded, the frequency read.
+type drifting struct {
+	*model
+	frequency func() float64
+}
+
+// over returns the least and greatest frequency over the ambient range with
+// everything else as in x, which is left with its ambient changed.
+func (d drifting) over(x []float64) (low, high float64) {
+	a := d.box[d.ambient]
+	var f [driftGrid]float64
+	low, high = math.Inf(1), math.Inf(-1)
+	for i := range f {
+		x[d.ambient] = a.Low + (a.High-a.Low)*float64(i)/(driftGrid-1)
+		d.evaluate(x)
+		f[i] = d.frequency()
+		low, high = min(low, f[i]), max(high, f[i])
+	}
+	for i := 1; i < driftGrid-1; i++ {
+		if v, ok := vertex(f[i-1], f[i], f[i+1]); ok {
+			low, high = min(low, v), max(high, v)
+		}
+	}
+	return low, high
+}
+
+// vertex returns the extreme of the parabola through three equally spaced
+// values where it lies between the outer two.
+func vertex(a, b, c float64) (float64, bool) {
+	bend := a - 2*b + c
+	if bend == 0 || math.IsInf(bend, 0) || bend != bend {
+		return 0, false
+	}
+	t := (a - c) / (2 * bend)
+	if t <= -1 || t >= 1 {
+		return 0, false
+	}
+	return b - (a-c)*t/4, true
+}
+
+// relative returns the drift over the ambient range relative to the frequency
+// at the nominal ambient; 0 where the stage does not run.
+func (d drifting) relative(x []float64) float64 {
+	low, high := d.over(x)
+	x[d.ambient] = d.box[d.ambient].Nominal
+	d.evaluate(x)
+	if f := d.frequency(); f > 0 {
+		return (high - low) / f
+	}
+	return 0
+}
+
+// span returns the width of the ambient range in K.
+func (d drifting) span() float64 { return d.box[d.ambient].High - d.box[d.ambient].Low }
+
+// figure returns frequency_drift with its spread.
+func (d drifting) figure() Figure {
+	box := append([]numeric.Variable(nil), d.box...)
+	a := box[d.ambient].Nominal
+	box[d.ambient] = numeric.Variable{Low: a, Nominal: a, High: a}
+	point := make([]float64, len(box))
+	e := numeric.Extremes(box, 1, func(x, y []float64) {
+		copy(point, x)
+		y[0] = d.relative(point)
+	})[0]
+	return Figure{Name: "frequency_drift", Low: e.Low, Nominal: e.Nominal, High: e.High,
+		LowAt: d.corner(e.LowAt, e.Moves), HighAt: d.corner(e.HighAt, e.Moves), Assumed: d.assumptions(e.Moves),
+		Mark: d.mark(e.Moves), Working: fmt.Sprintf("(greatest - least frequency)/frequency over %s .. %s, all else unchanged",
+			show(d.box[d.ambient].Low, "deg C"), show(d.box[d.ambient].High, "deg C"))}
+}
+
+// driftHabit is the drift per 10 K above which a timing stage is called
+// drifting (common practice, no source).
+const driftHabit = 0.01
+
+// comparisons returns what the drift is held against: the habit, and the
+// declared target with temperature alone moving the nominal board.
+func (d drifting) comparisons(drift Figure, target *quantity.Spread) []Comparison {
+	list := []Comparison{{Name: "frequency_drift_per_10k", Value: drift.High * 10 / d.span(), Limit: driftHabit,
+		LimitName: "habit", Bound: Max, Corner: drift.HighAt, Working: drift.Working, Assumed: drift.Assumed,
+		Because: "1 % per 10 K is a habit, not a rating"}}
+	if target == nil {
+		return list
+	}
+	x := d.nominal()
+	low, high := d.over(x)
+	add := func(name string, bound Bound, value, limit float64) {
+		list = append(list, Comparison{Name: name, Value: value, Limit: limit, LimitName: "target", Bound: bound,
+			Unit: "Hz", Working: drift.Working + " (nominal board)", Certain: true})
+	}
+	add("frequency_drift_lowest", Min, low, target.Low)
+	add("frequency_drift_highest", Max, high, target.High)
+	return list
+}
+
+// nominal returns the nominal point.
+func (m *model) nominal() []float64 {
+	x := make([]float64, len(m.box))
+	for i, v := range m.box {
+		x[i] = v.Nominal
+	}
+	return x
+}
+
+// frequencyTarget returns the declared target as a frequency, nil where there
+// is none.
+func frequencyTarget(frequency, period *quantity.Spread) *quantity.Spread {
+	switch {
+	case frequency != nil:
+		return frequency
+	case period != nil && period.Low > 0:
+		return &quantity.Spread{Low: 1 / period.High, High: 1 / period.Low}
+	}
+	return nil
+}
+
+// baseTwo adds what the base-two resistor, or its absence, costs: the drift of
+// the transistor alone on the nominal board, board parts taken as free of drift.
+func (a *Account) baseTwo(m *ujtModel) {
+	d := drifting{&m.model, m.frequency}
+	if m.v.tc < 0 || d.span() == 0 || m.interbase() <= 0 {
+		return
+	}
+	m.ignoreTempco = true
+	x := m.nominal()
+	low, high := d.over(x)
+	m.ignoreTempco = false
+	m.evaluate(m.nominal())
+	f := m.frequency()
+	if f <= 0 {
+		return
+	}
+	a.Comparisons = append(a.Comparisons, Comparison{Name: "base_two_drift", Value: (high - low) / f * 10 / d.span(),
+		Limit: driftHabit, LimitName: "habit", Bound: Max, Certain: false,
+		Because: "1 % per 10 K is a habit, not a rating",
+		Working: fmt.Sprintf("frequency of the nominal board from %s to %s over %s .. %s", show(low, "Hz"), show(high, "Hz"),
+			show(d.box[d.ambient].Low, "deg C"), show(d.box[d.ambient].High, "deg C"))})
+	a.Facts["base-two-missing"] = len(m.stage.Parts["base-two"]) == 0
+	t := m.stage.Anchor.Intent
+	if target := frequencyTarget(t.Frequency, t.Period); target != nil {
+		a.Facts["base-two-drift-breaks-target"] = low < target.Low || high > target.High
+	}
+}

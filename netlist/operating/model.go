@@ -1,0 +1,251 @@
+package operating
+
+import (
+	"math"
+
+	"standoff/netlist/numeric"
+	"standoff/netlist/part"
+)
+
+// model is a stage ready to be computed: variables, a function that works the
+// stage out at one point of the box, and what is read off afterwards.
+type model struct {
+	*bench
+	// evaluate works the stage out at x; outputs and contests read the result
+	// through their closures.
+	evaluate func(x []float64)
+	outputs  []output
+	contests []contest
+}
+
+// output is one figure to be.
+type output struct {
+	name, unit string
+	of         func() float64
+	working    func() string // at the last evaluated point
+}
+
+// contest is one comparison to be.
+type contest struct {
+	name, limitName, unit string
+	bound                 Bound
+	value, limit          func() float64
+	// limitMark is the trust in the limit; because says what else makes the
+	// verdict a doubt at most.
+	limitMark part.Mark
+	because   string
+	working   func() string
+}
+
+// ratio is what is driven to its extreme: value over limit.
+func (c *contest) ratio() float64 {
+	value, limit := c.value(), c.limit()
+	if limit <= 0 {
+		return math.Inf(1)
+	}
+	return value / limit
+}
+
+// figure appends an output.
+func (m *model) figure(name, unit string, of func() float64, working func() string) {
+	m.outputs = append(m.outputs, output{name, unit, of, working})
+}
+
+// compare appends a contest.
+func (m *model) compare(c contest) { m.contests = append(m.contests, c) }
+
+// solve works out every output and contest over the box.
+func (m *model) solve() ([]Figure, []Comparison) {
+	n := len(m.outputs)
+	extremes := numeric.Extremes(m.box, n+len(m.contests), m.function)
+	nominal := make([]float64, len(m.box))
+	for i, v := range m.box {
+		nominal[i] = v.Nominal
+	}
+	m.evaluate(nominal)
+	figures := make([]Figure, 0, n)
+	for j, o := range m.outputs {
+		e := extremes[j]
+		if math.IsNaN(e.Nominal) {
+			continue
+		}
+		figures = append(figures, Figure{Name: o.name, Unit: o.unit, Low: e.Low, Nominal: e.Nominal, High: e.High,
+			LowAt: m.corner(e.LowAt, e.Moves), HighAt: m.corner(e.HighAt, e.Moves),
+			Working: o.working(), Assumed: m.assumptions(e.Moves), Mark: m.mark(e.Moves)})
+	}
+	var comparisons []Comparison
+	for k := range m.contests {
+		if c, ok := m.decide(k, extremes[n+k]); ok {
+			comparisons = append(comparisons, c)
+		}
+	}
+	return figures, comparisons
+}
+
+// function feeds the search.
+func (m *model) function(x, y []float64) {
+	m.evaluate(x)
+	for j := range m.outputs {
+		y[j] = m.outputs[j].of()
+	}
+	for k := range m.contests {
+		y[len(m.outputs)+k] = m.contests[k].ratio()
+	}
+}
+
+// decide turns the worst point of a contest into a comparison.
+func (m *model) decide(k int, e numeric.Extreme) (Comparison, bool) {
+	c := &m.contests[k]
+	at := e.HighAt
+	if c.bound == Min {
+		at = e.LowAt
+	}
+	if math.IsNaN(e.Low) {
+		return Comparison{}, false
+	}
+	m.evaluate(at)
+	result := Comparison{Name: c.name, Value: c.value(), Limit: c.limit(), LimitName: c.limitName,
+		Bound: c.bound, Unit: c.unit, Corner: m.corner(at, e.Moves), Working: c.working(), Certain: true,
+		Assumed: m.assumptions(e.Moves)}
+	if result.Fails() {
+		result.Certain, result.Because = m.certainty(k, at)
+	}
+	return result, true
+}
+
+// certainty reports whether a failing contest fails without anything from
+// memory and whatever the assumed values really are.
+func (m *model) certainty(k int, at []float64) (bool, string) {
+	c := &m.contests[k]
+	if c.because != "" {
+		return false, c.because
+	}
+	if c.limitMark >= part.Memory {
+		return false, "the limit is " + markWords(c.limitMark)
+	}
+	if note := m.memoryIn(k, at); note != "" {
+		return false, note
+	}
+	box, note := m.favourable(k, at)
+	if note == "" {
+		return true, ""
+	}
+	e := numeric.Extremes(box, 1, func(x, y []float64) {
+		m.evaluate(x)
+		y[0] = c.ratio()
+	})[0]
+	if c.bound == Min && e.Low < 1 || c.bound == Max && e.High > 1 {
+		return true, ""
+	}
+	return false, note
+}
+
+func markWords(mark part.Mark) string {
+	if mark == part.Memory {
+		return "from memory"
+	}
+	return "assumed"
+}
+
+// memoryIn returns the note of a variable from memory that moves a contest at
+// a point, "" where there is none.
+func (m *model) memoryIn(k int, at []float64) string {
+	x := append([]float64(nil), at...)
+	m.evaluate(x)
+	here := m.contests[k].ratio()
+	for i, t := range m.traits {
+		if !t.memory {
+			continue
+		}
+		x[i] = at[i] * 1.01
+		m.evaluate(x)
+		if m.contests[k].ratio() != here {
+			return t.note
+		}
+		x[i] = at[i]
+	}
+	return ""
+}
+
+// favourable returns the box with every assumed value fixed at the end that
+// suits a contest best (or at its published end), and the notes of those that
+// matter.
+func (m *model) favourable(k int, at []float64) ([]numeric.Variable, string) {
+	c := &m.contests[k]
+	box := append([]numeric.Variable(nil), m.box...)
+	x := append([]float64(nil), at...)
+	note := ""
+	for i, t := range m.traits {
+		if !t.doubtLow && !t.doubtHigh {
+			continue
+		}
+		ratio := func(v float64) float64 {
+			x[i] = v
+			m.evaluate(x)
+			return c.ratio()
+		}
+		low, high := ratio(box[i].Low), ratio(box[i].High)
+		best := box[i].High
+		if t.doubtLow && t.doubtHigh && (low > high) == (c.bound == Min) {
+			best = box[i].Low
+		} else if !t.doubtLow {
+			best = box[i].Low
+		}
+		if low != high {
+			note = join(note, t.note)
+		}
+		box[i] = numeric.Variable{Low: best, Nominal: best, High: best}
+		x[i] = best
+	}
+	return box, note
+}
+
+func join(a, b string) string {
+	if a == "" {
+		return b
+	}
+	return a + "; " + b
+}
+
+// corner names the variables that matter at a point.
+func (m *model) corner(at []float64, moves []bool) Corner {
+	count := 0
+	for i := range at {
+		if moves[i] {
+			count++
+		}
+	}
+	corner := make(Corner, 0, count)
+	for i, v := range at {
+		if moves[i] {
+			corner = append(corner, Setting{m.traits[i].name, v, m.traits[i].unit})
+		}
+	}
+	return corner
+}
+
+// assumptions lists the notes of the variables that matter.
+func (m *model) assumptions(moves []bool) []string {
+	var list []string
+	for i, t := range m.traits {
+		if moves[i] && t.note != "" {
+			list = append(list, t.note)
+		}
+	}
+	return list
+}
+
+// mark returns the worst trust among the variables that matter.
+func (m *model) mark(moves []bool) part.Mark {
+	mark := part.Declared
+	for i, t := range m.traits {
+		switch {
+		case !moves[i]:
+		case t.doubtLow || t.doubtHigh:
+			return part.Assumed
+		case t.memory:
+			mark = part.Memory
+		}
+	}
+	return mark
+}

@@ -1,0 +1,237 @@
+package operating
+
+import (
+	"fmt"
+	"math"
+
+	"standoff/netlist/circuit"
+	"standoff/netlist/network"
+	"standoff/netlist/part"
+	"standoff/netlist/stage"
+)
+
+// scrGate is a thyristor's gate fired by a unijunction oscillator.
+//
+// Model. At the end of the ramp the timing capacitor, charged to V_P, discharges
+// through the on-resistance of the emitter into everything that hangs on base
+// one. The gate is held against its must-trigger point: it is taken as a clamp at
+// the greatest trigger voltage of the coldest ambient, and the current that the
+// network then drives into it counts (load line through the corner of the
+// must-trigger box; Teccor AN1008, Dynex AN4840). While the clamp holds, the
+// network is linear and all currents fall with one time constant. Diodes in the
+// gate lead are piecewise linear. Units SI.
+type scrGate struct {
+	*ujtModel
+	gateStage *stage.Stage
+	scr       *part.Ratings
+	drive     *mesh
+	source    network.Branch // voltage of the capacitor over the lower rail
+	on        network.Branch // resistance of the emitter path
+	gate      network.Branch // the gate as a clamp
+	shunts    []slot         // resistors straight across the gate
+	need      trigger
+	g         gateState
+	ohms      []float64
+	ohmsBack  []float64
+}
+
+// trigger is what the gate asks for at the coldest ambient.
+type trigger struct {
+	amperes, volts         float64 // from the sheet alone
+	coldAmperes, coldVolts float64 // with the assumed rise where the sheet has no cold figure
+	amperesMark, voltsMark part.Mark
+	assumed                string // what was assumed for the cold, "" where nothing was
+	ok                     bool
+}
+
+// gateState is the gate worked out at one point.
+type gateState struct {
+	scale          float64 // allowance for a capacitor smaller than the maker's
+	open           float64 // pulse with the gate open
+	short          float64 // current into a shorted gate
+	sheet, cold    drive   // against the sheet's and the assumed cold trigger point
+	standby, shunt float64
+}
+
+// drive is the pulse against one trigger point.
+type drive struct {
+	current  float64 // into gate and gate resistor while the gate is at its trigger voltage
+	required float64
+	width    float64 // time above required
+}
+
+// gateSlope is the slope resistance of the gate clamp in ohm, small against any
+// resistance that feeds a gate.
+const gateSlope = 0.01
+
+// never is a clamp voltage that is never reached.
+const never = 1e6
+
+// newSCRGate builds the model of a gate stage whose driver can be computed.
+func newSCRGate(w *circuit.Wiring, s *stage.Stage, driver *stage.Stage) (*scrGate, error) {
+	if s.Anchor.Ratings == nil {
+		return nil, fmt.Errorf("nothing is known of the part %s", partName(s.Anchor))
+	}
+	u, err := newUJT(w, driver)
+	if err != nil {
+		return nil, fmt.Errorf("its driver %s cannot be computed: %w", driver.Anchor.Designator, err)
+	}
+	u.outputs, u.contests = nil, nil
+	m := &scrGate{ujtModel: u, gateStage: s, scr: s.Anchor.Ratings}
+	m.evaluate = m.gateAt
+	if len(s.Parts[stage.GateCoupling]) > 0 {
+		return nil, fmt.Errorf("a capacitor couples its gate; coupled gates are not computed yet")
+	}
+	if err := m.driveNetwork(); err != nil {
+		return nil, err
+	}
+	m.need = newTrigger(m.scr, w.Circuit.Board.Ambient.Low)
+	m.gateFigures()
+	m.gateLimits()
+	return m, nil
+}
+
+// driveNetwork readies the network of the discharge.
+func (m *scrGate) driveNetwork() error {
+	n, g := m.stage.Nodes, m.gateStage.Nodes
+	keepOff := append(append([]*circuit.Element{}, m.stage.Parts[stage.TimingResistor]...), m.stage.Parts[stage.BaseTwo]...)
+	keepOff = append(keepOff, m.gateStage.Parts[stage.Load]...)
+	var err error
+	m.drive, err = newMesh(m.bench, []circuit.NodeID{n["base1"], n["lower"], g["gate"], g["cathode"]},
+		func(e *circuit.Element) bool { return contains(keepOff, e) })
+	if err != nil {
+		return err
+	}
+	net := &m.drive.net
+	charged := net.Node()
+	m.source = net.Voltage(charged, m.drive.node(n["lower"]))
+	m.on = net.Resistor(charged, m.drive.node(n["base1"]))
+	m.gate = net.Diode(m.drive.node(g["gate"]), m.drive.node(g["cathode"]))
+	if err := m.drive.compile(); err != nil {
+		return err
+	}
+	m.drive.solver.SetDiode(m.gate, gateSlope, math.Inf(1), 1)
+	for _, e := range m.w.Between(g["gate"], g["cathode"]) {
+		if e.Kind == circuit.Resistor {
+			m.shunts = append(m.shunts, m.element(e))
+		}
+	}
+	m.ohms = make([]float64, m.standing.solver.Nodes())
+	m.ohmsBack = make([]float64, m.standing.solver.Nodes())
+	return nil
+}
+
+// gateAt works oscillator and gate out at one point.
+func (m *scrGate) gateAt(x []float64) {
+	m.at(x)
+	g := &m.g
+	m.drive.load(x)
+	v := m.drive.solver.Values
+	v[m.on] = m.s.on + m.s.re + 1e-6
+	g.scale = m.smallCapacitor()
+	g.open, _, _ = m.pulseAt(m.s.vp, never)
+	_, g.short, _ = m.pulseAt(m.s.vp, 0)
+	shunt := 0.0
+	for _, s := range m.shunts {
+		shunt += 1 / m.value(s, x)
+	}
+	g.sheet = m.against(m.need.amperes, m.need.volts, shunt)
+	if m.need.assumed != "" {
+		g.cold = m.against(m.need.coldAmperes, m.need.coldVolts, shunt)
+	}
+	m.quiet()
+}
+
+// pulseAt solves the drive network with the capacitor at volts and the gate
+// clamped: voltage across the gate, current into it, current out of the capacitor.
+func (m *scrGate) pulseAt(volts, clamp float64) (across, into, out float64) {
+	s := m.drive.solver
+	s.Values[m.source], s.Values[m.gate] = volts, clamp
+	s.Solve()
+	n := m.stage.Nodes
+	across = m.drive.volts(m.gateStage.Nodes["gate"]) - m.drive.volts(m.gateStage.Nodes["cathode"])
+	into = max(across-clamp, 0) / gateSlope
+	out = (volts + m.drive.volts(n["lower"]) - m.drive.volts(n["base1"])) / s.Values[m.on]
+	return across, into, out
+}
+
+// smallCapacitor returns the share of the static pulse that is left with a
+// capacitor smaller than the one with which V_OB1 is specified. The emitter
+// then falls more slowly than the capacitor could: fall time (2 + 5 C) V_E(sat)
+// us with C in uF (GE Transistor Manual, from memory), so that the current goes
+// as C/(2 + 5 C).
+func (m *scrGate) smallCapacitor() float64 {
+	per := func(c float64) float64 { return c * 1e6 / (2 + 5*c*1e6) }
+	return min(1, per(m.s.c)/per(m.condition("vob1_c", 0.2e-6)))
+}
+
+// against works out the pulse against a trigger point. Current and time follow
+// from two solutions on the same straight line.
+func (m *scrGate) against(amperes, volts, shunt float64) drive {
+	g := &m.g
+	d := drive{required: amperes + volts*shunt}
+	_, into, out := m.pulseAt(m.s.vp, volts)
+	if into <= 0 {
+		d.current = max(g.open, 0) * shunt * g.scale
+		return d
+	}
+	d.current = (into + volts*shunt) * g.scale
+	second := m.s.vp * 0.98
+	_, into2, out2 := m.pulseAt(second, volts)
+	slopeInto, slopeOut := (into-into2)/(m.s.vp-second), (out-out2)/(m.s.vp-second)
+	if slopeInto <= 0 || slopeOut <= 0 || d.current < d.required {
+		return d
+	}
+	last := max(m.s.vp-(into-amperes/g.scale)/slopeInto, m.s.vv)
+	end := out - slopeOut*(m.s.vp-last)
+	if end <= 0 {
+		return d
+	}
+	d.width = max(m.s.c/slopeOut*math.Log(out/end), 0)
+	return d
+}
+
+// quiet works out the gate before the pulse: voltage and dc resistance to the
+// cathode with the emitter open.
+func (m *scrGate) quiet() {
+	n := m.gateStage.Nodes
+	gate, cathode := m.standing.node(n["gate"]), m.standing.node(n["cathode"])
+	solver := m.standing.solver
+	m.g.standby = solver.Voltage(gate) - solver.Voltage(cathode)
+	solver.Transfer(gate, m.ohms)
+	solver.Transfer(cathode, m.ohmsBack)
+	m.g.shunt = m.ohms[gate] - m.ohms[cathode] - m.ohmsBack[gate] + m.ohmsBack[cathode]
+}
+
+// newTrigger takes the trigger point of the coldest ambient from the sheet.
+// Between 25 deg C and the sheet's cold temperature current and voltage are
+// drawn straight, which lies above the makers' curves (they bend downwards).
+// Where the sheet has no cold figure the sheet's 25 deg C value counts, and
+// besides it the rise that other makers guarantee at -40 deg C: current times
+// 2.5, voltage times 1.67 (largest ratios seen: C106, 2N6504; 2N6400, TIC126).
+func newTrigger(r *part.Ratings, coldest float64) trigger {
+	var t trigger
+	var haveVolts bool
+	t.amperes, t.amperesMark, t.ok = r.Limit("igt")
+	t.volts, t.voltsMark, haveVolts = r.Limit("vgt")
+	t.ok = t.ok && haveVolts
+	cold, ok := r.At("t_cold")
+	if !ok {
+		cold = -40
+	}
+	share := min(max((25-coldest)/(25-cold), 0), 1)
+	t.coldAmperes, t.coldVolts = t.amperes*(1+1.5*share), t.volts*(1+0.67*share)
+	if v, mark, ok := r.Limit("igt_cold"); ok {
+		t.amperes += share * (v - t.amperes)
+		t.coldAmperes, t.amperesMark = t.amperes, max(mark, t.amperesMark)
+	} else if share > 0 {
+		t.assumed = "the sheet has no cold trigger current; 2.5 times at -40 deg C assumed"
+	}
+	if v, mark, ok := r.Limit("vgt_cold"); ok {
+		t.volts += share * (v - t.volts)
+		t.coldVolts, t.voltsMark = t.volts, max(mark, t.voltsMark)
+	} else if share > 0 {
+		t.assumed = join(t.assumed, "the sheet has no cold trigger voltage; 1.67 times at -40 deg C assumed")
+	}
+	return t
+}

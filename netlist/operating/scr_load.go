@@ -1,0 +1,154 @@
+package operating
+
+import (
+	"fmt"
+	"math"
+
+	"standoff/netlist/circuit"
+	"standoff/netlist/part"
+	"standoff/netlist/stage"
+)
+
+// loadCircuit is the anode circuit of a thyristor: what it has to block and what
+// flows when it conducts, its own drop neglected (upper bound of the current).
+// Sine sources stand at their crest; currents of sine sources are those of full
+// conduction with a resistive load. Units SI.
+type loadCircuit struct {
+	bench          *bench
+	stage          *stage.Stage
+	mesh           *mesh
+	anode, cathode circuit.NodeID
+	coils          []slot
+	hertz          float64 // 0 for dc
+	ohms, back     []float64
+
+	block, reverse, resistance, inductance float64
+	bothHalves                             bool
+}
+
+// newLoad builds the anode circuit. An error says why it cannot be computed.
+func newLoad(b *bench, s *stage.Stage) (*loadCircuit, error) {
+	l := &loadCircuit{bench: b, stage: s, anode: s.Nodes["anode"], cathode: s.Nodes["cathode"]}
+	gate := s.Nodes["gate"]
+	var err error
+	l.mesh, err = newCrestMesh(b, []circuit.NodeID{l.anode, l.cathode}, func(e *circuit.Element) bool {
+		return b.w.Net(e.Nodes[0]) == gate || b.w.Net(e.Nodes[1]) == gate
+	})
+	if err != nil {
+		return nil, err
+	}
+	if err := l.mesh.compile(); err != nil {
+		return nil, err
+	}
+	for e := range l.mesh.have {
+		if e.Wave.Kind == "sin" && len(e.Wave.Args) > 2 {
+			l.hertz = max(l.hertz, e.Wave.Args[2])
+		}
+	}
+	for _, e := range s.Parts[stage.Load] {
+		if e.Kind == circuit.Inductor && e.HasValue {
+			l.coils = append(l.coils, b.element(e))
+		}
+	}
+	l.ohms = make([]float64, l.mesh.solver.Nodes())
+	l.back = make([]float64, l.mesh.solver.Nodes())
+	return l, nil
+}
+
+// at works the anode circuit out at one point.
+func (l *loadCircuit) at(x []float64) {
+	m := l.mesh
+	m.polarity = 1
+	m.load(x)
+	m.solver.Solve()
+	a, k := m.node(l.anode), m.node(l.cathode)
+	l.block = m.solver.Voltage(a) - m.solver.Voltage(k)
+	m.solver.Transfer(a, l.ohms)
+	m.solver.Transfer(k, l.back)
+	l.resistance = l.ohms[a] - l.ohms[k] - l.back[a] + l.back[k]
+	l.inductance = 0
+	for _, c := range l.coils {
+		l.inductance += l.bench.value(c, x)
+	}
+	l.reverse, l.bothHalves = 0, false
+	if l.hertz > 0 {
+		m.polarity = -1
+		m.load(x)
+		m.solver.Solve()
+		other := m.solver.Voltage(a) - m.solver.Voltage(k)
+		l.bothHalves = other > 0 && l.block > 0
+		l.block, l.reverse = max(l.block, other), max(-min(l.block, other), 0)
+	}
+}
+
+// figures adds what a worksheet shows of the anode circuit.
+func (l *loadCircuit) figures(m *model, r *part.Ratings) {
+	m.figure("blocking_voltage", "V", func() float64 { return max(l.block, l.reverse) }, func() string {
+		return "greatest voltage between anode and cathode while the thyristor is off"
+	})
+	if v, _, ok := r.Limit("vdrm"); ok {
+		m.figure("blocking_voltage_rating", "V", func() float64 { return v }, func() string { return "V_DRM of the sheet" })
+	}
+	m.figure("load_current_rms", "A", l.amperes, l.amperesWorking)
+	if v, _, ok := r.Limit("it_rms"); ok {
+		m.figure("load_current_rating", "A", func() float64 { return v }, func() string { return "I_T(RMS) of the sheet" })
+	}
+	if l.hertz > 0 {
+		m.figure("dvdt", "V/s", func() float64 { return 2 * math.Pi * l.hertz * l.block }, func() string {
+			return "2 pi f times the crest"
+		})
+	}
+	if len(l.coils) > 0 {
+		m.figure("didt", "A/s", func() float64 { return l.block / l.inductance }, func() string {
+			return "V/L at the instant of firing"
+		})
+	}
+	if latch, _, ok := r.Limit("il"); ok && l.hertz == 0 {
+		m.figure("latching_time", "s", func() float64 { return l.latching(latch) }, func() string {
+			return "time until the load carries the latching current of " + show(latch, "A")
+		})
+	}
+}
+
+// amperes returns the rms load current: declared with amps=, or of the anode
+// circuit at full conduction.
+func (l *loadCircuit) amperes() float64 {
+	if a := l.stage.Anchor.Intent.Amps; a != nil {
+		return *a
+	}
+	if l.resistance > noPath {
+		return math.NaN()
+	}
+	crest := max(l.block, 0) / l.resistance
+	switch {
+	case l.hertz == 0:
+		return crest
+	case l.bothHalves:
+		return crest / math.Sqrt2
+	}
+	return crest / 2
+}
+
+func (l *loadCircuit) amperesWorking() string {
+	if l.stage.Anchor.Intent.Amps != nil {
+		return "declared with amps="
+	}
+	return fmt.Sprintf("%s through %s at full conduction, drop of the thyristor neglected",
+		show(l.block, "V"), show(l.resistance, "ohm"))
+}
+
+// latching returns the time until the load current passes the latching current
+// on a dc supply: -(L/R) ln(1 - I_L R/V); infinite where it never does.
+func (l *loadCircuit) latching(amperes float64) float64 {
+	if l.resistance > noPath {
+		return math.NaN()
+	}
+	share := amperes * l.resistance / l.block
+	if !(share < 1) || l.block <= 0 {
+		return math.Inf(1)
+	}
+	if l.inductance == 0 {
+		return 0
+	}
+	return -l.inductance / l.resistance * math.Log1p(-share)
+}
