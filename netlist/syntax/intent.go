@@ -68,7 +68,7 @@ func (r *reason) Parse(lex *lexer.PeekingLexer) error {
 }
 
 // intentPairs is one key=value and more.
-type intentPairs []IntentPair
+type intentPairs struct{ list []IntentPair }
 
 // Parse implements participle.Parseable.
 func (p *intentPairs) Parse(lex *lexer.PeekingLexer) error {
@@ -87,7 +87,7 @@ func (p *intentPairs) Parse(lex *lexer.PeekingLexer) error {
 		if pair.Low, pair.High, err = splitRange(pair.Value); err != nil {
 			return err
 		}
-		*p = append(*p, pair)
+		p.list = append(p.list, pair)
 	}
 	return nil
 }
@@ -196,13 +196,13 @@ func readIntent(lex *lexer.PeekingLexer, whole Word) (*Intent, error) {
 			return nil, err
 		}
 		i.Subject, i.Letter = Word{"all", whole.Start, whole.End}, line.Letter.Word
-		i.Pairs = line.Pairs
+		i.Pairs = line.Pairs.list
 	default:
 		line, err := oneParser().ParseFromLexer(lex)
 		if err != nil {
 			return nil, err
 		}
-		i.Subject, i.Pairs = line.Subject.Word, line.Pairs
+		i.Subject, i.Pairs = line.Subject.Word, line.Pairs.list
 	}
 	return i, nil
 }
