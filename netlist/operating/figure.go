@@ -4,7 +4,6 @@
 package operating
 
 import (
-	"standoff/netlist/circuit"
 	"standoff/netlist/part"
 	"standoff/netlist/stage"
 )

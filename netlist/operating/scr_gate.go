@@ -215,7 +215,7 @@ func newTrigger(r *part.Ratings, coldest float64) trigger {
 	t.amperes, t.amperesMark, t.ok = r.Limit("igt")
 	t.volts, t.voltsMark, haveVolts = r.Limit("vgt")
 	t.ok = t.ok && haveVolts
-	cold, ok := r.At("t_cold")
+	cold, ok := r.Test("t_cold")
 	if !ok {
 		cold = -40
 	}

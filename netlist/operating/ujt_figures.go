@@ -71,7 +71,7 @@ func (m *ujtModel) hasResistance() bool { return len(m.stage.Parts[stage.TimingR
 
 // carried describes how a current was carried over to this bar voltage.
 func (m *ujtModel) carried(symbol, law string) string {
-	at, ok := m.ratings.At(symbol)
+	at, ok := m.ratings.Test(symbol)
 	if !ok {
 		return " as it stands (no test voltage given)"
 	}

@@ -188,7 +188,7 @@ func (m *ujtModel) testPeak(eta float64) float64 {
 
 // condition returns a test condition or its customary value.
 func (m *ujtModel) condition(symbol string, custom float64) float64 {
-	if v, ok := m.ratings.At(symbol); ok {
+	if v, ok := m.ratings.Test(symbol); ok {
 		return v
 	}
 	return custom
@@ -301,13 +301,13 @@ func (m *ujtModel) currents(x []float64) {
 	s.ip, s.iv = math.NaN(), math.NaN()
 	if m.v.ip >= 0 {
 		s.ip = x[m.v.ip]
-		if at, ok := m.ratings.At("ip_vbb"); ok && vbb < at && vbb > 0 {
+		if at, ok := m.ratings.Test("ip_vbb"); ok && vbb < at && vbb > 0 {
 			s.ip *= math.Pow(at/vbb, 1.3)
 		}
 	}
 	if m.v.iv >= 0 {
 		s.iv = x[m.v.iv]
-		if at, ok := m.ratings.At("iv_vbb"); ok && vbb < at {
+		if at, ok := m.ratings.Test("iv_vbb"); ok && vbb < at {
 			s.iv *= max(vbb, 0) / at
 		}
 	}
