@@ -91,8 +91,8 @@ const driftHabit = 0.01
 // comparisons returns what the drift is held against: the habit, and the
 // declared target with temperature alone moving the nominal board.
 func (d drifting) comparisons(drift Figure, target *quantity.Spread) []Comparison {
-	list := []Comparison{{Name: "frequency_drift_per_10k", Value: drift.High * 10 / d.span(), Limit: driftHabit,
-		LimitName: "habit", Bound: Max, Corner: drift.HighAt, Working: drift.Working, Assumed: drift.Assumed,
+	list := []Comparison{{Name: "frequency_drift_per_10k", Value: drift.Nominal * 10 / d.span(), Limit: driftHabit,
+		LimitName: "habit", Bound: Max, Working: drift.Working + " (nominal board)", Assumed: drift.Assumed,
 		Because: "1 % per 10 K is a habit, not a rating"}}
 	if target == nil {
 		return list

@@ -75,10 +75,9 @@ type Advice struct {
 
 // Pass is a rule's view of one board.
 type Pass struct {
-	Circuit   *circuit.Circuit
-	Accounts  []*operating.Account
-	report    func(Finding)
-	unchecked func(stage, because string)
+	Circuit  *circuit.Circuit
+	Accounts []*operating.Account
+	report   func(Finding)
 }
 
 // Report adds a finding.

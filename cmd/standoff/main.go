@@ -1,0 +1,8 @@
+// Command standoff checks netlists of unijunction and thyristor trigger stages.
+package main
+
+import "os"
+
+func main() {
+	os.Exit(run(os.Args[1:], os.Stdin, os.Stdout, os.Stderr))
+}

@@ -1,0 +1,86 @@
+package report
+
+import (
+	"fmt"
+	"io"
+	"strings"
+
+	"github.com/fatih/color"
+
+	"standoff/netlist"
+	"standoff/netlist/operating"
+	"standoff/netlist/quantity"
+	"standoff/netlist/source"
+	"standoff/netlist/stage"
+)
+
+// Worksheet writes every stage with its roles and figures.
+func (t Terminal) Worksheet(w io.Writer, boards []*netlist.Board) {
+	for i, b := range boards {
+		if i > 0 {
+			fmt.Fprintln(w)
+		}
+		fmt.Fprintf(w, "%s  %s\n", t.paint(source.Visible(b.Path), color.Bold), source.Visible(b.Circuit.Title))
+		if len(b.Accounts) == 0 {
+			fmt.Fprintln(w, "\n  no stage found")
+		}
+		for _, a := range b.Accounts {
+			t.stage(w, a)
+		}
+		for _, p := range b.Problems {
+			at := p.Span.Position()
+			fmt.Fprintf(w, "\n  line %d could not be read: %s\n", at.Line, p.Message)
+		}
+	}
+}
+
+func (t Terminal) stage(w io.Writer, a *operating.Account) {
+	s := a.Stage
+	fmt.Fprintf(w, "\n  %s  %s %s\n", t.paint(string(s.Kind), color.Bold), source.Visible(s.Anchor.Designator), source.Visible(s.Anchor.PartName))
+	roles, from := order(a)
+	fmt.Fprintf(w, "    %-20s %s (%s)\n", "terminals", strings.Join(roles, " "), from)
+	for _, role := range stage.Roles {
+		var names []string
+		for _, e := range s.Parts[role] {
+			names = append(names, source.Visible(e.Designator))
+		}
+		if len(names) > 0 {
+			fmt.Fprintf(w, "    %-20s %s\n", role, strings.Join(names, " "))
+		}
+	}
+	for _, g := range s.Drives {
+		fmt.Fprintf(w, "    %-20s %s\n", "drives", source.Visible(g.Anchor.Designator))
+	}
+	if len(a.Figures) > 0 {
+		fmt.Fprintf(w, "\n    %-32s %12s %12s %12s\n", "", "low", "nominal", "high")
+	}
+	for _, f := range a.Figures {
+		fmt.Fprintf(w, "    %-32s %12s %12s %12s\n", f.Name, quantity.Format(f.Low, f.Unit), quantity.Format(f.Nominal, f.Unit), quantity.Format(f.High, f.Unit))
+		for _, line := range wrap(f.Working, max(t.Width, 60)-8) {
+			fmt.Fprintf(w, "        %s\n", line)
+		}
+	}
+	t.list(w, "  rests on", len(notes(a)), func(i int) string { return notes(a)[i] })
+	t.list(w, "  not worked out", len(a.Unchecked), func(i int) string {
+		u := a.Unchecked[i]
+		if u.Rule != "" {
+			return u.Rule + ": " + u.Because
+		}
+		return u.Because
+	})
+}
+
+// notes gathers the assumptions of all figures, each once.
+func notes(a *operating.Account) []string {
+	var list []string
+	seen := map[string]bool{}
+	for _, f := range a.Figures {
+		for _, n := range f.Assumed {
+			if !seen[n] {
+				seen[n] = true
+				list = append(list, n)
+			}
+		}
+	}
+	return list
+}
