@@ -99,8 +99,11 @@ func (a *Account) gate(w *circuit.Wiring, s *stage.Stage, stages []*stage.Stage)
 	a.Unchecked = append(a.Unchecked, m.unchecked()...)
 	m.evaluate(m.nominal())
 	a.Facts["gate-return-missing"] = m.g.shunt > noPath
-	a.Facts["gate-polarity"] = m.g.open <= 0
+	a.Facts["gate-polarity"] = m.g.open < noPulse*m.s.vp
 }
+
+// noPulse is the share of the peak voltage below which no pulse arrives at all.
+const noPulse = 1e-3
 
 // withLoad adds the anode circuit to a gate stage.
 func (m *scrGate) withLoad(l *loadCircuit) {

@@ -109,23 +109,14 @@ func (u *ujtReading) feeds(e *circuit.Element) bool {
 	return carriesDC(e) && !slices.Contains(u.stage.Parts[EmitterSeries], e)
 }
 
-// lowerRail takes the most negative fixed net that base one reaches; where it
-// reaches none, the cathode of a thyristor whose gate it reaches.
+// lowerRail takes the fixed net that base one reaches through the fewest parts;
+// where it reaches none, the cathode of a thyristor whose gate it reaches.
 func (u *ujtReading) lowerRail() bool {
-	found := false
-	best := 0.0
 	for _, n := range u.atBase1.Nets {
-		if !u.w.IsFixed(n) || n == u.base2 {
-			continue
+		if u.w.IsFixed(n) && n != u.base2 {
+			u.lower = n
+			return true
 		}
-		v, known := u.w.Potential(n)
-		if !found || known && v < best {
-			u.lower, found = n, true
-			best = v
-		}
-	}
-	if found {
-		return true
 	}
 	for _, n := range u.atBase1.Nets {
 		for _, p := range u.w.On(n) {

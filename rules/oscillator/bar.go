@@ -59,8 +59,8 @@ var interbaseDissipation = &rule.Rule{
 		"dissipate falls with the ambient temperature.",
 	Formula: "V_BB^2/R_BB + C V_P^2 f/2 < P_D - slope (T_A - 25 deg C)",
 	Source:  "power and derating of the sheet (2N2646: 300 mW, 3 mW/K)",
-	Failing: deck("Boiler room sequencer", "28", "220k", "0.22u", "330", "10", "*> V1 tol=2%", "*> board ambient=40..90"),
-	Mended:  deck("Boiler room sequencer", "12", "220k", "0.22u", "330", "10", "*> V1 tol=2%", "*> board ambient=40..90"),
+	Failing: deck("Boiler room sequencer", "28", "100k", "0.22u", "330", "10", "*> V1 tol=2%", "*> board ambient=40..90"),
+	Mended:  deck("Boiler room sequencer", "16", "100k", "0.22u", "330", "10", "*> V1 tol=2%", "*> board ambient=40..90"),
 	Check: each(rule.Case{Comparison: "interbase_power", Mend: []stage.Role{stage.BaseTwo, stage.Supply},
 		Fails: "the transistor gets hotter than it may", Value: "the power in it", Limit: "allowed at this ambient"}),
 }
@@ -119,8 +119,8 @@ var baseTwoOff = &rule.Rule{
 	Why: "A base-two resistor that is much too small leaves the drift of the emitter diode, one that is much too large turns it around. It is judged by " +
 		"the drift that it causes on the nominal board, never by its value.",
 	Formula: "drift of the nominal board by the transistor alone < 1 % per 10 K", Source: "limit: common practice, no source; law: see base-two-resistor-missing",
-	Failing: deck("Seismograph time marks", "10", "100k", "4.7u", "4.7k", "22", "*> C1 kind=film"),
-	Mended:  deck("Seismograph time marks", "10", "100k", "4.7u", "680", "22", "*> C1 kind=film"),
+	Failing: deck("Seismograph time marks", "24", "100k", "4.7u", "10k", "22", "*> C1 kind=film"),
+	Mended:  deck("Seismograph time marks", "24", "100k", "4.7u", "270", "22", "*> C1 kind=film"),
 	Check: func(p *rule.Pass) {
 		p.Each(stage.UJTOscillator, func(a *operating.Account) {
 			if !a.Facts["base-two-missing"] {

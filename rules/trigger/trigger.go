@@ -71,7 +71,7 @@ var pulseWeak = &rule.Rule{
 	Formula: "i_G at v_G = V_GT: load line of V_P behind R_on through the gate network > I_GT(cold) + V_GT(cold)/R_GK",
 	Source:  "must-trigger box: Teccor AN1008, Dynex AN4840; R_on from the guaranteed base-one pulse of the sheet",
 	Failing: deck("Bird scarer", "0.22u", "22", "R4 b1 g 470", "BT151-500R", "", "100", "*> board ambient=0..40"),
-	Mended:  deck("Bird scarer", "0.22u", "47", "R4 b1 g 68", "BT151-500L", "", "100", "*> board ambient=0..40"),
+	Mended:  deck("Bird scarer", "0.22u", "33", "R4 b1 g 68", "BT151-500L", "", "100", "*> board ambient=0..40"),
 	Check: each(
 		rule.Case{Comparison: "gate_pulse_current", Place: lead, Mend: []stage.Role{stage.GateSeries},
 			Fails: "the thyristor may not fire", Value: "the pulse current at the gate", Limit: "gate and gate resistor need"},
@@ -143,7 +143,7 @@ var overdrive = &rule.Rule{
 		"It is a hold where resistors on the board set the current, a doubt where it hangs on the unijunction's own on-resistance.",
 	Formula: "shorted-gate current < I_GM; E^2/(4 R) of the drive < P_GM",
 	Source:  "upper bounds for any gate characteristic (straight load line); ratings of the sheet",
-	Failing: deck("Pinball bumper", "0.22u", "47", "R4 b1 g 10", "C106D", "1k", "100"),
+	Failing: deck("Pinball bumper", "0.22u", "33", "R4 b1 g 10", "C106D", "1k", "100"),
 	Mended:  deck("Pinball bumper", "0.22u", "15", "R4 b1 g 220", "C106D", "1k", "100"),
 	Check: each(
 		rule.Case{Comparison: "gate_peak_current", Place: lead, Mend: []stage.Role{stage.GateSeries}, FailsOnly: true,
@@ -157,7 +157,7 @@ var reverse = &rule.Rule{
 	Title:   "The gate is driven further negative than it stands.",
 	Why:     "A gate junction breaks down in reverse at 5 to 10 V. A negative bias beyond the rating damages it slowly.",
 	Formula: "V_KG < V_GRM", Source: "reverse gate voltage of the sheet",
-	Failing: deck("Winch guard", "0.22u", "22", "R4 b1 g 100", "C106D", "", "100", "VB n 0 -12", "R6 n g 100"),
+	Failing: deck("Winch guard", "0.22u", "22", "R4 b1 g 100", "C106D", "", "100", "VB n 0 -12", "R6 n g 47"),
 	Mended:  deck("Winch guard", "0.22u", "15", "R4 b1 g 220", "C106D", "1k", "100"),
 	Check: each(rule.Case{Comparison: "gate_reverse_voltage", Place: []stage.Role{stage.GateShunt},
 		Fails: "the gate breaks down in reverse", Value: "the reverse gate voltage", Limit: "the gate is rated for"}),
