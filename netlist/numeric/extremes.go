@@ -2,6 +2,7 @@ package numeric
 
 import (
 	"math"
+	"slices"
 )
 
 // Variable is one side of the box: anything from Low to High may happen.
@@ -11,6 +12,9 @@ type Variable struct {
 	// its extreme inside, as over a temperature that one part compensates for
 	// another. Every other variable is searched at its ends only.
 	Curved bool
+	// Pivot says that the direction in which other variables push depends on this
+	// one, as what a temperature coefficient does depends on the temperature.
+	Pivot bool
 }
 
 // Extreme is the least and the greatest value of one output over the box, with
@@ -27,6 +31,16 @@ type Extreme struct {
 // An output may be infinite; NaN means undefined there and is passed over.
 type Function func(x, y []float64)
 
+// Hints tell Extremes what it could not see from samples.
+type Hints struct {
+	// Bent lists outputs that may have their extremes between the ends of any variable.
+	Bent []int
+	// Guides lists outputs on which others depend only beyond a threshold: where a
+	// variable does not seem to move an output, the ends that suit a guide are
+	// tried for it as well.
+	Guides []int
+}
+
 // Extremes returns the extremes of n outputs of f over the box.
 //
 // Method: one search for all outputs at once. The ends of every variable are
@@ -38,8 +52,12 @@ type Function func(x, y []float64)
 // improves is the extreme for all networks of resistors met here; a test holds
 // this against random sampling. The work grows with the square of the number of
 // variables, not with 2 to its power.
-func Extremes(box []Variable, n int, f Function) []Extreme {
+func Extremes(box []Variable, n int, f Function, hints Hints) []Extreme {
 	s := newSearch(box, n, f)
+	s.guides = hints.Guides
+	for _, j := range hints.Bent {
+		s.bent[j] = true
+	}
 	s.start()
 	for round := 0; round < maxRounds; round++ {
 		if !s.exploreAll() {
@@ -53,7 +71,7 @@ func Extremes(box []Variable, n int, f Function) []Extreme {
 const maxRounds = 24
 
 // interior lists where a curved variable is looked at between its ends.
-var interior = [...]float64{0.2, 0.4, 0.6, 0.8}
+var interior = [...]float64{1. / 3, 2. / 3}
 
 // search is the state of one call of Extremes.
 type search struct {
@@ -64,7 +82,10 @@ type search struct {
 	x, y    []float64
 	nominal []float64
 	moves   []bool // output j, variable i at j*len(box)+i
-	best    []best // 2n: low of output j at 2j, high at 2j+1
+	bent    []bool
+	guides  []int
+	tried   map[uint64]bool // hashes of corners that were tried
+	best    []best          // 2n: low of output j at 2j, high at 2j+1
 }
 
 // best is the best point of one output in one direction.
@@ -75,7 +96,7 @@ type best struct {
 }
 
 func newSearch(box []Variable, n int, f Function) *search {
-	s := &search{box: box, n: n, f: f}
+	s := &search{box: box, n: n, f: f, tried: map[uint64]bool{}, bent: make([]bool, n)}
 	s.x, s.y = make([]float64, len(box)), make([]float64, n)
 	s.best = make([]best, 2*n)
 	s.moves = make([]bool, n*len(box))
@@ -119,18 +140,44 @@ func (b *best) set(v float64, x []float64) {
 	copy(b.at, x)
 }
 
-// start evaluates the nominal point, the ends of every variable around it, and
-// the corner that each output's signs point to.
+// start evaluates the nominal point, the ends of every variable around it and
+// around each end of every pivot, and the corners that each output's
+// signs point to there. The signs at the ends matter: what a temperature
+// coefficient does depends on the side of the reference temperature.
 func (s *search) start() {
 	for i, v := range s.box {
 		s.x[i] = v.Nominal
 	}
 	s.try()
 	s.nominal = append([]float64(nil), s.y...)
-	// sign[i*n+j] is the end of free variable i that makes output j greatest.
+	base := make([]float64, s.n)
+	s.influences(base, func(v Variable) float64 { return v.Low }, func(v Variable) float64 { return v.High })
+	s.influences(base, func(v Variable) float64 { return v.High }, func(v Variable) float64 { return v.Low })
+	s.corners(-1, 0)
+	for _, i := range s.free {
+		if s.box[i].Pivot {
+			s.corners(i, s.box[i].Low)
+			s.corners(i, s.box[i].High)
+		}
+	}
+}
+
+// corners takes the signs around the nominal point, with variable fixed (where
+// it is not negative) standing at a value, and tries the corners they point to.
+func (s *search) corners(fixed int, value float64) {
+	for i, v := range s.box {
+		s.x[i] = v.Nominal
+	}
+	if fixed >= 0 {
+		s.x[fixed] = value
+	}
+	// sign[k*n+j] is the end of free variable k that makes output j greatest.
 	sign := make([]int8, len(s.free)*s.n)
 	lowY := make([]float64, s.n)
 	for k, i := range s.free {
+		if i == fixed {
+			continue
+		}
 		v := s.box[i]
 		s.x[i] = v.Low
 		s.try()
@@ -138,7 +185,9 @@ func (s *search) start() {
 		s.x[i] = v.High
 		s.try()
 		for j := range s.y {
-			s.moves[j*len(s.box)+i] = s.y[j] != lowY[j] || s.y[j] != s.nominal[j]
+			if s.y[j] != lowY[j] || fixed < 0 && s.y[j] != s.nominal[j] {
+				s.moves[j*len(s.box)+i] = true
+			}
 			switch {
 			case s.y[j] > lowY[j]:
 				sign[k*s.n+j] = 1
@@ -148,27 +197,73 @@ func (s *search) start() {
 		}
 		s.x[i] = v.Nominal
 	}
-	for j := 0; j < s.n; j++ {
-		s.corner(sign, j, 1)
-		s.corner(sign, j, -1)
+	for j := range s.n {
+		for _, direction := range [2]int8{1, -1} {
+			s.corner(sign, j, direction, fixed, -1, 0)
+			for _, g := range s.guides {
+				s.corner(sign, j, direction, fixed, g, 1)
+				s.corner(sign, j, direction, fixed, g, -1)
+			}
+		}
+	}
+}
+
+// influences notes which variables move which outputs around a corner of the
+// box: away from the nominal point other limits may bind.
+func (s *search) influences(base []float64, at, away func(Variable) float64) {
+	for i, v := range s.box {
+		s.x[i] = at(v)
+	}
+	s.try()
+	copy(base, s.y)
+	for _, i := range s.free {
+		v := s.box[i]
+		s.x[i] = away(v)
+		s.try()
+		for j := range s.y {
+			if s.y[j] != base[j] {
+				s.moves[j*len(s.box)+i] = true
+			}
+		}
+		s.x[i] = at(v)
 	}
 }
 
 // corner tries the corner at which output j should be greatest (direction 1)
-// or least (direction -1).
-func (s *search) corner(sign []int8, j int, direction int8) {
+// or least (direction -1), unless it was tried before. Variables that do not
+// move it stand where they suit the guide (if one is given).
+func (s *search) corner(sign []int8, j int, direction int8, fixed, guide int, toward int8) {
 	for k, i := range s.free {
 		v := s.box[i]
-		switch sign[k*s.n+j] * direction {
+		push := sign[k*s.n+j] * direction
+		if push == 0 && guide >= 0 {
+			push = sign[k*s.n+guide] * toward
+		}
+		switch push {
 		case 1:
 			s.x[i] = v.High
 		case -1:
 			s.x[i] = v.Low
 		default:
-			s.x[i] = v.Nominal
+			if i != fixed {
+				s.x[i] = v.Nominal
+			}
 		}
 	}
-	s.try()
+	s.tryOnce()
+}
+
+// tryOnce is try for points that may come up again.
+func (s *search) tryOnce() {
+	h := uint64(14695981039346656037)
+	for _, i := range s.free {
+		h = (h ^ math.Float64bits(s.x[i])) * 1099511628211
+		h ^= h >> 29
+	}
+	if !s.tried[h] {
+		s.tried[h] = true
+		s.try()
+	}
 }
 
 // exploreAll explores every best point that has not been looked around yet and
@@ -176,52 +271,82 @@ func (s *search) corner(sign []int8, j int, direction int8) {
 func (s *search) exploreAll() bool {
 	found := false
 	point := make([]float64, len(s.box))
-	for b := range s.best {
+	for _, b := range s.order() {
 		if s.best[b].explored || s.best[b].value != s.best[b].value {
 			continue
 		}
 		found = true
 		copy(point, s.best[b].at)
-		s.markExplored(point)
+		s.markExplored(point, b)
+		s.best[b].explored = true
 		s.explore(point, b)
 	}
 	return found
 }
 
-// markExplored marks every output whose best point this is.
-func (s *search) markExplored(point []float64) {
-	for i := range s.best {
-		if same(s.best[i].at, point) {
-			s.best[i].explored = true
+// order lists the best points, those of outputs with the most variables first:
+// their exploration serves many others.
+func (s *search) order() []int {
+	count := make([]int, len(s.best))
+	list := make([]int, len(s.best))
+	for b := range s.best {
+		list[b] = b
+		for _, m := range s.movesOf(b) {
+			if m {
+				count[b]++
+			}
 		}
 	}
+	slices.SortStableFunc(list, func(a, b int) int { return count[b] - count[a] })
+	return list
 }
 
-func same(a, b []float64) bool {
-	for i := range a {
-		if a[i] != b[i] {
-			return false
+// movesOf returns which variables move the output behind a best point.
+func (s *search) movesOf(b int) []bool {
+	j := b / 2
+	return s.moves[j*len(s.box) : (j+1)*len(s.box)]
+}
+
+// markExplored marks every output that the exploration of a point for one
+// output serves too: its variables are among those that are moved, and stand
+// where the point has them.
+func (s *search) markExplored(point []float64, asked int) {
+	moved := s.movesOf(asked)
+	for b := range s.best {
+		own, at, served := s.movesOf(b), s.best[b].at, true
+		for i := range point {
+			if own[i] && (!moved[i] || at[i] != point[i]) {
+				served = false
+				break
+			}
+		}
+		if served {
+			s.best[b].explored = true
 		}
 	}
-	return true
 }
 
 // explore moves one variable at a time away from the point. Curved variables
-// are looked at inside too, and refined for the output that asked.
+// are looked at inside too, and refined for the output that asked. Variables
+// that do not move that output stay where they are.
 func (s *search) explore(point []float64, asked int) {
 	copy(s.x, point)
+	moved := s.movesOf(asked)
 	for _, i := range s.free {
+		if !moved[i] {
+			continue
+		}
 		v := s.box[i]
 		for _, end := range [2]float64{v.Low, v.High} {
 			if end != point[i] {
 				s.x[i] = end
-				s.try()
+				s.tryOnce()
 			}
 		}
-		if v.Curved {
+		if v.Curved || s.bent[asked/2] {
 			for _, share := range interior {
 				s.x[i] = v.Low + share*(v.High-v.Low)
-				s.try()
+				s.tryOnce()
 			}
 			if inside := s.best[asked].at[i]; inside > v.Low && inside < v.High {
 				copy(s.x, s.best[asked].at)
@@ -231,13 +356,51 @@ func (s *search) explore(point []float64, asked int) {
 		}
 		s.x[i] = point[i]
 	}
+	for _, i := range s.free {
+		if s.box[i].Pivot && moved[i] {
+			s.across(point, asked, i)
+		}
+	}
+}
+
+// across climbs for one output from the far end of a pivot: there the
+// other variables may have to stand at other ends, and no single move leads over.
+func (s *search) across(point []float64, asked, pivot int) {
+	moved := s.movesOf(asked)
+	v := s.box[pivot]
+	far := v.Low
+	if point[pivot]-v.Low < v.High-point[pivot] {
+		far = v.High
+	}
+	copy(s.x, point)
+	s.x[pivot] = far
+	s.try()
+	j, sense := asked/2, float64(2*(asked%2)-1)
+	best := sense * s.y[j]
+	for _, i := range s.free {
+		if !moved[i] || i == pivot {
+			continue
+		}
+		here := s.x[i]
+		for _, end := range [2]float64{s.box[i].Low, s.box[i].High} {
+			if end == here {
+				continue
+			}
+			s.x[i] = end
+			s.try()
+			if v := sense * s.y[j]; v > best {
+				best, here = v, end
+			}
+		}
+		s.x[i] = here
+	}
 }
 
 // refine narrows variable i around the best point of one output by golden
 // section; the point itself and its outputs are updated through try.
 func (s *search) refine(i, asked int) {
 	v := s.box[i]
-	width := 0.2 * (v.High - v.Low)
+	width := (v.High - v.Low) / 3
 	centre := s.best[asked].at[i]
 	low, high := math.Max(v.Low, centre-width), math.Min(v.High, centre+width)
 	j, sense := asked/2, 1.0

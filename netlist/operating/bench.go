@@ -43,7 +43,7 @@ func newBench(w *circuit.Wiring) *bench {
 	a := w.Circuit.Board.Ambient
 	a.Nominal = min(max(25, a.Low), a.High)
 	b.ambient = b.add(trait{name: "ambient", unit: "deg C"}, a)
-	b.box[b.ambient].Curved = true
+	b.box[b.ambient].Curved, b.box[b.ambient].Pivot = true, true
 	return b
 }
 

@@ -10,7 +10,7 @@ import (
 
 // driftGrid is at how many temperatures, ends included, a drift is sampled; a
 // parabola through the outermost sample and its neighbours does the rest.
-const driftGrid = 7
+const driftGrid = 5
 
 // drifting is what a stage needs to have its drift worked out: the point is
 // loaded, the frequency read.
@@ -77,7 +77,7 @@ func (d drifting) figure() Figure {
 	e := numeric.Extremes(box, 1, func(x, y []float64) {
 		copy(point, x)
 		y[0] = d.relative(point)
-	})[0]
+	}, numeric.Hints{})[0]
 	return Figure{Name: "frequency_drift", Low: e.Low, Nominal: e.Nominal, High: e.High,
 		LowAt: d.corner(e.LowAt, e.Moves), HighAt: d.corner(e.HighAt, e.Moves), Assumed: d.assumptions(e.Moves),
 		Mark: d.mark(e.Moves), Working: fmt.Sprintf("(greatest - least frequency)/frequency over %s .. %s, all else unchanged",

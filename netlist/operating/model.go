@@ -23,6 +23,7 @@ type output struct {
 	name, unit string
 	of         func() float64
 	working    func() string // at the last evaluated point
+	bent       bool          // its extremes may lie between the ends of a variable
 }
 
 // contest is one comparison to be.
@@ -35,6 +36,7 @@ type contest struct {
 	limitMark part.Mark
 	because   string
 	working   func() string
+	bent      bool // its worst point may lie between the ends of a variable
 }
 
 // ratio is what is driven to its extreme: value over limit.
@@ -48,7 +50,7 @@ func (c *contest) ratio() float64 {
 
 // figure appends an output.
 func (m *model) figure(name, unit string, of func() float64, working func() string) {
-	m.outputs = append(m.outputs, output{name, unit, of, working})
+	m.outputs = append(m.outputs, output{name: name, unit: unit, of: of, working: working})
 }
 
 // compare appends a contest.
@@ -57,7 +59,7 @@ func (m *model) compare(c contest) { m.contests = append(m.contests, c) }
 // solve works out every output and contest over the box.
 func (m *model) solve() ([]Figure, []Comparison) {
 	n := len(m.outputs)
-	extremes := numeric.Extremes(m.box, n+len(m.contests), m.function)
+	extremes := m.extremes()
 	nominal := make([]float64, len(m.box))
 	for i, v := range m.box {
 		nominal[i] = v.Nominal
@@ -80,6 +82,35 @@ func (m *model) solve() ([]Figure, []Comparison) {
 		}
 	}
 	return figures, comparisons
+}
+
+// bentSlack is by how much, relatively, the bounds of a bent output are moved
+// outwards: its extreme is looked for between the ends of variables on a coarse
+// grid only.
+const bentSlack = 5e-3
+
+// extremes searches the box for every output and every contest.
+func (m *model) extremes() []numeric.Extreme {
+	var bent, guides []int
+	for j, o := range m.outputs {
+		if o.bent {
+			bent = append(bent, j)
+		}
+		if o.name == "interbase_voltage" { // the sheet's currents change with it below the test voltage only
+			guides = append(guides, j)
+		}
+	}
+	for k, c := range m.contests {
+		if c.bent {
+			bent = append(bent, len(m.outputs)+k)
+		}
+	}
+	list := numeric.Extremes(m.box, len(m.outputs)+len(m.contests), m.function, numeric.Hints{Bent: bent, Guides: guides})
+	for _, j := range bent {
+		list[j].Low -= bentSlack * math.Abs(list[j].Low)
+		list[j].High += bentSlack * math.Abs(list[j].High)
+	}
+	return list
 }
 
 // function feeds the search.
@@ -133,7 +164,7 @@ func (m *model) certainty(k int, at []float64) (bool, string) {
 	e := numeric.Extremes(box, 1, func(x, y []float64) {
 		m.evaluate(x)
 		y[0] = c.ratio()
-	})[0]
+	}, numeric.Hints{})[0]
 	if c.bound == Min && e.Low < 1 || c.bound == Max && e.High > 1 {
 		return true, ""
 	}

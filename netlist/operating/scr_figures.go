@@ -64,10 +64,7 @@ func (m *scrGate) widthWorking() string {
 // proportion to the overdrive (constant charge; trigger data of TIC106, TYN1212).
 func (m *scrGate) widthRequired(d drive) float64 {
 	width := 20e-6 * d.required / d.current
-	if v, _, ok := m.scr.Limit("tgt"); ok {
-		width = max(width, v)
-	}
-	return width
+	return max(width, m.turnOn)
 }
 
 func (m *scrGate) gatePower() float64 { return max(m.g.open, 0) * m.g.short / 4 }
@@ -89,8 +86,8 @@ func (m *scrGate) gateLimits() {
 // smallNote says why a pulse from a small capacitor is only a doubt.
 func (m *scrGate) smallNote(because string) string {
 	for i, p := range m.caps.parts {
-		if i == 0 && m.box[p.slot.index].Low < m.condition("vob1_c", 0.2e-6) && m.caps.single && len(m.caps.parts) == 1 {
-			return join(because, "the guaranteed pulse holds for "+show(m.condition("vob1_c", 0.2e-6), "F")+
+		if i == 0 && m.box[p.slot.index].Low < m.sheet.farads && m.caps.single && len(m.caps.parts) == 1 {
+			return join(because, "the guaranteed pulse holds for "+show(m.sheet.farads, "F")+
 				" and more; below that it is estimated")
 		}
 	}
@@ -116,12 +113,7 @@ func (m *scrGate) triggerLimits(d *drive, volts func() float64, because string) 
 		}, limitMark: mark, because: note, working: m.widthWorking})
 	if len(m.shunts) > 0 {
 		m.compare(contest{name: "gate_shunt_current", limitName: "drive_left_for_gate_resistor", unit: "A", bound: Max,
-			value: func() float64 { return d.required - m.amperes(d) }, limit: func() float64 {
-				if d.current < m.amperes(d) {
-					return math.Inf(1) // too weak without any resistor
-				}
-				return d.current - m.amperes(d)
-			}, limitMark: mark, because: note, working: m.pulseWorking})
+			value: func() float64 { return d.required - m.amperes(d) }, limit: func() float64 { return d.current - m.amperes(d) }, limitMark: mark, because: note, working: m.pulseWorking})
 	}
 }
 

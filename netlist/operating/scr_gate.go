@@ -33,7 +33,13 @@ type scrGate struct {
 	g         gateState
 	ohms      []float64
 	ohmsBack  []float64
+	n         gateNodes
+	turnOn    float64 // t_gt of the sheet, 0 where it gives none
 }
+
+// gateNodes are the solvers' nodes, looked up once: in the drive network, and
+// (quiet) in the standing one.
+type gateNodes struct{ gate, cathode, lower, base1, quietGate, quietCathode network.Node }
 
 // trigger is what the gate asks for at the coldest ambient.
 type trigger struct {
@@ -116,6 +122,9 @@ func (m *scrGate) driveNetwork() error {
 			m.shunts = append(m.shunts, m.element(e))
 		}
 	}
+	m.n = gateNodes{gate: m.drive.node(g["gate"]), cathode: m.drive.node(g["cathode"]), lower: m.drive.node(n["lower"]),
+		base1: m.drive.node(n["base1"]), quietGate: m.standing.node(g["gate"]), quietCathode: m.standing.node(g["cathode"])}
+	m.turnOn, _, _ = m.scr.Limit("tgt")
 	m.ohms = make([]float64, m.standing.solver.Nodes())
 	m.ohmsBack = make([]float64, m.standing.solver.Nodes())
 	return nil
@@ -148,10 +157,9 @@ func (m *scrGate) pulseAt(volts, clamp float64) (across, into, out float64) {
 	s := m.drive.solver
 	s.Values[m.source], s.Values[m.gate] = volts, clamp
 	s.Solve()
-	n := m.stage.Nodes
-	across = m.drive.volts(m.gateStage.Nodes["gate"]) - m.drive.volts(m.gateStage.Nodes["cathode"])
+	across = s.Voltage(m.n.gate) - s.Voltage(m.n.cathode)
 	into = max(across-clamp, 0) / gateSlope
-	out = (volts + m.drive.volts(n["lower"]) - m.drive.volts(n["base1"])) / s.Values[m.on]
+	out = (volts + s.Voltage(m.n.lower) - s.Voltage(m.n.base1)) / s.Values[m.on]
 	return across, into, out
 }
 
@@ -162,7 +170,7 @@ func (m *scrGate) pulseAt(volts, clamp float64) (across, into, out float64) {
 // as C/(2 + 5 C).
 func (m *scrGate) smallCapacitor() float64 {
 	per := func(c float64) float64 { return c * 1e6 / (2 + 5*c*1e6) }
-	return min(1, per(m.s.c)/per(m.condition("vob1_c", 0.2e-6)))
+	return min(1, per(m.s.c)/per(m.sheet.farads))
 }
 
 // against works out the pulse against a trigger point. Current and time follow
@@ -194,8 +202,7 @@ func (m *scrGate) against(amperes, volts, shunt float64) drive {
 // quiet works out the gate before the pulse: voltage and dc resistance to the
 // cathode with the emitter open.
 func (m *scrGate) quiet() {
-	n := m.gateStage.Nodes
-	gate, cathode := m.standing.node(n["gate"]), m.standing.node(n["cathode"])
+	gate, cathode := m.n.quietGate, m.n.quietCathode
 	solver := m.standing.solver
 	m.g.standby = solver.Voltage(gate) - solver.Voltage(cathode)
 	solver.Transfer(gate, m.ohms)

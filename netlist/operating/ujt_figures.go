@@ -139,6 +139,7 @@ func (m *ujtModel) loadFigures() {
 	m.figure("interbase_power", "W", m.barPower, func() string {
 		return fmt.Sprintf("V_BB^2/R_BB + C V_P^2 f/2 = %s^2/%s + the emitter's share", show(m.interbase(), "V"), show(s.rbb, "ohm"))
 	})
+	m.outputs[len(m.outputs)-1].bent = true // a higher peak stores more energy and comes less often
 	if _, _, ok := m.ratings.Limit("pd"); ok {
 		m.figure("interbase_power_allowed", "W", m.powerAllowed, func() string {
 			return "rated power less its derating above 25 deg C"
@@ -165,9 +166,7 @@ func (m *ujtModel) barPower() float64 {
 
 // powerAllowed returns the rated power at this ambient.
 func (m *ujtModel) powerAllowed() float64 {
-	pd, _, _ := m.ratings.Limit("pd")
-	slope, _, _ := m.ratings.Limit("pd_slope")
-	return pd - slope*max(m.s.heat, 0)
+	return m.sheet.power - m.sheet.slope*max(m.s.heat, 0)
 }
 
 // advisedBaseTwo returns the base-two resistor at which dV_P/dT = 0. With

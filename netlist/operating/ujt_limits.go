@@ -137,7 +137,7 @@ func (m *ujtModel) barLimits() {
 		limit: func() float64 { return low }, limitMark: lowMark, working: working})
 	if _, mark, ok := m.ratings.Limit("pd"); ok {
 		m.compare(contest{name: "interbase_power", limitName: "interbase_power_allowed", unit: "W", bound: Max,
-			value: m.barPower, limit: m.powerAllowed, limitMark: mark, working: func() string {
+			value: m.barPower, limit: m.powerAllowed, limitMark: mark, bent: true, working: func() string {
 				return fmt.Sprintf("V_BB^2/R_BB + C V_P^2 f/2 at R_BB = %s", show(m.s.rbb, "ohm"))
 			}})
 	}

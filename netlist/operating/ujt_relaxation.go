@@ -59,7 +59,16 @@ type ujtModel struct {
 	s        ujtState
 	transfer []float64
 	spread   []float64
+	at0      ujtNodes
+	sheet    ujtSheet
 }
+
+// ujtNodes are the solver's nodes, looked up once.
+type ujtNodes struct{ node, base1, base2, upper, lower, pulse network.Node }
+
+// ujtSheet are the test conditions of the sheet, looked up once; 0 where a
+// current holds as it stands.
+type ujtSheet struct{ ipVBB, ivVBB, rb1, volts, farads, power, slope float64 }
 
 // ujtVariables are the indices of the device's own variables, -1 where unknown.
 type ujtVariables struct {
@@ -116,6 +125,10 @@ func partName(e *circuit.Element) string {
 func (m *ujtModel) device() error {
 	var ok bool
 	r := m.ratings
+	m.sheet = ujtSheet{ipVBB: m.condition("ip_vbb", 0), ivVBB: m.condition("iv_vbb", 0), rb1: m.condition("vob1_rb1", 20),
+		volts: m.condition("vob1_v", 20), farads: m.condition("vob1_c", 0.2e-6)}
+	m.sheet.power, _, _ = r.Limit("pd")
+	m.sheet.slope, _, _ = r.Limit("pd_slope")
 	if m.v.eta, ok = m.rating(r, "eta", ""); !ok {
 		return fmt.Errorf("the stand-off ratio of %s is unknown", r.Name)
 	}
@@ -183,7 +196,7 @@ func (m *ujtModel) isExact(symbol string) bool {
 
 // testPeak returns the peak voltage in the maker's V_OB1 circuit.
 func (m *ujtModel) testPeak(eta float64) float64 {
-	return eta*m.condition("vob1_v", 20) + assumedDrop.Nominal
+	return eta*m.sheet.volts + assumedDrop.Nominal
 }
 
 // condition returns a test condition or its customary value.
@@ -214,6 +227,8 @@ func (m *ujtModel) networks() error {
 	for _, e := range series {
 		m.element(e)
 	}
+	m.at0 = ujtNodes{node: m.standing.node(n["capacitor"]), base1: m.standing.node(n["base1"]), base2: m.standing.node(n["base2"]),
+		upper: m.standing.node(n["upper"]), lower: m.standing.node(n["lower"]), pulse: m.pulse.node(n["base1"])}
 	m.caps, err = newCapacitorNet(m.bench, m.stage.Parts[stage.TimingCapacitor], n["capacitor"])
 	m.transfer = make([]float64, m.standing.solver.Nodes())
 	m.spread = make([]float64, m.pulse.solver.Nodes())
@@ -265,16 +280,15 @@ func (m *ujtModel) at(x []float64) {
 // linear in j, so that the firing condition is one linear equation, also where
 // the supply is soft and the charging current moves the bases.
 func (m *ujtModel) solveStanding(x []float64) {
-	s, n := &m.s, m.stage.Nodes
+	s, n := &m.s, &m.at0
 	mesh := m.standing
 	mesh.load(x)
 	mesh.solver.Values[m.bar] = s.rbb
 	mesh.solver.Solve()
-	node := mesh.node(n["capacitor"])
+	node, one, two := n.node, n.base1, n.base2
 	mesh.solver.Transfer(node, m.transfer)
 	s.vth, s.rth = mesh.solver.Voltage(node), m.transfer[node]
-	s.lower, s.upper = mesh.volts(n["lower"]), mesh.volts(n["upper"])
-	one, two := mesh.node(n["base1"]), mesh.node(n["base2"])
+	s.lower, s.upper = mesh.solver.Voltage(n.lower), mesh.solver.Voltage(n.upper)
 	b1, b2 := mesh.solver.Voltage(one), mesh.solver.Voltage(two)
 	s.standby = b1 - s.lower
 	pull := ((1-s.eta)*m.transfer[one] + s.eta*m.transfer[two]) / s.rth
@@ -301,13 +315,13 @@ func (m *ujtModel) currents(x []float64) {
 	s.ip, s.iv = math.NaN(), math.NaN()
 	if m.v.ip >= 0 {
 		s.ip = x[m.v.ip]
-		if at, ok := m.ratings.Test("ip_vbb"); ok && vbb < at && vbb > 0 {
+		if at := m.sheet.ipVBB; vbb < at && vbb > 0 {
 			s.ip *= math.Pow(at/vbb, 1.3)
 		}
 	}
 	if m.v.iv >= 0 {
 		s.iv = x[m.v.iv]
-		if at, ok := m.ratings.Test("iv_vbb"); ok && vbb < at {
+		if at := m.sheet.ivVBB; vbb < at {
 			s.iv *= max(vbb, 0) / at
 		}
 	}
@@ -318,11 +332,11 @@ func (m *ujtModel) path(x []float64) {
 	s := &m.s
 	s.on = x[m.v.on]
 	if m.v.vob1 >= 0 {
-		s.on *= m.condition("vob1_rb1", 20) * max(m.testPeak(s.eta)/x[m.v.vob1]-1, 0)
+		s.on *= m.sheet.rb1 * max(m.testPeak(s.eta)/x[m.v.vob1]-1, 0)
 	}
 	m.pulse.load(x)
 	m.pulse.solver.Solve()
-	node := m.pulse.node(m.stage.Nodes["base1"])
+	node := m.at0.pulse
 	m.pulse.solver.Transfer(node, m.spread)
 	s.r1 = m.spread[node]
 	if s.r1 > noPath {

@@ -132,8 +132,15 @@ var resistorLow = &rule.Rule{
 	Source:  "footnote of the C106, 2N5060, MCR100 and MCR106 sheets: the resistor's current is not part of I_GT",
 	Failing: deck("Lathe brake", "0.22u", "47", "R4 b1 g 100", "BT151-500L", "10", "100", "*> board ambient=15..35"),
 	Mended:  deck("Lathe brake", "0.22u", "47", "R4 b1 g 68", "BT151-500L", "470", "100", "*> board ambient=15..35"),
-	Check: each(rule.Case{Comparison: "gate_shunt_current", Place: []stage.Role{stage.GateShunt}, Mend: []stage.Role{stage.GateShunt}, FailsOnly: true,
-		Fails: "the gate resistor takes the pulse away", Value: "the current of the gate resistor", Limit: "the drive can spare"}),
+	Check: func(p *rule.Pass) {
+		p.Each(stage.SCRGate, func(a *operating.Account) {
+			if k, ok := a.Comparison("gate_shunt_current"); ok && k.Limit <= 0 {
+				return // too weak without any resistor: gate-pulse-weak tells
+			}
+			p.Judge(a, rule.Case{Comparison: "gate_shunt_current", Place: []stage.Role{stage.GateShunt}, Mend: []stage.Role{stage.GateShunt},
+				FailsOnly: true, Fails: "the gate resistor takes the pulse away", Value: "the current of the gate resistor", Limit: "the drive can spare"})
+		})
+	},
 }
 
 var overdrive = &rule.Rule{
