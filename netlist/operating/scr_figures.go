@@ -19,6 +19,7 @@ func (m *scrGate) gateFigures() {
 		m.figure("gate_pulse_width", "s", func() float64 { return g.sheet.width }, func() string {
 			return "time for which the falling pulse stays above the required current"
 		})
+		m.outputs[len(m.outputs)-1].bent = true // more resistance: a smaller pulse, but a longer one
 		m.figure("gate_pulse_width_required", "s", func() float64 { return m.widthRequired(g.sheet) }, m.widthWorking)
 	}
 	if v, _, ok := m.scr.Limit("vgd"); ok {
@@ -104,7 +105,7 @@ func (m *scrGate) triggerLimits(d *drive, volts func() float64, because string) 
 	m.compare(contest{name: "gate_pulse_current", limitName: "gate_trigger_current_required", unit: "A", bound: Min,
 		value: func() float64 { return d.current }, limit: func() float64 { return d.required }, limitMark: mark,
 		because: note, working: m.pulseWorking})
-	m.compare(contest{name: "gate_pulse_width", limitName: "gate_pulse_width_required", unit: "s", bound: Min,
+	m.compare(contest{name: "gate_pulse_width", limitName: "gate_pulse_width_required", unit: "s", bound: Min, bent: true,
 		value: func() float64 { return d.width }, limit: func() float64 {
 			if d.current < d.required {
 				return 0 // too weak to speak of a width

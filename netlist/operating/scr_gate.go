@@ -85,6 +85,7 @@ func newSCRGate(w *circuit.Wiring, s *stage.Stage, driver *stage.Stage) (*scrGat
 	u.outputs, u.contests = nil, nil
 	m := &scrGate{ujtModel: u, gateStage: s, scr: s.Anchor.Ratings}
 	m.evaluate = m.gateAt
+	m.box[m.v.on].Pivot = true // a high on-resistance makes a small, long pulse, and the stop at the valley decides
 	if len(s.Parts[stage.GateCoupling]) > 0 {
 		return nil, fmt.Errorf("a capacitor couples its gate; coupled gates are not computed yet")
 	}

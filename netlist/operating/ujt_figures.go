@@ -60,6 +60,7 @@ func (m *ujtModel) windowFigures() {
 		m.figure("timing_resistance_max", "ohm", func() float64 { return max(s.vth-s.lower-s.vp, 0) / s.ip }, func() string {
 			return fmt.Sprintf("(V_th - V_P)/I_P = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vp, "V"), show(s.ip, "A"))
 		})
+		m.outputs[len(m.outputs)-1].bent = true // a higher bar voltage raises the peak and lowers the peak current
 	}
 	m.figure("timing_capacitance", "F", func() float64 { return s.c }, func() string {
 		return "all capacitors from the emitter to the rails"
@@ -104,7 +105,7 @@ func (m *ujtModel) frequency() float64 { return 1 / m.s.period }
 func (m *ujtModel) nonlinearity() float64 {
 	s := &m.s
 	if !s.fires {
-		return math.NaN()
+		return 1 // the curve that only just reaches the peak departs by the whole swing
 	}
 	return rampDeparture(math.Log1p((s.vp - s.vv) / (s.rth * s.atPeak)))
 }
@@ -136,6 +137,7 @@ func (m *ujtModel) loadFigures() {
 	m.figure("emitter_current_rms", "A", m.rms, func() string {
 		return "I_pk sqrt(tau/(2 T)) of the exponential pulse"
 	})
+	m.outputs[len(m.outputs)-1].bent = true // a higher peak makes a larger pulse, and a rarer one
 	m.figure("interbase_power", "W", m.barPower, func() string {
 		return fmt.Sprintf("V_BB^2/R_BB + C V_P^2 f/2 = %s^2/%s + the emitter's share", show(m.interbase(), "V"), show(s.rbb, "ohm"))
 	})

@@ -19,10 +19,10 @@ func (m *ujtModel) limits() {
 func (m *ujtModel) windowLimits() {
 	s := &m.s
 	if m.v.ip >= 0 {
-		m.compare(contest{name: "charging_current_at_peak", limitName: "peak_current_required", unit: "A", bound: Min,
+		m.compare(contest{name: "charging_current_at_peak", limitName: "peak_current_required", unit: "A", bound: Min, bent: true,
 			value: func() float64 { return s.atPeak }, limit: func() float64 { return s.ip }, working: m.peakWorking})
 		if m.caps.leaks() {
-			m.compare(contest{name: "charging_current_after_leakage", limitName: "peak_current_required", unit: "A", bound: Min,
+			m.compare(contest{name: "charging_current_after_leakage", limitName: "peak_current_required", unit: "A", bound: Min, bent: true,
 				value: func() float64 { return s.atPeak - s.leak }, limit: func() float64 { return s.ip },
 				working: func() string { return m.peakWorking() + ", less a leakage of " + show(s.leak, "A") }})
 		}
@@ -102,7 +102,7 @@ func (m *ujtModel) emitterLimits() {
 		}
 	}
 	if limit, mark, ok := m.rated("ie_rms"); ok {
-		m.compare(contest{name: "emitter_current_rms", limitName: "ie_rms", unit: "A", bound: Max, value: m.rms,
+		m.compare(contest{name: "emitter_current_rms", limitName: "ie_rms", unit: "A", bound: Max, bent: true, value: m.rms,
 			limit: limit, limitMark: mark, working: func() string { return "I_pk sqrt(tau/(2 T))" }})
 	}
 	if limit, mark, ok := m.rated("vb2e"); ok {
