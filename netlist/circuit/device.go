@@ -157,6 +157,10 @@ func (p *placing) semiconductor(letter byte, fields []syntax.Value, at int, r *p
 		p.fail(p.card.e.Name, "%s needs %d nodes and a model", source.Visible(p.card.e.Name.Text), need)
 		return
 	}
+	if letter == 'T' && len(p.card.e.Pairs) == 0 {
+		p.fail(p.card.e.Name, "%s starts like a transmission line but has no z0=; is this a card?", source.Visible(p.card.e.Name.Text))
+		return
+	}
 	if !known {
 		kind = Unknown
 	}
