@@ -44,7 +44,8 @@ func (n *Network) add(kind branchKind, a, b Node) Branch {
 	return Branch(len(n.branches) - 1)
 }
 
-// Resistor adds a resistor between a and b; its value is in ohm, above zero.
+// Resistor adds a resistor between a and b; its value is in ohm. Less than a
+// milliohm, as at the end of a potentiometer's travel, counts as a milliohm.
 func (n *Network) Resistor(a, b Node) Branch { return n.add(resistor, a, b) }
 
 // Voltage adds an ideal voltage source; its value is the voltage of plus over

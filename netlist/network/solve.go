@@ -33,6 +33,10 @@ type diodeState struct {
 // hangs free still has an answer; 1e-15 S is far below any real insulation.
 const leak = 1e-15
 
+// wire is the least resistance in ohm: no more than a wire, and far enough from
+// the largest resistor of a board for the arithmetic.
+const wire = 1e-3
+
 // blocking is the conductance of a blocking diode in siemens.
 const blocking = 1e-12
 
@@ -98,7 +102,7 @@ func (s *Solver) assemble() {
 	for i, b := range s.branches {
 		switch b.kind {
 		case resistor:
-			s.stamp(b, 1/s.Values[i], 0)
+			s.stamp(b, 1/max(s.Values[i], wire), 0)
 		case current:
 			s.inject(b.a, -s.Values[i])
 			s.inject(b.b, s.Values[i])
