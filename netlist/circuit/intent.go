@@ -16,7 +16,6 @@ type declared struct {
 	deck *syntax.Deck
 	env  *environment
 	keys map[string]syntax.IntentPair
-	at   map[string]*syntax.Deck
 }
 
 // intentKey is one key: which elements it fits and how it is taken.

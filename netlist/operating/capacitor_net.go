@@ -22,10 +22,9 @@ type capacitorNet struct {
 
 // capacitorPart is one capacitor of the network.
 type capacitorPart struct {
-	branch  network.Branch
-	slot    slot
-	leak    int // variable of the leakage current at 25 deg C, -1 for none
-	leaking bool
+	branch network.Branch
+	slot   slot
+	leak   int // variable of the leakage current at 25 deg C, -1 for none
 }
 
 // newCapacitorNet takes in the capacitors around a net; every net that is only

@@ -219,6 +219,3 @@ func (m *mesh) load(x []float64) {
 		}
 	}
 }
-
-// volts returns a net's potential in the last solution.
-func (m *mesh) volts(n circuit.NodeID) float64 { return m.solver.Voltage(m.node(n)) }

@@ -116,8 +116,8 @@ func (l *loadCircuit) amperes() float64 {
 	if a := l.stage.Anchor.Intent.Amps; a != nil {
 		return *a
 	}
-	if l.resistance > noPath {
-		return math.NaN()
+	if l.resistance > noPath || l.resistance < noResistance {
+		return math.NaN() // nothing on the board limits it
 	}
 	crest := max(l.block, 0) / l.resistance
 	switch {
@@ -137,6 +137,9 @@ func (l *loadCircuit) amperesWorking() string {
 		show(l.block, "V"), show(l.resistance, "ohm"))
 }
 
+// noResistance is a resistance in ohm that limits no current.
+const noResistance = 1e-6
+
 // latching returns the time until the load current passes the latching current
 // on a dc supply: -(L/R) ln(1 - I_L R/V); infinite where it never does.
 func (l *loadCircuit) latching(amperes float64) float64 {
@@ -149,6 +152,9 @@ func (l *loadCircuit) latching(amperes float64) float64 {
 	}
 	if l.inductance == 0 {
 		return 0
+	}
+	if l.resistance < noResistance {
+		return amperes * l.inductance / l.block
 	}
 	return -l.inductance / l.resistance * math.Log1p(-share)
 }

@@ -117,7 +117,6 @@ type Loader struct {
 	roots  []string // resolved folders
 	limits Limits
 	open   map[string]bool // resolved paths that were read
-	top    string
 }
 
 // NewLoader returns a loader for the includes of a top file; top is empty for

@@ -125,7 +125,7 @@ var baseTwoOff = &rule.Rule{
 		p.Each(stage.UJTOscillator, func(a *operating.Account) {
 			if !a.Facts["base-two-missing"] {
 				p.Judge(a, rule.Case{Comparison: "base_two_drift", Place: []stage.Role{stage.BaseTwo}, Mend: []stage.Role{stage.BaseTwo},
-					FailsOnly: true, Fails: "the rate drifts with temperature", Value: "the drift per 10 K of the nominal board", Limit: "a compensated stage stays below"})
+					FailsOnly: true, Percent: true, Fails: "the rate drifts with temperature", Value: "the drift per 10 K of the nominal board", Limit: "a compensated stage stays below"})
 			}
 		})
 	},
@@ -173,7 +173,7 @@ var frequencyDrift = &rule.Rule{
 					return
 				}
 			}
-			p.Judge(a, rule.Case{Comparison: "frequency_drift_per_10k", Place: place, Mend: []stage.Role{stage.BaseTwo}, FailsOnly: true, Most: rule.Doubt,
+			p.Judge(a, rule.Case{Comparison: "frequency_drift_per_10k", Place: place, Mend: []stage.Role{stage.BaseTwo}, FailsOnly: true, Most: rule.Doubt, Percent: true,
 				Fails: "the rate drifts with temperature", Value: "the drift per 10 K of the nominal board", Limit: "a steady stage stays below"})
 		})
 	},

@@ -35,6 +35,7 @@ type Case struct {
 	Limit      string       // the limit in words: "the peak current the transistor needs"
 	FailsOnly  bool         // no doubt where the limit is kept by less than a quarter
 	Most       Grade        // the worst grade; 0 means Hold
+	Percent    bool         // value and limit are shares, told in percent
 }
 
 // Judge holds one comparison of a stage against its limit. Broken: a hold, or a
@@ -61,7 +62,11 @@ func (c Case) grade(k operating.Comparison) Grade {
 // message tells what happens, then value and limit.
 func (c Case) message(k operating.Comparison) string {
 	relation := map[operating.Bound]string{operating.Min: "below", operating.Max: "above"}[k.Bound]
-	figures := fmt.Sprintf("%s is %s, %s %s", c.Value, quantity.Format(k.Value, k.Unit), c.Limit, quantity.Format(k.Limit, k.Unit))
+	show := quantity.Format
+	if c.Percent {
+		show = func(v float64, _ string) string { return fmt.Sprintf("%.3g %%", 100*v) }
+	}
+	figures := fmt.Sprintf("%s is %s, %s %s", c.Value, show(k.Value, k.Unit), c.Limit, show(k.Limit, k.Unit))
 	if !k.Fails() {
 		return fmt.Sprintf("little margin: %s; it clears the limit by less than a quarter", figures)
 	}
