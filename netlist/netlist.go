@@ -69,13 +69,9 @@ func build(file *source.File, includes circuit.Includes, opts Options) *Board {
 	b := &Board{Path: file.Path, File: file}
 	b.Circuit, b.Problems = circuit.Build(deck, circuit.Options{Parts: opts.Parts, Includes: includes, Limits: opts.Limits})
 	b.NothingRead = len(b.Circuit.Elements) == 0
-	b.work()
-	return b
-}
-
-func (b *Board) work() {
 	b.Stages = stage.Recognise(b.Circuit)
 	b.Accounts = operating.Compute(b.Circuit, b.Stages)
+	return b
 }
 
 // With returns the same board with other nominal values for the elements named,
@@ -83,6 +79,7 @@ func (b *Board) work() {
 func (b *Board) With(values map[string]float64) *Board {
 	other := *b
 	other.Circuit = b.Circuit.With(values)
-	other.work()
+	other.Stages = stage.Recognise(other.Circuit)
+	other.Accounts = operating.Update(other.Circuit, other.Stages, b.Accounts)
 	return &other
 }

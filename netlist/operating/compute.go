@@ -8,15 +8,40 @@ import (
 // Compute works out every stage of a circuit, in their order. A stage that
 // cannot be worked out has an account all the same, which says why.
 func Compute(c *circuit.Circuit, stages []*stage.Stage) []*Account {
+	return Update(c, stages, nil)
+}
+
+// Update is Compute for a circuit in which some elements have other values than
+// when the accounts before were made: accounts that those elements did not
+// enter are taken over.
+func Update(c *circuit.Circuit, stages []*stage.Stage, before []*Account) []*Account {
 	if len(stages) == 0 {
 		return nil
 	}
 	w := circuit.NewWiring(c)
 	accounts := make([]*Account, len(stages))
 	for i, s := range stages {
+		if len(before) == len(stages) && before[i].holds(c, s) {
+			accounts[i] = before[i]
+			continue
+		}
 		accounts[i] = account(w, s, stages)
 	}
 	return accounts
+}
+
+// holds reports whether an account is still right: it is of the same stage, and
+// every element that entered it stands in the circuit unchanged.
+func (a *Account) holds(c *circuit.Circuit, s *stage.Stage) bool {
+	if a.uses == nil || a.Stage.Kind != s.Kind || a.Stage.Anchor != s.Anchor || a.Stage.Gap != s.Gap {
+		return false
+	}
+	for e := range a.uses {
+		if e.Index >= len(c.Elements) || c.Elements[e.Index] != e {
+			return false
+		}
+	}
+	return true
 }
 
 func account(w *circuit.Wiring, s *stage.Stage, stages []*stage.Stage) *Account {
@@ -46,6 +71,7 @@ func (a *Account) oscillator(w *circuit.Wiring, s *stage.Stage) {
 		a.cannot(err)
 		return
 	}
+	a.uses = m.slots
 	a.Figures, a.Comparisons = m.solve()
 	a.drift(drifting{&m.model, m.frequency}, s)
 	a.baseTwo(m)
@@ -94,6 +120,7 @@ func (a *Account) gate(w *circuit.Wiring, s *stage.Stage, stages []*stage.Stage)
 	} else {
 		m.withLoad(load)
 	}
+	a.uses = m.slots
 	a.Figures, a.Comparisons = m.solve()
 	a.Comparisons = severest(a.Comparisons)
 	a.Unchecked = append(a.Unchecked, m.unchecked()...)

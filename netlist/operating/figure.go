@@ -4,6 +4,7 @@
 package operating
 
 import (
+	"standoff/netlist/circuit"
 	"standoff/netlist/part"
 	"standoff/netlist/stage"
 )
@@ -85,6 +86,7 @@ type Account struct {
 	Comparisons []Comparison
 	Facts       map[string]bool // yes/no findings of the physics, by name
 	Unchecked   []Unchecked
+	uses        map[*circuit.Element]slot // what entered; nil where nothing was worked out
 }
 
 // Figure returns the figure of that name.

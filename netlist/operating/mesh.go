@@ -18,6 +18,8 @@ type mesh struct {
 	branches []meshBranch
 	crest    bool    // sine sources stand at their crest
 	polarity float64 // +1 or -1: which crest
+	there    []float64
+	back     []float64
 }
 
 // meshBranch ties a branch of the solver to the slot that gives its value.
@@ -218,4 +220,19 @@ func (m *mesh) load(x []float64) {
 			m.solver.SetDiode(mb.branch, diodeSlope, x[mb.zener], diodeSlope)
 		}
 	}
+}
+
+// between returns the resistance between two nets in the last solution, diodes
+// staying as they are.
+func (m *mesh) between(a, b circuit.NodeID) float64 {
+	if m.there == nil {
+		m.there, m.back = make([]float64, m.solver.Nodes()), make([]float64, m.solver.Nodes())
+	}
+	i, j := m.node(a), m.node(b)
+	m.solver.Transfer(i, m.there)
+	if m.solver.IsFixed(j) {
+		return m.there[i]
+	}
+	m.solver.Transfer(j, m.back)
+	return m.there[i] - m.there[j] - m.back[i] + m.back[j]
 }

@@ -86,11 +86,12 @@ func (m *scrGate) gateLimits() {
 
 // smallNote says why a pulse from a small capacitor is only a doubt.
 func (m *scrGate) smallNote(because string) string {
-	for i, p := range m.caps.parts {
-		if i == 0 && m.box[p.slot.index].Low < m.sheet.farads && m.caps.single && len(m.caps.parts) == 1 {
-			return join(because, "the guaranteed pulse holds for "+show(m.sheet.farads, "F")+
-				" and more; below that it is estimated")
-		}
+	least := make([]float64, len(m.box))
+	for i, v := range m.box {
+		least[i] = v.Low
+	}
+	if m.caps.farads(least) < m.sheet.farads {
+		return join(because, "the guaranteed pulse holds for "+show(m.sheet.farads, "F")+" and more; below that it is estimated")
 	}
 	return because
 }
@@ -112,7 +113,7 @@ func (m *scrGate) triggerLimits(d *drive, volts func() float64, because string) 
 			}
 			return m.widthRequired(*d)
 		}, limitMark: mark, because: note, working: m.widthWorking})
-	if len(m.shunts) > 0 {
+	if m.shunt != nil {
 		m.compare(contest{name: "gate_shunt_current", limitName: "drive_left_for_gate_resistor", unit: "A", bound: Max,
 			value: func() float64 { return d.required - m.amperes(d) }, limit: func() float64 { return d.current - m.amperes(d) }, limitMark: mark, because: note, working: m.pulseWorking})
 	}

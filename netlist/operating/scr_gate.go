@@ -28,11 +28,9 @@ type scrGate struct {
 	source    network.Branch // voltage of the capacitor over the lower rail
 	on        network.Branch // resistance of the emitter path
 	gate      network.Branch // the gate as a clamp
-	shunts    []slot         // resistors straight across the gate
+	shunt     *mesh          // what lies across the gate, nil where nothing does
 	need      trigger
 	g         gateState
-	ohms      []float64
-	ohmsBack  []float64
 	n         gateNodes
 	turnOn    float64 // t_gt of the sheet, 0 where it gives none
 }
@@ -118,16 +116,18 @@ func (m *scrGate) driveNetwork() error {
 		return err
 	}
 	m.drive.solver.SetDiode(m.gate, gateSlope, math.Inf(1), 1)
-	for _, e := range m.w.Between(g["gate"], g["cathode"]) {
-		if e.Kind == circuit.Resistor {
-			m.shunts = append(m.shunts, m.element(e))
+	if across := m.gateStage.Parts[stage.GateShunt]; len(across) > 0 {
+		m.shunt, err = newMesh(m.bench, []circuit.NodeID{g["gate"], g["cathode"]}, func(e *circuit.Element) bool { return !contains(across, e) })
+		if err != nil {
+			return err
+		}
+		if err := m.shunt.compile(); err != nil {
+			return err
 		}
 	}
 	m.n = gateNodes{gate: m.drive.node(g["gate"]), cathode: m.drive.node(g["cathode"]), lower: m.drive.node(n["lower"]),
 		base1: m.drive.node(n["base1"]), quietGate: m.standing.node(g["gate"]), quietCathode: m.standing.node(g["cathode"])}
 	m.turnOn, _, _ = m.scr.Limit("tgt")
-	m.ohms = make([]float64, m.standing.solver.Nodes())
-	m.ohmsBack = make([]float64, m.standing.solver.Nodes())
 	return nil
 }
 
@@ -142,8 +142,10 @@ func (m *scrGate) gateAt(x []float64) {
 	g.open, _, _ = m.pulseAt(m.s.vp, never)
 	_, g.short, _ = m.pulseAt(m.s.vp, 0)
 	shunt := 0.0
-	for _, s := range m.shunts {
-		shunt += 1 / m.value(s, x)
+	if m.shunt != nil {
+		m.shunt.load(x)
+		m.shunt.solver.Solve()
+		shunt = 1 / m.shunt.between(m.gateStage.Nodes["gate"], m.gateStage.Nodes["cathode"])
 	}
 	g.sheet = m.against(m.need.amperes, m.need.volts, shunt)
 	if m.need.assumed != "" {
@@ -206,9 +208,7 @@ func (m *scrGate) quiet() {
 	gate, cathode := m.n.quietGate, m.n.quietCathode
 	solver := m.standing.solver
 	m.g.standby = solver.Voltage(gate) - solver.Voltage(cathode)
-	solver.Transfer(gate, m.ohms)
-	solver.Transfer(cathode, m.ohmsBack)
-	m.g.shunt = m.ohms[gate] - m.ohms[cathode] - m.ohmsBack[gate] + m.ohmsBack[cathode]
+	m.g.shunt = m.standing.between(m.gateStage.Nodes["gate"], m.gateStage.Nodes["cathode"])
 }
 
 // newTrigger takes the trigger point of the coldest ambient from the sheet.

@@ -60,13 +60,9 @@ func (m *model) gateMesh(s *stage.Stage) (at func([]float64), ohms func() float6
 		return nil, nil
 	}
 	result := math.NaN()
-	there, back := make([]float64, mesh.solver.Nodes()), make([]float64, mesh.solver.Nodes())
-	g, k := mesh.node(n["gate"]), mesh.node(n["cathode"])
 	return func(x []float64) {
 		mesh.load(x)
 		mesh.solver.Solve()
-		mesh.solver.Transfer(g, there)
-		mesh.solver.Transfer(k, back)
-		result = there[g] - there[k] - back[g] + back[k]
+		result = mesh.between(n["gate"], n["cathode"])
 	}, func() float64 { return result }
 }

@@ -20,7 +20,6 @@ type loadCircuit struct {
 	anode, cathode circuit.NodeID
 	coils          []slot
 	hertz          float64 // 0 for dc
-	ohms, back     []float64
 
 	block, reverse, resistance, inductance float64
 	bothHalves                             bool
@@ -50,8 +49,6 @@ func newLoad(b *bench, s *stage.Stage) (*loadCircuit, error) {
 			l.coils = append(l.coils, b.element(e))
 		}
 	}
-	l.ohms = make([]float64, l.mesh.solver.Nodes())
-	l.back = make([]float64, l.mesh.solver.Nodes())
 	return l, nil
 }
 
@@ -63,9 +60,7 @@ func (l *loadCircuit) at(x []float64) {
 	m.solver.Solve()
 	a, k := m.node(l.anode), m.node(l.cathode)
 	l.block = m.solver.Voltage(a) - m.solver.Voltage(k)
-	m.solver.Transfer(a, l.ohms)
-	m.solver.Transfer(k, l.back)
-	l.resistance = l.ohms[a] - l.ohms[k] - l.back[a] + l.back[k]
+	l.resistance = m.between(l.anode, l.cathode)
 	l.inductance = 0
 	for _, c := range l.coils {
 		l.inductance += l.bench.value(c, x)

@@ -58,8 +58,10 @@ func (g *gateReading) gateSide() {
 	ends := func(n circuit.NodeID) bool {
 		return n == g.gate || n == g.cathode || g.w.IsFixed(n) || g.driver != nil && n == drive
 	}
-	for _, e := range prune(g.w, area.Elements, ends) {
-		g.stage.add(g.gateRole(e), e)
+	list := prune(g.w, area.Elements, ends)
+	lead := g.leadParts(list)
+	for _, e := range list {
+		g.stage.add(g.gateRole(e, lead), e)
 	}
 	if g.driver != nil && drive == g.gate {
 		g.stage.add(GateShunt, g.driver.Parts[BaseOne]...)
@@ -76,16 +78,30 @@ func (g *gateReading) driverAt(n circuit.NodeID) *Stage {
 	return nil
 }
 
-// gateRole says whether an element of the gate network lies across the gate or
-// in its lead.
-func (g *gateReading) gateRole(e *circuit.Element) Role {
-	a, b := g.w.Net(e.Nodes[0]), g.w.Net(e.Nodes[1])
-	across := a == g.cathode || b == g.cathode || g.w.IsFixed(a) || g.w.IsFixed(b)
+// leadParts returns the elements of the gate network that lie on a way from the
+// driver to the gate; without a driver, from any source to the gate.
+func (g *gateReading) leadParts(list []*circuit.Element) []*circuit.Element {
+	quiet := func(n circuit.NodeID) bool {
+		n = g.w.Net(n)
+		return n == g.cathode || g.driver != nil && g.w.IsFixed(n)
+	}
+	lead := slices.DeleteFunc(slices.Clone(list), func(e *circuit.Element) bool {
+		return quiet(e.Nodes[0]) || quiet(e.Nodes[1])
+	})
+	drive := g.stage.Nodes["drive"]
+	return prune(g.w, lead, func(n circuit.NodeID) bool {
+		return n == g.gate || g.driver != nil && n == drive || g.driver == nil && g.w.IsFixed(n)
+	})
+}
+
+// gateRole says whether an element of the gate network lies in the gate lead
+// or across the gate.
+func (g *gateReading) gateRole(e *circuit.Element, lead []*circuit.Element) Role {
 	switch {
-	case e.Kind == circuit.Capacitor && !across:
-		return GateCoupling
-	case across:
+	case !slices.Contains(lead, e):
 		return GateShunt
+	case e.Kind == circuit.Capacitor:
+		return GateCoupling
 	}
 	return GateSeries
 }

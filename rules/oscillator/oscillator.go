@@ -48,3 +48,15 @@ func deck(title, supply, rt, ct, rb2, rb1 string, more ...string) string {
 }
 
 var timing = []stage.Role{stage.TimingResistor, stage.CurrentSource}
+
+var discharge = []stage.Role{stage.EmitterSeries, stage.BaseOne}
+
+// deck2 is deck with another transistor.
+func deck2(title, supply, rt, ct, transistor, rb1 string, more ...string) string {
+	text := title + "\nV1 vcc 0 " + supply + "\nR1 vcc e " + rt + "\nC1 e 0 " + ct + "\nXQ1 e b1 b2 " + transistor +
+		"\nR2 vcc b2 330\nR3 b1 0 " + rb1 + "\n"
+	for _, m := range more {
+		text += m + "\n"
+	}
+	return text + ".end\n"
+}

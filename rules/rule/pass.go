@@ -2,6 +2,7 @@ package rule
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"standoff/netlist/circuit"
@@ -25,7 +26,8 @@ func (p *Pass) Each(kind stage.Kind, f func(*operating.Account)) {
 	}
 }
 
-// Case says how one comparison is judged and told.
+// Case says how one comparison is judged and told. A role that a gate stage does
+// not have is looked for in the stage that fires it.
 type Case struct {
 	Comparison string
 	Place      []stage.Role // whose card the finding belongs to: the first that exists, else the anchor
@@ -36,6 +38,7 @@ type Case struct {
 	FailsOnly  bool         // no doubt where the limit is kept by less than a quarter
 	Most       Grade        // the worst grade; 0 means Hold
 	Percent    bool         // value and limit are shares, told in percent
+	driver     *operating.Account
 }
 
 // Judge holds one comparison of a stage against its limit. Broken: a hold, or a
@@ -45,7 +48,39 @@ func (p *Pass) Judge(a *operating.Account, c Case) {
 	if !ok || !k.Fails() && (c.FailsOnly || !k.Tight()) {
 		return
 	}
+	c.driver = p.driver(a)
 	p.Report(Finding{Grade: c.grade(k), Message: c.message(k)}.For(a, k, c))
+}
+
+// driver returns the account of the stage that fires a gate stage, nil where
+// there is none.
+func (p *Pass) driver(gate *operating.Account) *operating.Account {
+	for _, a := range p.Accounts {
+		if slices.Contains(a.Stage.Drives, gate.Stage) {
+			return a
+		}
+	}
+	return nil
+}
+
+// host returns the account whose stage has the role: the stage's own, else that
+// of its driver, else the stage's own again.
+func (c Case) host(a *operating.Account, role stage.Role) *operating.Account {
+	if c.driver != nil && len(a.Stage.Parts[role]) == 0 && len(c.driver.Stage.Parts[role]) > 0 {
+		return c.driver
+	}
+	return a
+}
+
+// placed puts a finding on the card of the first role of Place that the stage or
+// its driver has.
+func (c Case) placed(f Finding, a *operating.Account) Finding {
+	for _, role := range c.Place {
+		if host := c.host(a, role); len(host.Stage.Parts[role]) > 0 {
+			return f.Placed(host, role)
+		}
+	}
+	return f.Placed(a)
 }
 
 func (c Case) grade(k operating.Comparison) Grade {
@@ -79,12 +114,12 @@ func (c Case) message(k operating.Comparison) string {
 
 // For fills a finding with a stage, a comparison and the places of a case.
 func (f Finding) For(a *operating.Account, k operating.Comparison, c Case) Finding {
+	f = c.placed(f, a)
 	f.Stage = a.Stage.Anchor.Designator
-	f = f.Placed(a, c.Place...)
 	f.Figure = &Figure{Name: k.Name, Value: k.Value, Limit: k.Limit, Bound: string(k.Bound), Unit: k.Unit}
 	f.Corner, f.Working = k.Corner, k.Working
 	for _, role := range c.Mend {
-		for _, e := range a.Stage.Parts[role] {
+		for _, e := range c.host(a, role).Stage.Parts[role] {
 			f.Mend = append(f.Mend, Mend{Parts: []*circuit.Element{e}})
 		}
 	}
