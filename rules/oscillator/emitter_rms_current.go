@@ -35,8 +35,10 @@ R3 b1 0 4.7
 .end
 `,
 	Check: each(rule.Case{
-		Comparison: "emitter_current_rms", Place: []stage.Role{stage.TimingCapacitor}, Mend: []stage.Role{stage.TimingResistor, stage.TimingCapacitor},
-		Fails: "the emitter runs hotter than it may",
-		Value: "the rms emitter current", Limit: "the emitter is rated for",
+		Comparison: "emitter_current_rms",
+		Place:      []stage.Role{stage.TimingCapacitor},
+		Mend:       []stage.Role{stage.TimingResistor, stage.TimingCapacitor},
+		Fails:      "the emitter runs hotter than it may",
+		Value:      "the rms emitter current", Limit: "the emitter is rated for",
 	}),
 }

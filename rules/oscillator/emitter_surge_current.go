@@ -10,8 +10,8 @@ var emitterSurge = &rule.Rule{
 	Why: "At the end of each ramp the capacitor empties through the emitter; only the on-resistance of the " +
 		"transistor and the resistors in the emitter and base-one leads limit the current. Beyond the " +
 		"rated peak the junction is damaged a little at every pulse.",
-	Formula: "V_P/(R_on + R_B1 + R_E) < I_E(pulse), unless the maker allows the capacitor without a resistor " +
-,
+	Formula: "V_P/(R_on + R_B1 + R_E) < I_E(pulse), unless the maker " +
+		"allows the capacitor without a resistor",
 	Source: "peak emitter current of the sheet; R_on from the guaranteed base-one pulse",
 	Failing: `Ice rink bell
 V1 vcc 0 24

@@ -10,8 +10,8 @@ var frequencyOffTarget = &rule.Rule{
 	Title: "Some boards miss the declared frequency or period.",
 	Why: "With every part spread, tolerance, supply, temperature and all of a potentiometer's travel " +
 		"counted, the rate leaves the declared target on some boards.",
-	Formula: "T = R_th C ln((V_th - V_V)/(V_th - V_P)) + (R_on + R_B1 + R_E) C ln(V_P/V_V) within the target " +
-,
+	Formula: "T = R_th C ln((V_th - V_V)/(V_th - V_P)) + (R_on + R_B1 + " +
+		"R_E) C ln(V_P/V_V) within the target",
 	Source: "Boylestad and Nashelsky, eq. 17.13 and below",
 	Failing: `Aquarium dosing timer
 V1 vcc 0 20

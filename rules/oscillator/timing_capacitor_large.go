@@ -34,8 +34,11 @@ R3 b1 0 4.7
 .end
 `,
 	Check: each(rule.Case{
-		Comparison: "timing_capacitance_direct", Place: []stage.Role{stage.TimingCapacitor}, Mend: []stage.Role{stage.EmitterSeries, stage.TimingCapacitor}, FailsOnly: true,
-		Fails: "every discharge strains the emitter, since there is not enough resistance in its path",
+		Comparison: "timing_capacitance_direct",
+		Place:      []stage.Role{stage.TimingCapacitor},
+		Mend:       []stage.Role{stage.EmitterSeries, stage.TimingCapacitor}, FailsOnly: true,
+		Fails: "every discharge strains the emitter, since there is not enough " +
+			"resistance in its path",
 		Value: "the timing capacitor", Limit: "the maker allows without a resistor up to",
 	}),
 }

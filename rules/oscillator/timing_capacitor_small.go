@@ -42,13 +42,13 @@ R3 b1 0 22
 				return
 			}
 			place := []stage.Role{stage.TimingCapacitor}
-			f := rule.Finding{Grade: rule.Hold, Message: fmt.Sprintf("the stage may not switch: the timing capacitor is %s, below %s",
-				quantity.Format(k.Value, k.Unit), quantity.Format(k.Limit, k.Unit))}
+			f, text := rule.Finding{Grade: rule.Hold}, "the stage may not switch"
 			if !k.Fails() {
-				k.Limit, f.Grade = looseCapacitor, rule.Doubt
-				f.Message = fmt.Sprintf("strays and the emitter's own charge set part of the rate: "+
-					"the timing capacitor is %s, below %s", quantity.Format(k.Value, k.Unit), quantity.Format(k.Limit, k.Unit))
+				k.Limit = looseCapacitor
+				f.Grade, text = rule.Doubt, "strays and the emitter's own charge set part of the rate"
 			}
+			f.Message = fmt.Sprintf("%s: the timing capacitor is %s, below %s", text,
+				quantity.Format(k.Value, k.Unit), quantity.Format(k.Limit, k.Unit))
 			p.Report(f.For(a, k, rule.Case{Place: place, Mend: place}))
 		})
 	},

@@ -151,8 +151,8 @@ func (r *Rule) Validate() error {
 	if r.ID == "" || strings.Trim(r.ID, "abcdefghijklmnopqrstuvwxyz0123456789-") != "" {
 		return fmt.Errorf("rule %q: an ID is lower-case words with hyphens", r.ID)
 	}
-	for name, text := range map[string]string{"group": r.Group, "title": r.Title, "why": r.Why, "formula": r.Formula,
-		"source": r.Source, "failing netlist": r.Failing, "mended netlist": r.Mended} {
+	for name, text := range map[string]string{"group": r.Group, "title": r.Title, "why": r.Why,
+		"formula": r.Formula, "source": r.Source, "failing netlist": r.Failing, "mended netlist": r.Mended} {
 		if strings.TrimSpace(text) == "" {
 			return fmt.Errorf("rule %s has no %s", r.ID, name)
 		}

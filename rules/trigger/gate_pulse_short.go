@@ -41,8 +41,10 @@ RL vcc a 100
 .end
 `,
 	Check: each(rule.Case{
-		Comparison: "gate_pulse_width", Place: []stage.Role{stage.TimingCapacitor}, Mend: []stage.Role{stage.GateSeries, stage.BaseOne, stage.TimingCapacitor},
-		Fails: "the pulse is over before the thyristor is on",
-		Value: "the usable pulse width", Limit: "turning on takes",
+		Comparison: "gate_pulse_width",
+		Place:      []stage.Role{stage.TimingCapacitor},
+		Mend:       []stage.Role{stage.GateSeries, stage.BaseOne, stage.TimingCapacitor},
+		Fails:      "the pulse is over before the thyristor is on",
+		Value:      "the usable pulse width", Limit: "turning on takes",
 	}),
 }

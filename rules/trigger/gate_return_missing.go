@@ -38,6 +38,7 @@ R5 g 0 820
 RL vcc a 100
 .end
 `,
-	Check: fact("gate-return-missing", "leakage has no way from the gate: there is no dc path from gate to cathode",
+	Check: fact("gate-return-missing",
+		"leakage has no way from the gate: there is no dc path from gate to cathode",
 		"add a resistor from gate to cathode; 1 kohm is what most sheets are stated with"),
 }

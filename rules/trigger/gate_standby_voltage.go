@@ -40,8 +40,10 @@ RL vcc a 100
 .end
 `,
 	Check: each(rule.Case{
-		Comparison: "gate_standby_voltage", Place: []stage.Role{stage.BaseOne}, Mend: []stage.Role{stage.BaseOne, stage.GateShunt, stage.GateSeries},
-		Fails: "a hot thyristor may fire by itself",
-		Value: "the standing voltage on the gate", Limit: "it is sure not to fire below",
+		Comparison: "gate_standby_voltage",
+		Place:      []stage.Role{stage.BaseOne, stage.GateSeries},
+		Mend:       []stage.Role{stage.BaseOne, stage.GateShunt, stage.GateSeries},
+		Fails:      "a hot thyristor may fire by itself",
+		Value:      "the standing voltage on the gate", Limit: "it is sure not to fire below",
 	}),
 }

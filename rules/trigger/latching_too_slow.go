@@ -12,8 +12,8 @@ var latchingSlow = &rule.Rule{
 		"over. An inductive load takes time for it; a load that never carries it leaves the thyristor off " +
 		"after every pulse.",
 	Formula: "-(L/R) ln(1 - I_L R/V) < pulse width; V/R > I_L",
-	Source: "Rashid, Power Electronics, ex. 10.11, with the latching current in place of the holding current " +
-,
+	Source: "Rashid, Power Electronics, ex. 10.11, with the latching " +
+		"current in place of the holding current",
 	Failing: `Solenoid plunger
 V1 vcc 0 20
 R1 vcc e 100k
