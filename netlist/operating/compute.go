@@ -25,7 +25,7 @@ func Update(c *circuit.Circuit, stages []*stage.Stage, before []*Account) []*Acc
 			accounts[i] = before[i]
 			continue
 		}
-		accounts[i] = account(w, s, stages)
+		accounts[i] = account(w, s)
 	}
 	return accounts
 }
@@ -44,7 +44,7 @@ func (a *Account) holds(c *circuit.Circuit, s *stage.Stage) bool {
 	return true
 }
 
-func account(w *circuit.Wiring, s *stage.Stage, stages []*stage.Stage) *Account {
+func account(w *circuit.Wiring, s *stage.Stage) *Account {
 	a := &Account{Stage: s, Facts: map[string]bool{}}
 	if s.Gap != "" {
 		a.Unchecked = append(a.Unchecked, Unchecked{Because: "the stage is not complete: " + s.Gap})
@@ -54,7 +54,7 @@ func account(w *circuit.Wiring, s *stage.Stage, stages []*stage.Stage) *Account 
 	case stage.UJTOscillator:
 		a.oscillator(w, s)
 	case stage.SCRGate:
-		a.gate(w, s, stages)
+		a.gate(w, s)
 	}
 	return a
 }
@@ -90,21 +90,9 @@ func (a *Account) drift(d drifting, s *stage.Stage) {
 	a.Comparisons = append(a.Comparisons, d.comparisons(drift, frequencyTarget(t.Frequency, t.Period))...)
 }
 
-// driver returns the stage that fires a gate stage, nil where none does.
-func driver(s *stage.Stage, stages []*stage.Stage) *stage.Stage {
-	for _, d := range stages {
-		for _, g := range d.Drives {
-			if g == s {
-				return d
-			}
-		}
-	}
-	return nil
-}
-
 // gate fills the account of a gate stage.
-func (a *Account) gate(w *circuit.Wiring, s *stage.Stage, stages []*stage.Stage) {
-	d := driver(s, stages)
+func (a *Account) gate(w *circuit.Wiring, s *stage.Stage) {
+	d := s.DrivenBy
 	if d == nil {
 		a.idleGate(w, s)
 		return

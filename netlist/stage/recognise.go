@@ -46,6 +46,7 @@ func link(timing, gates []*Stage) {
 		for _, g := range gates {
 			if slices.Contains(g.Parts[Driver], t.Anchor) {
 				t.Drives = append(t.Drives, g)
+				g.DrivenBy = t
 			}
 		}
 	}

@@ -59,6 +59,8 @@ type Stage struct {
 	Parts map[Role][]*circuit.Element
 	// Drives lists the stages that this one fires.
 	Drives []*Stage
+	// DrivenBy is the stage that fires this one; nil where none was recognised.
+	DrivenBy *Stage
 	// Nodes holds the nodes that matter, by name: "emitter", "capacitor",
 	// "base1", "base2", "upper", "lower", "anode", "gate", "cathode".
 	Nodes map[string]circuit.NodeID
