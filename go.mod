@@ -7,6 +7,7 @@ require (
 	github.com/fatih/color v1.19.0
 	github.com/rogpeppe/go-internal v1.16.0
 	github.com/spf13/cobra v1.10.2
+	gonum.org/v1/gonum v0.17.0
 )
 
 require (
