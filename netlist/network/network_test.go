@@ -102,8 +102,8 @@ func TestAZenerClampsADivider(t *testing.T) {
 	s.Values[v], s.Values[r], s.Values[d] = 20, 1000, 0.6
 	s.SetDiode(d, 1, 10, 1)
 	for _, c := range []struct{ supply, want float64 }{
-		{20, (20.0/1000 + 10) / (1 + 1.0/1000)}, // broken down: (v-10)/1 = (20-v)/1000
-		{5, 5},                                  // blocking
+		{20, (20.0/1000 + 10) / (1 + 1.0/1000)},  // broken down: (v-10)/1 = (20-v)/1000
+		{5, 5},                                   // blocking
 		{-5, (-5.0/1000 - 0.6) / (1 + 1.0/1000)}, // conducting
 	} {
 		s.Values[v] = c.supply

@@ -396,36 +396,47 @@ func (s *search) across(point []float64, asked, pivot int) {
 	}
 }
 
-// refine narrows variable i around the best point of one output by golden
-// section; the point itself and its outputs are updated through try.
+// refine moves variable i towards the vertex of the parabola through the best
+// point of one output and its neighbours on the grid, a few times; the outputs
+// are updated through try.
 func (s *search) refine(i, asked int) {
 	v := s.box[i]
-	width := (v.High - v.Low) / 3
-	centre := s.best[asked].at[i]
-	low, high := math.Max(v.Low, centre-width), math.Min(v.High, centre+width)
-	j, sense := asked/2, 1.0
-	if asked%2 == 1 {
-		sense = -1
-	}
+	j, sense := asked/2, float64(2*(asked%2)-1)
 	at := func(x float64) float64 {
 		s.x[i] = x
 		s.try()
 		return sense * s.y[j]
 	}
-	const golden = 0.6180339887498949
-	a, b := high-golden*(high-low), low+golden*(high-low)
-	fa, fb := at(a), at(b)
-	for k := 0; k < 24 && high-low > 1e-6*(v.High-v.Low); k++ {
-		if fa < fb {
-			high, b, fb = b, a, fa
-			a = high - golden*(high-low)
-			fa = at(a)
-		} else {
-			low, a, fa = a, b, fb
-			b = low + golden*(high-low)
-			fb = at(b)
+	middle := s.best[asked].at[i]
+	width := (v.High - v.Low) / 3
+	low, high := math.Max(v.Low, middle-width), math.Min(v.High, middle+width)
+	fl, fm, fh := at(low), at(middle), at(high)
+	for range parabolas {
+		x := vertex([3]float64{low, middle, high}, [3]float64{fl, fm, fh})
+		if !(x > low && x < high) || math.Abs(x-middle) < 1e-5*width {
+			return
+		}
+		f := at(x)
+		switch { // the better of the two becomes the middle
+		case f > fm && x > middle:
+			low, fl, middle, fm = middle, fm, x, f
+		case f > fm:
+			high, fh, middle, fm = middle, fm, x, f
+		case x > middle:
+			high, fh = x, f
+		default:
+			low, fl = x, f
 		}
 	}
+}
+
+// parabolas is how often a vertex is followed; each step gains about two digits.
+const parabolas = 4
+
+// vertex returns where the parabola through three points has its vertex.
+func vertex(x, f [3]float64) float64 {
+	a, b := (x[1]-x[0])*(f[1]-f[2]), (x[1]-x[2])*(f[1]-f[0])
+	return x[1] - 0.5*((x[1]-x[0])*a-(x[1]-x[2])*b)/(a-b)
 }
 
 func (s *search) extremes() []Extreme {

@@ -8,9 +8,10 @@ import (
 	"standoff/netlist/quantity"
 )
 
-// driftGrid is at how many temperatures, ends included, a drift is sampled; a
-// parabola through the outermost sample and its neighbours does the rest.
-const driftGrid = 5
+// driftGrid is at how many temperatures a drift is sampled: both ends and the
+// middle. A parabola through them finds an extreme between; the curve bends
+// little over any ambient range.
+const driftGrid = 3
 
 // drifting is what a stage needs to have its drift worked out: the point is
 // loaded, the frequency read.
@@ -21,14 +22,19 @@ type drifting struct {
 
 // over returns the least and greatest frequency over the ambient range with
 // everything else as in x, which is left with its ambient changed.
-func (d drifting) over(x []float64) (low, high float64) {
+func (d drifting) over(x []float64) (low, high float64) { return d.around(x, math.NaN()) }
+
+// around is over where the frequency at the nominal ambient is known already.
+func (d drifting) around(x []float64, nominal float64) (low, high float64) {
 	a := d.box[d.ambient]
 	var f [driftGrid]float64
 	low, high = math.Inf(1), math.Inf(-1)
 	for i := range f {
 		x[d.ambient] = a.Low + (a.High-a.Low)*float64(i)/(driftGrid-1)
-		d.evaluate(x)
-		f[i] = d.frequency()
+		if f[i] = nominal; x[d.ambient] != a.Nominal || nominal != nominal {
+			d.evaluate(x)
+			f[i] = d.frequency()
+		}
 		low, high = min(low, f[i]), max(high, f[i])
 	}
 	for i := 1; i < driftGrid-1; i++ {
@@ -56,13 +62,15 @@ func vertex(a, b, c float64) (float64, bool) {
 // relative returns the drift over the ambient range relative to the frequency
 // at the nominal ambient; 0 where the stage does not run.
 func (d drifting) relative(x []float64) float64 {
-	low, high := d.over(x)
-	x[d.ambient] = d.box[d.ambient].Nominal
+	a := d.box[d.ambient]
+	x[d.ambient] = a.Nominal
 	d.evaluate(x)
-	if f := d.frequency(); f > 0 {
-		return (high - low) / f
+	f := d.frequency()
+	if f <= 0 {
+		return 0
 	}
-	return 0
+	low, high := d.around(x, f)
+	return (high - low) / f
 }
 
 // span returns the width of the ambient range in K.

@@ -107,7 +107,7 @@ func (m *ujtModel) nonlinearity() float64 {
 	if !s.fires {
 		return 1 // the curve that only just reaches the peak departs by the whole swing
 	}
-	return rampDeparture(math.Log1p((s.vp - s.vv) / (s.rth * s.atPeak)))
+	return rampDeparture(s.ramp)
 }
 
 func rampDeparture(l float64) float64 {

@@ -90,6 +90,7 @@ type ujtState struct {
 	ip, iv                    float64
 	on, r1, re                float64 // discharge path
 	charge, discharge, period float64
+	ramp                      float64 // ln of the charging currents at valley and peak
 	leak                      float64
 	fires                     bool
 }
@@ -359,6 +360,7 @@ func (m *ujtModel) times() {
 		s.charge, s.period = math.Inf(1), math.Inf(1)
 		return
 	}
-	s.charge = s.rth * s.c * math.Log1p((s.vp-s.vv)/(s.rth*s.atPeak))
+	s.ramp = math.Log1p((s.vp - s.vv) / (s.rth * s.atPeak))
+	s.charge = s.rth * s.c * s.ramp
 	s.period = s.charge + s.discharge
 }
