@@ -2,7 +2,6 @@ package rule
 
 import (
 	"fmt"
-	"slices"
 	"strings"
 
 	"standoff/netlist/circuit"
@@ -38,7 +37,6 @@ type Case struct {
 	FailsOnly  bool         // no doubt where the limit is kept by less than a quarter
 	Most       Grade        // the worst grade; 0 means Hold
 	Percent    bool         // value and limit are shares, told in percent
-	driver     *operating.Account
 }
 
 // Judge holds one comparison of a stage against its limit. Broken: a hold, or a
@@ -48,39 +46,17 @@ func (p *Pass) Judge(a *operating.Account, c Case) {
 	if !ok || !k.Fails() && (c.FailsOnly || !k.Tight()) {
 		return
 	}
-	c.driver = p.driver(a)
 	p.Report(Finding{Grade: c.grade(k), Message: c.message(k)}.For(a, k, c))
 }
 
-// driver returns the account of the stage that fires a gate stage, nil where
-// there is none.
-func (p *Pass) driver(gate *operating.Account) *operating.Account {
-	for _, a := range p.Accounts {
-		if slices.Contains(a.Stage.Drives, gate.Stage) {
-			return a
-		}
+// parts returns the elements of a role: the stage's own, else those of the stage
+// that fires it.
+func parts(s *stage.Stage, role stage.Role) []*circuit.Element {
+	list := s.Parts[role]
+	if len(list) == 0 && s.DrivenBy != nil {
+		list = s.DrivenBy.Parts[role]
 	}
-	return nil
-}
-
-// host returns the account whose stage has the role: the stage's own, else that
-// of its driver, else the stage's own again.
-func (c Case) host(a *operating.Account, role stage.Role) *operating.Account {
-	if c.driver != nil && len(a.Stage.Parts[role]) == 0 && len(c.driver.Stage.Parts[role]) > 0 {
-		return c.driver
-	}
-	return a
-}
-
-// placed puts a finding on the card of the first role of Place that the stage or
-// its driver has.
-func (c Case) placed(f Finding, a *operating.Account) Finding {
-	for _, role := range c.Place {
-		if host := c.host(a, role); len(host.Stage.Parts[role]) > 0 {
-			return f.Placed(host, role)
-		}
-	}
-	return f.Placed(a)
+	return list
 }
 
 func (c Case) grade(k operating.Comparison) Grade {
@@ -114,24 +90,23 @@ func (c Case) message(k operating.Comparison) string {
 
 // For fills a finding with a stage, a comparison and the places of a case.
 func (f Finding) For(a *operating.Account, k operating.Comparison, c Case) Finding {
-	f = c.placed(f, a)
-	f.Stage = a.Stage.Anchor.Designator
+	f = f.Placed(a, c.Place...)
 	f.Figure = &Figure{Name: k.Name, Value: k.Value, Limit: k.Limit, Bound: string(k.Bound), Unit: k.Unit}
 	f.Corner, f.Working = k.Corner, k.Working
 	for _, role := range c.Mend {
-		for _, e := range c.host(a, role).Stage.Parts[role] {
+		for _, e := range parts(a.Stage, role) {
 			f.Mend = append(f.Mend, Mend{Parts: []*circuit.Element{e}})
 		}
 	}
 	return f
 }
 
-// Placed puts a finding on the card of the first role that the stage has, else
-// on its anchor.
+// Placed puts a finding on the card of the first role that the stage or the one
+// that fires it has, else on its anchor.
 func (f Finding) Placed(a *operating.Account, roles ...stage.Role) Finding {
 	f.Stage = a.Stage.Anchor.Designator
 	for _, role := range roles {
-		if list := a.Stage.Parts[role]; len(list) > 0 {
+		if list := parts(a.Stage, role); len(list) > 0 {
 			f.At = list[0].NameAt
 			for _, e := range list {
 				f.Parts = append(f.Parts, e.Designator)
