@@ -100,7 +100,6 @@ func newSCRGate(w *circuit.Wiring, s *stage.Stage, driver *stage.Stage) (*scrGat
 func (m *scrGate) driveNetwork() error {
 	n, g := m.stage.Nodes, m.gateStage.Nodes
 	keepOff := append(append([]*circuit.Element{}, m.stage.Parts[stage.TimingResistor]...), m.stage.Parts[stage.BaseTwo]...)
-	keepOff = append(keepOff, m.gateStage.Parts[stage.Load]...)
 	var err error
 	m.drive, err = newMesh(m.bench, []circuit.NodeID{n["base1"], n["lower"], g["gate"], g["cathode"]},
 		func(e *circuit.Element) bool { return contains(keepOff, e) })

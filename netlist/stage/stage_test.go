@@ -1,0 +1,127 @@
+package stage_test
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+	"testing"
+
+	"standoff/netlist/circuit"
+	"standoff/netlist/source"
+	"standoff/netlist/stage"
+	"standoff/netlist/syntax"
+)
+
+func recognise(t *testing.T, text string) []*stage.Stage {
+	t.Helper()
+	c, problems := circuit.Build(syntax.Parse(source.New("t.cir", "title\n"+text+"\n"), true), circuit.Options{})
+	for _, p := range problems {
+		t.Fatalf("%s: %s", text, p.Message)
+	}
+	return stage.Recognise(c)
+}
+
+// show writes a stage in one line.
+func show(s *stage.Stage) string {
+	if s.Gap != "" {
+		return s.Anchor.Designator + ": " + s.Gap
+	}
+	var words []string
+	for _, role := range stage.Roles {
+		var names []string
+		for _, e := range s.Parts[role] {
+			names = append(names, e.Designator)
+		}
+		if names != nil {
+			words = append(words, fmt.Sprintf("%s=%s", role, strings.Join(names, ",")))
+		}
+	}
+	return s.Anchor.Designator + ": " + strings.Join(words, " ")
+}
+
+func TestOscillators(t *testing.T) {
+	const rest = "\nR2 vcc b2 330\nR3 b1 0 22\nV1 vcc 0 20"
+	const bases = " base-one=R3 base-two=R2 supply=V1"
+	for _, c := range []struct{ name, text, want string }{
+		{"plain", "R1 vcc e 100k\nC1 e 0 1u\nX1 e b1 b2 2N2646" + rest, "X1: timing-resistor=R1 timing-capacitor=C1" + bases},
+		{"capacitor to the upper rail", "R1 vcc e 100k\nC1 vcc e 1u\nX1 e b1 b2 2N2646" + rest, "X1: timing-resistor=R1 timing-capacitor=C1" + bases},
+		{"split parts", "R1 vcc m 50k\nR9 m e 50k\nC1 e 0 1u\nC2 e 0 1u\nX1 e b1 b2 2N2646" + rest,
+			"X1: timing-resistor=R1,R9 timing-capacitor=C1,C2" + bases},
+		{"capacitors in series", "R1 vcc e 50k\nC1 e x 1u\nC2 x 0 1u\nX1 e b1 b2 2N2646" + rest, "X1: timing-resistor=R1 timing-capacitor=C1,C2" + bases},
+		{"emitter resistor", "R1 vcc k 50k\nC1 k 0 1u\nRE k e 10\nX1 e b1 b2 2N2646" + rest,
+			"X1: timing-resistor=R1 timing-capacitor=C1 base-one=R3 base-two=R2 emitter-series=RE supply=V1"},
+		{"no base resistors", "R1 vcc e 50k\nC1 e 0 1u\nX1 e 0 vcc 2N2646\nV1 vcc 0 20", "X1: timing-resistor=R1 timing-capacitor=C1 supply=V1"},
+		{"ground at the plus rail", "R1 0 e 50k\nC1 e n 1u\nX1 e b1 b2 2N2646\nR2 0 b2 330\nR3 b1 n 22\nV1 0 n 20", "X1: timing-resistor=R1 timing-capacitor=C1" + bases},
+		{"control supply", "VC c 0 30\nR1 c e 50k\nC1 e 0 1u\nX1 e b1 b2 2N2646" + rest,
+			"X1: timing-resistor=R1 timing-capacitor=C1 base-one=R3 base-two=R2 supply=VC,V1"},
+		{"soft supply", "RD raw vcc 220\nR1 vcc e 50k\nC1 e 0 1u\nX1 e b1 b2 2N2646\nR2 vcc b2 330\nR3 b1 0 22\nV1 raw 0 20", "X1: timing-resistor=R1 timing-capacitor=C1" + bases},
+		{"current source", "I1 vcc e 1m\nC1 e 0 1u\nX1 e b1 b2 2N2646" + rest, "X1: timing-capacitor=C1 current-source=I1" + bases},
+		{"a tap that leads nowhere", "R1 vcc e 50k\nR7 e tap 1meg\nC1 e 0 1u\nX1 e b1 b2 2N2646" + rest, "X1: timing-resistor=R1 timing-capacitor=C1" + bases},
+		{"no capacitor", "R1 vcc e 100k\nX1 e b1 b2 2N2646" + rest, "X1: no capacitor stands at the emitter"},
+		{"nothing charges", "C1 e 0 1u\nX1 e b1 b2 2N2646" + rest, "X1: nothing charges the capacitor"},
+		{"turned supply", "R1 vcc e 100k\nC1 e 0 1u\nX1 e b1 b2 2N2646\nR2 vcc b2 330\nR3 b1 0 22\nV1 0 vcc 20", "X1: base two is not more positive than base one"},
+		{"links", "VS vcc v2 0\nR1 v2 e 100k\nR8 e e2 0\nC1 e2 0 1u\nX1 e b1 b2 2N2646" + rest, "X1: timing-resistor=R1 timing-capacitor=C1" + bases},
+	} {
+		if got := show(recognise(t, c.text)[0]); got != c.want {
+			t.Errorf("%s:\n got %s\nwant %s", c.name, got, c.want)
+		}
+	}
+}
+
+const oscillator = "V1 vcc 0 20\nR1 vcc e 100k\nC1 e 0 1u\nXQ1 e b1 b2 2N2646\nR2 vcc b2 330\nR3 b1 0 22\n"
+
+func TestGates(t *testing.T) {
+	for _, c := range []struct{ name, text, want string }{
+		{"direct", "XS1 a b1 0 C106D\nRL vcc a 100", "XS1: supply=V1 gate-shunt=R3 driver=XQ1 load=RL"},
+		{"resistor", "R4 b1 g 47\nR5 g 0 1k\nXS1 a g 0 C106D\nRL vcc a 100", "XS1: supply=V1 gate-series=R4 gate-shunt=R5 driver=XQ1 load=RL"},
+		{"split resistors", "R4 b1 x 22\nR6 x g 22\nR5 g y 500\nR7 y 0 500\nXS1 a g 0 C106D\nRL vcc a 100",
+			"XS1: supply=V1 gate-series=R4,R6 gate-shunt=R5,R7 driver=XQ1 load=RL"},
+		{"diode", "D1 b1 g DX\n.model DX d\nR5 g 0 1k\nXS1 a g 0 C106D\nRL vcc a 100", "XS1: supply=V1 gate-series=D1 gate-shunt=R5 driver=XQ1 load=RL"},
+		{"coil with a freewheel diode", "R4 b1 g 47\nXS1 a g 0 C106D\nL1 vcc a 10m\nD1 a vcc DX\n.model DX d",
+			"XS1: supply=V1 gate-series=R4 driver=XQ1 load=L1 freewheel=D1"},
+		{"snubber", "R4 b1 g 47\nXS1 a g 0 C106D\nRL vcc a 100\nRS a s 47\nCS s 0 10n", "XS1: supply=V1 gate-series=R4 driver=XQ1 load=RL snubber=RS,CS"},
+		{"line", "VL l 0 SIN(0 325 50)\nR4 b1 g 47\nXS1 a g 0 C106D\nRL l a 100", "XS1: supply=VL gate-series=R4 driver=XQ1 load=RL"},
+		{"no supply", "R4 b1 g 47\nXS1 a g 0 C106D\nRL 0 a 100", "XS1: its anode has no way to a supply above its cathode"},
+	} {
+		stages := recognise(t, oscillator+c.text)
+		if got := show(stages[1]); got != c.want {
+			t.Errorf("%s:\n got %s\nwant %s", c.name, got, c.want)
+		}
+		if stages[1].Gap == "" && (len(stages[0].Drives) != 1 || stages[1].DrivenBy != stages[0]) {
+			t.Errorf("%s: the oscillator drives the gate", c.name)
+		}
+	}
+}
+
+// Where the usual order makes no working stage and one other does, the wiring
+// decides; a declared order stands, and the note says what the wiring wants.
+func TestTerminalOrderFromTheWiring(t *testing.T) {
+	for _, c := range []struct {
+		text     string
+		wiring   string
+		followed bool
+		gap      bool
+	}{
+		{"R4 b1 g 47\nXS1 a g 0 C106D\nRL vcc a 100", "", false, false},
+		{"R4 b1 g 47\nXS1 a 0 g C106D\nRL vcc a 100", "anode cathode gate", true, false},
+		{"R4 b1 g 47\nXS1 0 g a C106D\nRL vcc a 100", "cathode gate anode", true, false},
+		{"R4 b1 g 47\nXS1 g a 0 C106D\nRL vcc a 100", "gate anode cathode", true, false},
+		{"R4 b1 g 47\nXS1 a 0 g C106D\nRL vcc a 100\n*> XS1 pins=a,g,k", "anode cathode gate", false, true},
+	} {
+		s := recognise(t, oscillator+c.text)[1]
+		got, followed := "", false
+		if s.Order != nil {
+			got, followed = strings.Join(s.Order.Wiring, " "), s.Order.Followed
+		}
+		if got != c.wiring || followed != c.followed || (s.Gap != "") != c.gap {
+			t.Errorf("%s: order %q, followed %v, gap %q", c.text, got, followed, s.Gap)
+		}
+	}
+	for _, order := range [][3]string{{"e", "b1", "b2"}, {"b1", "e", "b2"}, {"b2", "b1", "e"}, {"b1", "b2", "e"}} {
+		text := strings.Replace(oscillator, "XQ1 e b1 b2", "XQ1 "+strings.Join(order[:], " "), 1)
+		s := recognise(t, text)[0]
+		if s.Gap != "" || (s.Order != nil) == slices.Equal(order[:], []string{"e", "b1", "b2"}) {
+			t.Errorf("%v: gap %q, note %v", order, s.Gap, s.Order)
+		}
+	}
+}
