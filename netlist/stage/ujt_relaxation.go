@@ -244,7 +244,7 @@ func (u *ujtReading) bases() string {
 		return func(n circuit.NodeID) bool { return n == base || u.isRail(n) }
 	}
 	u.stage.add(BaseTwo, prune(u.w, without(two.Elements, u.stage.Parts[TimingResistor]), ends(u.base2))...)
-	one := u.w.Walk([]circuit.NodeID{u.base1}, isResistor, func(n circuit.NodeID) bool {
+	one := u.w.Walk([]circuit.NodeID{u.base1}, isDirect, func(n circuit.NodeID) bool {
 		return quiet(n) || n == u.base2 || u.isGate(n)
 	})
 	u.stage.add(BaseOne, prune(u.w, one.Elements, ends(u.base1))...)
@@ -263,6 +263,10 @@ func (u *ujtReading) isGate(n circuit.NodeID) bool {
 }
 
 func isResistor(e *circuit.Element) bool { return e.Kind == circuit.Resistor }
+
+// isDirect reports whether a part carries the bar current whatever its sign: a
+// loudspeaker or a winding in the base-one lead does as well as a resistor.
+func isDirect(e *circuit.Element) bool { return isResistor(e) || e.Kind == circuit.Inductor }
 
 func without(list, drop []*circuit.Element) []*circuit.Element {
 	return slices.DeleteFunc(slices.Clone(list), func(e *circuit.Element) bool { return slices.Contains(drop, e) })
