@@ -6,6 +6,7 @@ import (
 
 	"standoff/netlist/numeric"
 	"standoff/netlist/quantity"
+	"standoff/netlist/stage"
 )
 
 // driftGrid is at how many temperatures a drift is sampled: both ends and the
@@ -140,6 +141,7 @@ func frequencyTarget(frequency, period *quantity.Spread) *quantity.Spread {
 // baseTwo adds what the base-two resistor, or its absence, costs: the drift of
 // the transistor alone on the nominal board, board parts taken as free of drift.
 func (a *Account) baseTwo(m *ujtModel) {
+	a.Facts["base-two-missing"] = len(m.stage.Parts[stage.BaseTwo]) == 0
 	d := drifting{&m.model, m.frequency}
 	if m.v.tc < 0 || d.span() == 0 || m.interbase() <= 0 {
 		return
@@ -158,7 +160,6 @@ func (a *Account) baseTwo(m *ujtModel) {
 		Because: "1 % per 10 K is a habit, not a rating",
 		Working: fmt.Sprintf("frequency of the nominal board from %s to %s over %s .. %s", show(low, "Hz"), show(high, "Hz"),
 			show(d.box[d.ambient].Low, "deg C"), show(d.box[d.ambient].High, "deg C"))})
-	a.Facts["base-two-missing"] = len(m.stage.Parts["base-two"]) == 0
 	t := m.stage.Anchor.Intent
 	if target := frequencyTarget(t.Frequency, t.Period); target != nil {
 		a.Facts["base-two-drift-breaks-target"] = low < target.Low || high > target.High

@@ -41,14 +41,17 @@ R3 b1 0 22
 			if !a.Facts["base-two-missing"] {
 				return
 			}
-			k, _ := a.Comparison("base_two_drift")
+			k, known := a.Comparison("base_two_drift")
 			f := rule.Finding{Grade: rule.Doubt, Working: k.Working}.Placed(a)
 			if a.Facts["base-two-drift-breaks-target"] {
 				f.Grade = rule.Hold
 			}
-			f.Figure = &rule.Figure{Name: k.Name, Value: k.Value, Limit: k.Limit, Bound: string(k.Bound), Unit: k.Unit}
-			f.Message = fmt.Sprintf("the rate drifts with temperature, %.2g %% per 10 K on the nominal board, "+
-				"since no resistor stands at base two%s", 100*k.Value, serving(a))
+			f.Message = "the rate drifts with temperature, since no resistor stands at base two; by how much cannot be told of this part or this ambient range"
+			if known {
+				f.Figure = &rule.Figure{Name: k.Name, Value: k.Value, Limit: k.Limit, Bound: string(k.Bound), Unit: k.Unit}
+				f.Message = fmt.Sprintf("the rate drifts with temperature, %.2g %% per 10 K on the nominal board, "+
+					"since no resistor stands at base two%s", 100*k.Value, serving(a))
+			}
 			f.NoAdvice = "a resistor has to be added; its value cannot be proven on this board"
 			p.Report(f)
 		})
