@@ -2,4 +2,35 @@
 // part number, each with the document it comes from and how far it can be
 // trusted. What goes in is .model cards - of the embedded library, of a --parts
 // file or of a netlist - and what comes out is Ratings. It knows no circuit.
+//
+// # How a card is read
+//
+// A key is the data-sheet symbol in lower case, alone or with _min, _typ or _max
+// behind it. The tables of symbols (symbols_*.go) give each one its unit, its
+// meaning and its sense: which side of it the maker guarantees. A bare symbol
+// is exact, min, typ and max at once (eta=0.6, ip=5u). Beside another side of the
+// same figure it goes by the sense:
+//
+//	Greatest   its max                             ip_typ=1u  ip=5u
+//	Least      its min                             iv_typ=6m  iv=4m
+//	Condition  the value itself                    ip_vbb=25  t_cold=-40
+//
+// A typical value never becomes a limit. Numbers are SI with the suffixes of a
+// netlist; a relative figure may be written in per cent (rbb_tc_max=0.9%).
+//
+// # Trust
+//
+// mark= says how far the row can be trusted: read (in the text of the document),
+// scan (in a damaged scan) or memory (seen in no document). The lists read="...",
+// scan="..." and memory="..." name the figures for which that differs, whole
+// (igt) or one side of them (iv_typ). A card without mark= was declared by its
+// user. Texts (package, leads) say their own doubts in words.
+//
+// # Families
+//
+// classes="C106A=100 C106B,C106B1=200" makes one part of the card for each
+// voltage class: same figures, with its own vdrm (and vrrm, for an SCR); further
+// names follow after commas. The card's own name then stands for the family,
+// without a blocking voltage, unless it is one of the classes itself. alias=
+// gives a part more names. Text keys may be repeated; they add up.
 package part

@@ -18,8 +18,12 @@ const (
 type Rating struct {
 	Min, Typ, Max          float64
 	HasMin, HasTyp, HasMax bool
-	Mark                   Mark
-	Source                 string
+	// Mark is the trust in the guaranteed side of the figure, the worse one
+	// where both sides are.
+	Mark Mark
+	// MinMark, TypMark and MaxMark are the trust in each value.
+	MinMark, TypMark, MaxMark Mark
+	Source                    string
 }
 
 // Kind is what a part is.

@@ -1,0 +1,160 @@
+package part
+
+import (
+	"fmt"
+	"maps"
+	"strings"
+
+	"standoff/netlist/quantity"
+	"standoff/netlist/source"
+)
+
+// check looks for figures that contradict each other and leaves them out.
+func (c *card) check() {
+	for _, s := range Symbols(c.ratings.Kind) {
+		r, ok := c.ratings.Figures[s.Name]
+		if !ok {
+			continue
+		}
+		if fault := disorder(s, r); fault != "" {
+			c.drop(s.Name, fault)
+		}
+	}
+	if c.ratings.Kind == UJT {
+		if eta := c.ratings.Figures["eta"]; max(eta.Min, eta.Typ, eta.Max) >= 1 {
+			c.drop("eta", "eta: a stand-off ratio lies below 1")
+		}
+	}
+	if t, ok := c.ratings.Test("t_cold"); ok && t >= 25 {
+		c.drop("t_cold", fmt.Sprintf("t_cold = %s is not cold: the other figures hold at 25 deg C", quantity.Format(t, "deg C")))
+	}
+	if t, ok := c.ratings.Test("t_hot"); ok && t <= 25 {
+		c.drop("t_hot", fmt.Sprintf("t_hot = %s is not hot: the other figures hold at 25 deg C", quantity.Format(t, "deg C")))
+	}
+}
+
+// disorder says what is wrong with the order of min, typ and max.
+func disorder(s Symbol, r Rating) string {
+	above := func(lower, upper string, low, high float64) string {
+		return fmt.Sprintf("%s%s = %s lies above %s%s = %s", s.Name, lower, quantity.Format(low, s.Unit), s.Name, upper, quantity.Format(high, s.Unit))
+	}
+	switch {
+	case r.HasMin && r.HasMax && r.Min > r.Max:
+		return above("_min", "_max", r.Min, r.Max)
+	case r.HasMin && r.HasTyp && r.Min > r.Typ:
+		return above("_min", "_typ", r.Min, r.Typ)
+	case r.HasTyp && r.HasMax && r.Typ > r.Max:
+		return above("_typ", "_max", r.Typ, r.Max)
+	}
+	return ""
+}
+
+// drop leaves a figure out and says why at its place.
+func (c *card) drop(base, fault string) {
+	at := c.model.Name
+	for _, side := range []string{"", "_max", "_typ", "_min"} {
+		if word, ok := c.places[base+side]; ok {
+			at = word
+		}
+	}
+	c.problem(at, "%s", fault)
+	delete(c.ratings.Figures, base)
+}
+
+// worstQuadrant gives a triac the figures that count for all quadrants, where
+// the card has only those of each.
+func (c *card) worstQuadrant() {
+	if c.ratings.Kind != Triac {
+		return
+	}
+	for _, base := range []string{"igt", "igt_cold", "vgt", "il"} {
+		if _, given := c.ratings.Figures[base]; given {
+			continue
+		}
+		var worst Rating
+		for _, q := range []string{"_q1", "_q2", "_q3", "_q4"} {
+			if r := c.ratings.Figures[base+q]; r.HasMax {
+				worst.Max, worst.HasMax, worst.Source = max(worst.Max, r.Max), true, r.Source
+				worst.Mark = max(worst.Mark, r.MaxMark)
+			}
+		}
+		if worst.HasMax {
+			worst.MinMark, worst.TypMark, worst.MaxMark = worst.Mark, worst.Mark, worst.Mark
+			c.ratings.Figures[base] = worst
+		}
+	}
+}
+
+// classes returns the parts of the card: the card's own, and one for each
+// voltage class.
+func (c *card) classes() []*Ratings {
+	list := []*Ratings{c.ratings}
+	for _, class := range strings.Fields(c.ratings.Texts["classes"]) {
+		names, volts, _ := strings.Cut(class, "=")
+		v, err := quantity.Parse(volts)
+		if err != nil || v.Value <= 0 || names == "" {
+			c.problem(c.places["classes"], "classes= lists NAME=VOLTS, not %s", source.Visible(class))
+			continue
+		}
+		if one := c.class(strings.Split(names, ","), v.Value); strings.EqualFold(one.Name, c.ratings.Name) {
+			one.Aliases = append(one.Aliases, c.ratings.Aliases...)
+			list[0] = one
+		} else {
+			list = append(list, one)
+		}
+	}
+	return list
+}
+
+// class returns the part of one voltage class.
+func (c *card) class(names []string, volts float64) *Ratings {
+	r := *c.ratings
+	r.Name, r.Aliases = names[0], names[1:]
+	r.Figures = maps.Clone(r.Figures)
+	mark := c.markFor("vdrm", "_min")
+	blocking := Rating{Min: volts, HasMin: true, Mark: mark, MinMark: mark, TypMark: mark, MaxMark: mark, Source: r.Source}
+	if mark == Memory && c.marks[""] != Memory {
+		blocking.Source = fromMemory
+	}
+	r.Figures["vdrm"] = blocking
+	if r.Kind == SCR {
+		r.Figures["vrrm"] = blocking
+	}
+	return &r
+}
+
+// suggestion names a known symbol that is nearly the one written.
+func suggestion(kind Kind, base, side string) string {
+	for _, s := range Symbols(kind) {
+		if near(s.Name, base) {
+			return fmt.Sprintf("; did you mean %s?", s.Name+side)
+		}
+		if near(s.Name, base+side) {
+			return fmt.Sprintf("; did you mean %s?", s.Name)
+		}
+	}
+	return ""
+}
+
+// near reports whether one letter changed, added, left out or swapped with its
+// neighbour makes a into b.
+func near(a, b string) bool {
+	if len(a) > len(b) {
+		a, b = b, a
+	}
+	if len(b)-len(a) > 1 || len(a) < 2 {
+		return false
+	}
+	i := 0
+	for i < len(a) && a[i] == b[i] {
+		i++
+	}
+	switch {
+	case len(a) < len(b):
+		return a[i:] == b[i+1:]
+	case i == len(a):
+		return false
+	}
+	swapped := i+1 < len(a) && a[i] == b[i+1] && a[i+1] == b[i] && a[i+2:] == b[i+2:]
+	return swapped || a[i+1:] == b[i+1:]
+}
