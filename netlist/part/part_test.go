@@ -41,7 +41,7 @@ func TestFiguresOfTheSheets(t *testing.T) {
 		want         float64
 		mark         part.Mark
 	}{
-		{"2N2646", "ip", 5e-6, part.Scan}, {"2N2646", "iv", 4e-3, part.Scan}, {"2N2646", "vob1", 3, part.Memory},
+		{"2N2646", "ip", 5e-6, part.Scan}, {"2N2646", "iv", 4e-3, part.Read}, {"2N2646", "vob1", 3, part.Memory},
 		{"2N2647", "ip", 2e-6, part.Read}, {"2N2647", "iv", 8e-3, part.Read}, {"2N4870", "iv", 2e-3, part.Read},
 		{"2N4871", "vob1", 5, part.Read}, {"2N5431", "vbb_min", 4, part.Read}, {"2N2646", "cap_direct", 10e-6, part.Scan},
 		{"C106D", "vdrm", 400, part.Read}, {"C106", "igm", 0.2, part.Read}, {"c106b1", "igt", 200e-6, part.Read},
@@ -101,10 +101,10 @@ func TestTypicalValuesAreNeverLimits(t *testing.T) {
 func TestBadCards(t *testing.T) {
 	for text, want := range map[string]string{
 		".model A ujt(etta=0.6)":                "etta is no rating of a ujt; did you mean eta?",
-		".model A ujt(eta_min=0.8 eta_max=0.6)": "eta of A: min, typ and max are not in order",
-		".model A ujt(eta=1.2)":                 "eta of A: a stand-off ratio lies below 1",
+		".model A ujt(eta_min=0.8 eta_max=0.6)": "eta_min = 0.8 lies above eta_max = 0.6",
+		".model A ujt(eta=1.2)":                 "eta: a stand-off ratio lies below 1",
 		".model A ujt(eta=-0.6)":                "eta = -0.6 makes no sense for the intrinsic stand-off ratio",
-		".model A scr(igt=0)":                   "igt = 0 makes no sense for the gate trigger current, 25 deg C",
+		".model A scr(igt=0)":                   "igt = 0 A makes no sense for the gate trigger current, 25 deg C",
 		".model A scr(igt=abc)":                 `igt: "abc" is not a number`,
 		"R1 a b 1k":                             "a parts file holds .model cards only",
 	} {
