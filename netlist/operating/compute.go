@@ -107,6 +107,10 @@ func (a *Account) gate(w *circuit.Wiring, s *stage.Stage) {
 		a.Unchecked = append(a.Unchecked, Unchecked{Rule: "latching-too-slow", Because: "the anode circuit: " + err.Error()})
 	} else {
 		m.withLoad(load)
+		if load.discharges() {
+			a.Unchecked = append(a.Unchecked, Unchecked{Rule: "latching-too-slow",
+				Because: "it empties a capacitor, and the current of that is not worked out yet"})
+		}
 	}
 	a.uses = m.slots
 	a.Figures, a.Comparisons = m.solve()
@@ -128,7 +132,7 @@ func (m *scrGate) withLoad(l *loadCircuit) {
 		l.at(x)
 	}
 	l.figures(&m.model, m.scr)
-	if latch, mark, ok := m.scr.Limit("il"); ok && l.hertz == 0 && m.need.ok {
+	if latch, mark, ok := m.scr.Limit("il"); ok && l.hertz == 0 && m.need.ok && !l.discharges() {
 		m.compare(contest{name: "latching_time", limitName: "gate_pulse_width", unit: "s", bound: Max,
 			value: func() float64 { return l.latching(latch) }, limit: func() float64 {
 				if m.g.sheet.width == 0 && l.latching(latch) == 0 {

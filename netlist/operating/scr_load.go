@@ -98,11 +98,40 @@ func (l *loadCircuit) figures(m *model, r *part.Ratings) {
 			return "V/L at the instant of firing"
 		})
 	}
-	if latch, _, ok := r.Limit("il"); ok && l.hertz == 0 {
+	if latch, _, ok := r.Limit("il"); ok && l.hertz == 0 && !l.discharges() {
 		m.figure("latching_time", "s", func() float64 { return l.latching(latch) }, func() string {
 			return "time until the load carries the latching current of " + show(latch, "A")
 		})
 	}
+}
+
+// discharges reports whether the thyristor empties a capacitor: one at the anode,
+// or behind a coil there, whose other end leads back to the cathode without a
+// rail between. A snubber is none. Its current then is not that of the load.
+func (l *loadCircuit) discharges() bool {
+	w := l.bench.w
+	anode, cathode := w.Net(l.anode), w.Net(l.cathode)
+	stop := func(n circuit.NodeID) bool { return w.IsFixed(n) || n == cathode }
+	isCoil := func(e *circuit.Element) bool { return e.Kind == circuit.Inductor }
+	side := w.Walk([]circuit.NodeID{anode}, isCoil, stop)
+	for _, n := range side.Nets {
+		if stop(n) {
+			continue
+		}
+		for _, p := range w.On(n) {
+			if p.Element.Kind != circuit.Capacitor || contains(l.stage.Parts[stage.Snubber], p.Element) {
+				continue
+			}
+			far := w.Other(p.Element, n)
+			back := w.Walk([]circuit.NodeID{far}, isMeshElement, func(n circuit.NodeID) bool {
+				return stop(n) || side.HasNet(w, n)
+			})
+			if far == cathode || !w.IsFixed(far) && back.HasNet(w, cathode) {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // amperes returns the rms load current: declared with amps=, or of the anode
