@@ -39,6 +39,9 @@ type Hints struct {
 	// variable does not seem to move an output, the ends that suit a guide are
 	// tried for it as well.
 	Guides []int
+	// LowOnly and HighOnly list outputs of which one extreme is of no interest; it
+	// is then no more than the best that was met by the way.
+	LowOnly, HighOnly []int
 }
 
 // Extremes returns the extremes of n outputs of f over the box.
@@ -57,6 +60,12 @@ func Extremes(box []Variable, n int, f Function, hints Hints) []Extreme {
 	s.guides = hints.Guides
 	for _, j := range hints.Bent {
 		s.bent[j] = true
+	}
+	for _, j := range hints.LowOnly {
+		s.best[2*j+1].idle = true
+	}
+	for _, j := range hints.HighOnly {
+		s.best[2*j].idle = true
 	}
 	s.start()
 	for round := 0; round < maxRounds; round++ {
@@ -93,6 +102,7 @@ type best struct {
 	value    float64
 	at       []float64
 	explored bool
+	idle     bool // of no interest
 }
 
 func newSearch(box []Variable, n int, f Function) *search {
@@ -272,7 +282,7 @@ func (s *search) exploreAll() bool {
 	found := false
 	point := make([]float64, len(s.box))
 	for _, b := range s.order() {
-		if s.best[b].explored || s.best[b].value != s.best[b].value {
+		if s.best[b].explored || s.best[b].idle || s.best[b].value != s.best[b].value {
 			continue
 		}
 		found = true

@@ -91,22 +91,28 @@ const bentSlack = 5e-3
 
 // extremes searches the box for every output and every contest.
 func (m *model) extremes() []numeric.Extreme {
-	var bent, guides []int
+	var hints numeric.Hints
 	for j, o := range m.outputs {
 		if o.bent {
-			bent = append(bent, j)
+			hints.Bent = append(hints.Bent, j)
 		}
 		if o.name == "interbase_voltage" { // the sheet's currents change with it below the test voltage only
-			guides = append(guides, j)
+			hints.Guides = append(hints.Guides, j)
 		}
 	}
 	for k, c := range m.contests {
+		j := len(m.outputs) + k
 		if c.bent {
-			bent = append(bent, len(m.outputs)+k)
+			hints.Bent = append(hints.Bent, j)
+		}
+		if c.bound == Min {
+			hints.LowOnly = append(hints.LowOnly, j)
+		} else {
+			hints.HighOnly = append(hints.HighOnly, j)
 		}
 	}
-	list := numeric.Extremes(m.box, len(m.outputs)+len(m.contests), m.function, numeric.Hints{Bent: bent, Guides: guides})
-	for _, j := range bent {
+	list := numeric.Extremes(m.box, len(m.outputs)+len(m.contests), m.function, hints)
+	for _, j := range hints.Bent {
 		list[j].Low -= bentSlack * math.Abs(list[j].Low)
 		list[j].High += bentSlack * math.Abs(list[j].High)
 	}
