@@ -184,8 +184,13 @@ func markWords(mark part.Mark) string {
 	return "assumed"
 }
 
-// memoryIn returns the note of a variable from memory that moves a contest at
-// a point, "" where there is none.
+// material is the share by which a comparison has to move when a value from
+// memory is halved or doubled before it is said to rest on that value.
+const material = 0.02
+
+// memoryIn returns the note of a variable from memory on which a contest rests
+// at a point, "" where there is none: halving or doubling it moves the ratio by
+// more than a trifle, or turns the verdict.
 func (m *model) memoryIn(k int, at []float64) string {
 	x := append([]float64(nil), at...)
 	m.evaluate(x)
@@ -194,10 +199,13 @@ func (m *model) memoryIn(k int, at []float64) string {
 		if !t.memory {
 			continue
 		}
-		x[i] = at[i] * 1.01
-		m.evaluate(x)
-		if m.contests[k].ratio() != here {
-			return t.note
+		for _, factor := range [2]float64{0.5, 2} {
+			x[i] = at[i] * factor
+			m.evaluate(x)
+			r := m.contests[k].ratio()
+			if !(math.Abs(r-here) <= material*math.Abs(here)) || (r < 1) != (here < 1) {
+				return t.note
+			}
 		}
 		x[i] = at[i]
 	}

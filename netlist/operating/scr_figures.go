@@ -137,8 +137,11 @@ func (m *scrGate) quietLimits() {
 			}})
 	}
 	if v, mark, ok := m.scr.Limit("rgk"); ok {
+		// The nominal board counts: the sheet's 1 kohm is a resistor of the usual tolerance too.
+		m.evaluate(m.nominal())
+		shunt := m.g.shunt
 		m.compare(contest{name: "gate_shunt_resistance", limitName: "rgk", unit: "ohm", bound: Max,
-			value: func() float64 { return m.g.shunt }, limit: func() float64 { return v }, limitMark: mark,
+			value: func() float64 { return shunt }, limit: func() float64 { return v }, limitMark: mark,
 			working: func() string { return "everything connected from gate to cathode" }})
 	}
 	if v, mark, ok := m.scr.Limit("vgrm"); ok {

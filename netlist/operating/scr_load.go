@@ -23,6 +23,13 @@ type loadCircuit struct {
 
 	block, reverse, resistance, inductance float64
 	bothHalves                             bool
+
+	// A single coil with something beside it: what flows at once, and how fast
+	// the coil follows.
+	open       *mesh // the anode circuit without the coil; nil where it is not needed
+	from, to   circuit.NodeID
+	atOnce     float64
+	coilSeries float64 // resistance that the coil works against
 }
 
 // newLoad builds the anode circuit. An error says why it cannot be computed.
@@ -49,7 +56,55 @@ func newLoad(b *bench, s *stage.Stage) (*loadCircuit, error) {
 			l.coils = append(l.coils, b.element(e))
 		}
 	}
-	return l, nil
+	return l, l.beside()
+}
+
+// beside readies the anode circuit without its coil, where there is one only.
+func (l *loadCircuit) beside() error {
+	if len(l.coils) != 1 {
+		return nil
+	}
+	var coil *circuit.Element
+	for _, e := range l.stage.Parts[stage.Load] {
+		if e.Kind == circuit.Inductor {
+			coil = e
+		}
+	}
+	l.from, l.to = coil.Nodes[0], coil.Nodes[1]
+	gate := l.stage.Nodes["gate"]
+	w := l.bench.w
+	open, err := newCrestMesh(l.bench, []circuit.NodeID{l.anode, l.cathode, l.from, l.to}, func(e *circuit.Element) bool {
+		return e == coil || w.Net(e.Nodes[0]) == gate || w.Net(e.Nodes[1]) == gate
+	})
+	if err != nil {
+		return err
+	}
+	l.open = open
+	return open.compile()
+}
+
+// start works out what flows in the thyristor at the instant of firing, past
+// the coil, and the resistance that the coil works against: that between its
+// ends with the thyristor conducting.
+func (l *loadCircuit) start(x []float64) {
+	l.atOnce, l.coilSeries = 0, l.resistance
+	m := l.open
+	if m == nil {
+		return
+	}
+	m.load(x)
+	m.solver.Solve()
+	across := m.between(l.anode, l.cathode)
+	if across > noPath {
+		return
+	}
+	a, k, p, q := m.node(l.anode), m.node(l.cathode), m.node(l.from), m.node(l.to)
+	l.atOnce = max(m.solver.Voltage(a)-m.solver.Voltage(k), 0) / max(across, noResistance)
+	own := m.between(l.from, l.to)
+	m.solver.Transfer(a, m.there)
+	m.solver.Transfer(k, m.back)
+	mutual := (m.there[p] - m.back[p]) - (m.there[q] - m.back[q])
+	l.coilSeries = own - mutual*mutual/max(across, noResistance)
 }
 
 // at works the anode circuit out at one point.
@@ -65,6 +120,7 @@ func (l *loadCircuit) at(x []float64) {
 	for _, c := range l.coils {
 		l.inductance += l.bench.value(c, x)
 	}
+	l.start(x)
 	l.reverse, l.bothHalves = 0, false
 	if l.hertz > 0 {
 		m.polarity = -1
@@ -165,7 +221,9 @@ func (l *loadCircuit) amperesWorking() string {
 const noResistance = 1e-6
 
 // latching returns the time until the load current passes the latching current
-// on a dc supply: -(L/R) ln(1 - I_L R/V); infinite where it never does.
+// on a dc supply. What lies beside the coil carries i0 at once; the rest follows
+// with L/R to the final current: (L/R) ln((i_end - i0)/(i_end - I_L)), which is
+// -(L/R) ln(1 - I_L R/V) for a coil alone. Infinite where it never does.
 func (l *loadCircuit) latching(amperes float64) float64 {
 	if l.resistance > noPath {
 		return math.NaN()
@@ -174,11 +232,12 @@ func (l *loadCircuit) latching(amperes float64) float64 {
 	if !(share < 1) || l.block <= 0 {
 		return math.Inf(1)
 	}
-	if l.inductance == 0 {
+	if l.inductance == 0 || l.atOnce >= amperes {
 		return 0
 	}
 	if l.resistance < noResistance {
 		return amperes * l.inductance / l.block
 	}
-	return -l.inductance / l.resistance * math.Log1p(-share)
+	end := l.block / l.resistance
+	return l.inductance / l.coilSeries * math.Log((end-l.atOnce)/(end-amperes))
 }
