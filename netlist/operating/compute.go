@@ -133,8 +133,9 @@ func (m *scrGate) withLoad(l *loadCircuit) {
 	}
 	l.figures(&m.model, m.scr)
 	if latch, mark, ok := m.scr.Limit("il"); ok && l.hertz == 0 && m.need.ok && !l.discharges() {
+		m.latching = func() float64 { return l.latching(latch) }
 		m.compare(contest{name: "latching_time", limitName: "gate_pulse_width", unit: "s", bound: Max,
-			value: func() float64 { return l.latching(latch) }, limit: func() float64 {
+			value: m.latching, limit: func() float64 {
 				if m.g.sheet.width == 0 && l.latching(latch) == 0 {
 					return 1 // a pulse that does not fire is another rule's matter
 				}

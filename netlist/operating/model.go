@@ -113,6 +113,9 @@ func (m *model) extremes() []numeric.Extreme {
 	}
 	list := numeric.Extremes(m.box, len(m.outputs)+len(m.contests), m.function, hints)
 	for _, j := range hints.Bent {
+		if list[j].Low == list[j].High {
+			continue // nothing moves it
+		}
 		list[j].Low -= bentSlack * math.Abs(list[j].Low)
 		list[j].High += bentSlack * math.Abs(list[j].High)
 	}

@@ -20,7 +20,7 @@ func (m *scrGate) gateFigures() {
 			return "time for which the falling pulse stays above the required current"
 		})
 		m.outputs[len(m.outputs)-1].bent = true // more resistance: a smaller pulse, but a longer one
-		m.figure("gate_pulse_width_required", "s", func() float64 { return m.widthRequired(g.sheet) }, m.widthWorking)
+		m.figure("gate_pulse_width_required", "s", m.widthWithLatching, m.widthWorking)
 	}
 	if v, _, ok := m.scr.Limit("vgd"); ok {
 		m.figure("gate_nontrigger_voltage", "V", func() float64 { return v }, func() string {
@@ -57,7 +57,19 @@ func (m *scrGate) pulseWorking() string {
 }
 
 func (m *scrGate) widthWorking() string {
-	return "longest of t_gt of the sheet and 20 us * required current / pulse current"
+	return "longest of the load's latching time, t_gt of the sheet and 20 us * required current / pulse current"
+}
+
+// widthWithLatching is widthRequired, or the time until the load carries the
+// latching current where that is longer and known. Each has its own rule.
+func (m *scrGate) widthWithLatching() float64 {
+	width := m.widthRequired(m.g.sheet)
+	if m.latching != nil {
+		if latching := m.latching(); latching > width {
+			return latching
+		}
+	}
+	return width
 }
 
 // widthRequired returns how long the drive has to last: the sheet's turn-on

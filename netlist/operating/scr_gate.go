@@ -32,7 +32,8 @@ type scrGate struct {
 	need      trigger
 	g         gateState
 	n         gateNodes
-	turnOn    float64 // t_gt of the sheet, 0 where it gives none
+	turnOn    float64        // t_gt of the sheet, 0 where it gives none
+	latching  func() float64 // time to the latching current, nil where it is unknown
 }
 
 // gateNodes are the solvers' nodes, looked up once: in the drive network, and
