@@ -191,13 +191,15 @@ func markWords(mark part.Mark) string {
 // memory is halved or doubled before it is said to rest on that value.
 const material = 0.02
 
-// memoryIn returns the note of a variable from memory on which a contest rests
-// at a point, "" where there is none: halving or doubling it moves the ratio by
-// more than a trifle, or turns the verdict.
+// memoryIn returns the note of a figure from memory on which a contest rests at
+// a point, "" where there is none. A contest rests on a figure where half or
+// twice of it would turn the verdict or move the margin by more than a twentieth:
+// a period does not rest on the pulse amplitude that the discharge time uses.
 func (m *model) memoryIn(k int, at []float64) string {
 	x := append([]float64(nil), at...)
 	m.evaluate(x)
-	here := m.contests[k].ratio()
+	c := &m.contests[k]
+	here := c.ratio()
 	for i, t := range m.traits {
 		if !t.memory {
 			continue
@@ -205,8 +207,9 @@ func (m *model) memoryIn(k int, at []float64) string {
 		for _, factor := range [2]float64{0.5, 2} {
 			x[i] = at[i] * factor
 			m.evaluate(x)
-			r := m.contests[k].ratio()
-			if !(math.Abs(r-here) <= material*math.Abs(here)) || (r < 1) != (here < 1) {
+			there := c.ratio()
+			turned := c.bound == Min && there >= 1 || c.bound == Max && there <= 1
+			if turned || math.Abs(there-here) > math.Abs(here)/20 {
 				return t.note
 			}
 		}

@@ -2,6 +2,7 @@ package part
 
 import (
 	"math"
+	"slices"
 	"strings"
 
 	"standoff/netlist/quantity"
@@ -16,34 +17,46 @@ type card struct {
 	resolve  Resolve
 	ratings  *Ratings
 	spice    bool
-	marks    map[string]Mark        // by symbol, or symbol with a side; the row's under ""
-	places   map[string]syntax.Word // every key of the card where it stands
+	settings []setting
+	marks    map[string]Mark // by symbol, or symbol with a side; the row's under ""
 	problems []source.Problem
+}
+
+// setting is one key of a card, taken apart.
+type setting struct {
+	pair       syntax.Pair
+	base, side string
+	symbol     Symbol
+	known      bool
 }
 
 func newCard(deck *syntax.Deck, m *syntax.Model, resolve Resolve, origin string) *card {
 	kind, spice := typeKind(m.Type.Text)
-	r := &Ratings{Name: m.Name.Text, Kind: kind, Figures: map[string]Rating{}, Texts: map[string]string{},
+	r := &Ratings{Name: m.Name.Text, Kind: kind, Figures: make(map[string]Rating, len(m.Pairs)), Texts: map[string]string{},
 		Origin: origin, At: deck.Span(m.Name)}
-	return &card{deck: deck, model: m, resolve: resolve, ratings: r, spice: spice,
-		marks: map[string]Mark{}, places: map[string]syntax.Word{}}
+	return &card{deck: deck, model: m, resolve: resolve, ratings: r, spice: spice, marks: map[string]Mark{}}
 }
 
-// read takes the card in and returns the parts it makes.
-func (c *card) read() []*Ratings {
+// read takes the card in.
+func (c *card) read() *Ratings {
 	if c.ratings.Kind == "" {
-		return []*Ratings{c.ratings}
+		return c.ratings
 	}
 	c.texts()
-	// What names a side comes first, so that a bare symbol can be read beside it.
 	for _, p := range c.model.Pairs {
-		if base, side := c.split(p); side != "" {
-			c.take(p, base, side)
+		if key := strings.ToLower(p.Key.Text); !isText(key) {
+			c.settings = append(c.settings, c.split(p, key))
 		}
 	}
-	for _, p := range c.model.Pairs {
-		if base, side := c.split(p); side == "" {
-			c.take(p, base, side)
+	// What names a side comes first, so that a bare symbol can be read beside it.
+	for i := range c.settings {
+		if c.settings[i].side != "" {
+			c.take(&c.settings[i])
+		}
+	}
+	for i := range c.settings {
+		if c.settings[i].side == "" {
+			c.take(&c.settings[i])
 		}
 	}
 	if !c.spice {
@@ -52,124 +65,169 @@ func (c *card) read() []*Ratings {
 		}
 	}
 	c.check()
-	c.trust()
+	c.marksAreUsed()
 	c.worstQuadrant()
-	return c.classes()
+	return c.ratings
 }
 
 // split takes _min, _typ or _max off a key unless the whole is a symbol.
-func (c *card) split(p syntax.Pair) (base, side string) {
-	key := strings.ToLower(p.Key.Text)
+func (c *card) split(p syntax.Pair, key string) setting {
 	if c.spice && key == "v_breakdown" {
-		return "bv", ""
+		key = "bv"
 	}
-	if _, whole := SymbolOf(c.ratings.Kind, key); whole {
-		return key, ""
+	s := setting{pair: p, base: key}
+	if s.symbol, s.known = SymbolOf(c.ratings.Kind, key); s.known && !c.ownSpread(key) {
+		return s
 	}
-	for _, side := range []string{"_min", "_typ", "_max"} {
-		base, ok := strings.CutSuffix(key, side)
-		if _, known := SymbolOf(c.ratings.Kind, base); ok && (known || !c.spice) {
-			return base, side
-		}
+	base, side, ok := cutSide(key)
+	symbol, known := SymbolOf(c.ratings.Kind, base)
+	if ok && (known || !c.spice) {
+		return setting{p, base, side, symbol, known}
 	}
-	return key, ""
+	return s
+}
+
+// cutSide splits _min, _typ or _max off a word.
+func cutSide(word string) (base, side string, ok bool) {
+	i := max(len(word)-len("_min"), 0)
+	switch word[i:] {
+	case "_min", "_typ", "_max":
+		return word[:i], word[i:], true
+	}
+	return word, "", false
+}
+
+// ownSpread reports whether a key is a side of the current i although a symbol is
+// spelled so too: where no resistor sets the current, i_min and i_max are no
+// range of settings.
+func (c *card) ownSpread(key string) bool {
+	if c.ratings.Kind != CurrentSource || key != "i_min" && key != "i_max" {
+		return false
+	}
+	return !slices.ContainsFunc(c.model.Pairs, func(p syntax.Pair) bool {
+		return strings.HasPrefix(strings.ToLower(p.Key.Text), "v_per_k")
+	})
 }
 
 // take takes one figure.
-func (c *card) take(p syntax.Pair, base, side string) {
-	if isText(base) {
-		return
-	}
-	s, known := SymbolOf(c.ratings.Kind, base)
+func (c *card) take(s *setting) {
 	switch {
-	case known:
-		c.figure(p, s, side)
+	case s.known:
+		c.figure(s)
 	case c.spice: // a setting of SPICE's own: kept where it is a number
-		if v, ok := c.resolve(p.Value); ok && !math.IsNaN(v) && !math.IsInf(v, 0) {
-			c.ratings.Figures[base] = exact(v)
+		if v, ok := c.resolve(s.pair.Value); ok && !math.IsNaN(v) && !math.IsInf(v, 0) {
+			c.file(s, v)
 		}
 	default:
-		c.problem(p.Key, "%s is no rating of a %s%s", source.Visible(p.Key.Text), c.ratings.Kind, suggestion(c.ratings.Kind, base, side))
+		c.problem(s.pair.Key, "%s is no rating of a %s%s", source.Visible(s.pair.Key.Text), c.ratings.Kind,
+			suggestion(c.ratings.Kind, s.base, s.side))
 	}
-}
-
-func exact(v float64) Rating {
-	return Rating{Min: v, Typ: v, Max: v, HasMin: true, HasTyp: true, HasMax: true}
 }
 
 // figure takes a figure whose symbol is known.
-func (c *card) figure(p syntax.Pair, s Symbol, side string) {
-	if _, twice := c.places[s.Name+side]; twice && !c.spice {
-		c.problem(p.Key, "%s is given twice", source.Visible(p.Key.Text))
-		return
-	}
-	c.places[s.Name+side] = p.Key
-	v, ok := c.number(p, s)
+func (c *card) figure(s *setting) {
+	v, ok := c.number(s)
 	if !ok {
 		return
 	}
-	if math.IsNaN(v) || math.IsInf(v, 0) || v < 0 && !s.signed() || v == 0 && !s.mayVanish() {
-		if !c.spice || s.Name != "bv" { // SPICE itself allows any bv
-			c.problem(p.Value.Word, "%s = %s makes no sense for the %s", source.Visible(p.Key.Text), quantity.Format(v, s.Unit), s.Meaning)
+	if math.IsNaN(v) || math.IsInf(v, 0) || v < 0 && !s.symbol.signed() || v == 0 && !s.symbol.mayVanish() {
+		if !c.spice || s.base != "bv" { // SPICE itself allows any bv
+			c.problem(s.pair.Value.Word, "%s = %s makes no sense for the %s", source.Visible(s.pair.Key.Text),
+				quantity.Format(v, s.symbol.Unit), s.symbol.Meaning)
 		}
 		return
 	}
-	c.set(p, s, side, v)
+	c.file(s, v)
 }
 
 // number works the value of a figure out.
-func (c *card) number(p syntax.Pair, s Symbol) (float64, bool) {
-	text, percent := strings.CutSuffix(p.Value.Text, "%")
-	percent = percent && !p.Value.Quoted && p.Value.Expr == nil
-	if percent && !s.relative() {
-		c.problem(p.Value.Word, "%s is a figure in %s, not in per cent", source.Visible(p.Key.Text), s.Unit)
-		return 0, false
-	}
-	if percent {
-		n, err := quantity.Parse(text)
-		if err == nil {
+func (c *card) number(s *setting) (float64, bool) {
+	value, key := s.pair.Value, source.Visible(s.pair.Key.Text)
+	plain := !value.Quoted && value.Expr == nil
+	if text, percent := strings.CutSuffix(value.Text, "%"); percent && plain {
+		if !s.symbol.relative() {
+			c.problem(value.Word, "%s is a figure in %s, not in per cent", key, s.symbol.Unit)
+			return 0, false
+		}
+		if n, err := quantity.Parse(text); err == nil {
 			return n.Value / 100, true
 		}
-	} else if v, ok := c.resolve(p.Value); ok {
+	} else if v, ok := c.resolve(value); ok {
 		return v, true
 	}
-	if _, err := quantity.Parse(p.Value.Text); err != nil && !p.Value.Quoted && p.Value.Expr == nil {
-		c.problem(p.Value.Word, "%s: %s", source.Visible(p.Key.Text), source.Visible(err.Error()))
+	if _, err := quantity.Parse(value.Text); err != nil && plain {
+		c.problem(value.Word, "%s: %s", key, source.Visible(err.Error()))
 	} else {
-		c.problem(p.Value.Word, "%s has no value that can be worked out", source.Visible(p.Key.Text))
+		c.problem(value.Word, "%s has no value that can be worked out", key)
 	}
 	return 0, false
 }
 
-// set files a value under its side; a bare one is exact where it stands alone,
-// and beside others goes by the sense of its symbol.
-func (c *card) set(p syntax.Pair, s Symbol, side string, v float64) {
-	r := c.ratings.Figures[s.Name]
+// file files a value under its side.
+func (c *card) file(s *setting, v float64) {
+	r := c.ratings.Figures[s.base]
+	side := s.side
 	if side == "" {
-		switch {
-		case !r.HasMin && !r.HasTyp && !r.HasMax: // alone, a bare figure is exact
-		case s.Sense == Greatest:
-			side = "_max"
-		case s.Sense == Least:
-			side = "_min"
-		case r.HasMin || r.HasTyp || r.HasMax:
-			c.problem(p.Key, "%s without _min, _typ or _max is exact; it does not go with a spread", source.Visible(p.Key.Text))
-			return
-		}
-		if side == "_max" && r.HasMax || side == "_min" && r.HasMin {
-			c.problem(p.Key, "%s says the same as %s%s, which is given too", source.Visible(p.Key.Text), s.Name, side)
-			return
-		}
+		side = s.symbol.bareSide(r, c.marks[""] != Declared)
 	}
+	if twice := r.has(side); twice && !c.spice {
+		c.problem(s.pair.Key, "%s: %s is given already", source.Visible(s.pair.Key.Text), s.base+side)
+		return
+	}
+	mark := c.markFor(s.base, side)
+	if side == "_min" || side == "" {
+		r.Min, r.HasMin, r.MinMark = v, true, mark
+	}
+	if side == "_typ" || side == "" {
+		r.Typ, r.HasTyp, r.TypMark = v, true, mark
+	}
+	if side == "_max" || side == "" {
+		r.Max, r.HasMax, r.MaxMark = v, true, mark
+	}
+	r.Mark = r.worstMark(s.symbol.Sense)
+	r.Source = c.sourceFor(r.Mark)
+	c.ratings.Figures[s.base] = r
+}
+
+// bareSide says which side a symbol that stands alone means; the empty side is
+// all of them. sheet says that the card is a row of a data sheet.
+func (s Symbol) bareSide(r Rating, sheet bool) string {
+	alone := !r.HasMin && !r.HasTyp && !r.HasMax
+	switch {
+	case alone && !sheet: // what a user says of his part is what it is
+		return ""
+	case s.Sense == Greatest:
+		return "_max"
+	case s.Sense == Least:
+		return "_min"
+	case alone:
+		return ""
+	}
+	return "_typ" // beside its ends a bare spread is the nominal value
+}
+
+// has reports whether a side of the figure is given; the empty side is any.
+func (r Rating) has(side string) bool {
 	switch side {
 	case "_min":
-		r.Min, r.HasMin = v, true
+		return r.HasMin
 	case "_typ":
-		r.Typ, r.HasTyp = v, true
+		return r.HasTyp
 	case "_max":
-		r.Max, r.HasMax = v, true
-	default:
-		r = exact(v)
+		return r.HasMax
 	}
-	c.ratings.Figures[s.Name] = r
+	return r.HasMin || r.HasTyp || r.HasMax
+}
+
+// worstMark returns the trust in the guaranteed side of a figure.
+func (r Rating) worstMark(sense Sense) Mark {
+	switch {
+	case sense == Greatest && r.HasMax, !r.HasMin && r.HasMax:
+		return r.MaxMark
+	case sense == Least && r.HasMin, !r.HasMax && r.HasMin:
+		return r.MinMark
+	case r.HasMin:
+		return max(r.MinMark, r.MaxMark)
+	}
+	return r.TypMark
 }

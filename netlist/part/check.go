@@ -2,22 +2,18 @@ package part
 
 import (
 	"fmt"
-	"maps"
-	"strings"
+	"slices"
 
 	"standoff/netlist/quantity"
-	"standoff/netlist/source"
 )
 
 // check looks for figures that contradict each other and leaves them out.
 func (c *card) check() {
-	for _, s := range Symbols(c.ratings.Kind) {
-		r, ok := c.ratings.Figures[s.Name]
-		if !ok {
-			continue
-		}
-		if fault := disorder(s, r); fault != "" {
-			c.drop(s.Name, fault)
+	for i := range c.settings {
+		s := &c.settings[i]
+		r, ok := c.ratings.Figures[s.base]
+		if fault := disorder(s.symbol, r); ok && s.known && fault != "" {
+			c.drop(s.base, fault)
 		}
 	}
 	if c.ratings.Kind == UJT {
@@ -52,9 +48,9 @@ func disorder(s Symbol, r Rating) string {
 // drop leaves a figure out and says why at its place.
 func (c *card) drop(base, fault string) {
 	at := c.model.Name
-	for _, side := range []string{"", "_max", "_typ", "_min"} {
-		if word, ok := c.places[base+side]; ok {
-			at = word
+	for _, s := range slices.Backward(c.settings) {
+		if s.base == base {
+			at = s.pair.Key
 		}
 	}
 	c.problem(at, "%s", fault)
@@ -68,59 +64,21 @@ func (c *card) worstQuadrant() {
 		return
 	}
 	for _, base := range []string{"igt", "igt_cold", "vgt", "il"} {
-		if _, given := c.ratings.Figures[base]; given {
+		worst := c.ratings.Figures[base]
+		if worst.HasMax {
 			continue
 		}
-		var worst Rating
 		for _, q := range []string{"_q1", "_q2", "_q3", "_q4"} {
 			if r := c.ratings.Figures[base+q]; r.HasMax {
 				worst.Max, worst.HasMax, worst.Source = max(worst.Max, r.Max), true, r.Source
-				worst.Mark = max(worst.Mark, r.MaxMark)
+				worst.MaxMark = max(worst.MaxMark, r.MaxMark)
 			}
 		}
 		if worst.HasMax {
-			worst.MinMark, worst.TypMark, worst.MaxMark = worst.Mark, worst.Mark, worst.Mark
+			worst.Mark = worst.MaxMark
 			c.ratings.Figures[base] = worst
 		}
 	}
-}
-
-// classes returns the parts of the card: the card's own, and one for each
-// voltage class.
-func (c *card) classes() []*Ratings {
-	list := []*Ratings{c.ratings}
-	for _, class := range strings.Fields(c.ratings.Texts["classes"]) {
-		names, volts, _ := strings.Cut(class, "=")
-		v, err := quantity.Parse(volts)
-		if err != nil || v.Value <= 0 || names == "" {
-			c.problem(c.places["classes"], "classes= lists NAME=VOLTS, not %s", source.Visible(class))
-			continue
-		}
-		if one := c.class(strings.Split(names, ","), v.Value); strings.EqualFold(one.Name, c.ratings.Name) {
-			one.Aliases = append(one.Aliases, c.ratings.Aliases...)
-			list[0] = one
-		} else {
-			list = append(list, one)
-		}
-	}
-	return list
-}
-
-// class returns the part of one voltage class.
-func (c *card) class(names []string, volts float64) *Ratings {
-	r := *c.ratings
-	r.Name, r.Aliases = names[0], names[1:]
-	r.Figures = maps.Clone(r.Figures)
-	mark := c.markFor("vdrm", "_min")
-	blocking := Rating{Min: volts, HasMin: true, Mark: mark, MinMark: mark, TypMark: mark, MaxMark: mark, Source: r.Source}
-	if mark == Memory && c.marks[""] != Memory {
-		blocking.Source = fromMemory
-	}
-	r.Figures["vdrm"] = blocking
-	if r.Kind == SCR {
-		r.Figures["vrrm"] = blocking
-	}
-	return &r
 }
 
 // suggestion names a known symbol that is nearly the one written.

@@ -7,15 +7,22 @@
 //
 // A key is the data-sheet symbol in lower case, alone or with _min, _typ or _max
 // behind it. The tables of symbols (symbols_*.go) give each one its unit, its
-// meaning and its sense: which side of it the maker guarantees. A bare symbol
-// is exact, min, typ and max at once (eta=0.6, ip=5u). Beside another side of the
-// same figure it goes by the sense:
+// meaning and its sense: which side of it the maker guarantees.
 //
-//	Greatest   its max                             ip_typ=1u  ip=5u
-//	Least      its min                             iv_typ=6m  iv=4m
-//	Condition  the value itself                    ip_vbb=25  t_cold=-40
+//	Either     a spread: both ends count      eta, rbb, vbo
+//	Greatest   "not more than"                ip, igt, vgt, ih
+//	Least      "not less than"                iv, vgd, vdrm, pd
+//	Condition  a test condition               ip_vbb, t_cold, rgk
 //
-// A typical value never becomes a limit. Numbers are SI with the suffixes of a
+// A bare symbol of a user's card is exact, min, typ and max at once (eta=0.6,
+// ip=5u). On a card that is a row of a data sheet (it has a mark=), and beside
+// another side of the same figure, a bare limit is its guaranteed side only: ip=5u
+// the greatest, iv=4m the least. Beside its ends a bare spread is the nominal
+// value. Limits are always taken on the guaranteed side; a typical value never
+// becomes one.
+//
+// The i_min and i_max of a current source are the ends of its current, or, where a
+// resistor sets it (v_per_k), of the range. Numbers are SI with the suffixes of a
 // netlist; a relative figure may be written in per cent (rbb_tc_max=0.9%).
 //
 // # Trust

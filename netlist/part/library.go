@@ -30,65 +30,67 @@ var (
 
 // entry is one card of the library, not parsed before it is wanted.
 type entry struct {
-	once    sync.Once
 	text    string
-	parts   []*Ratings
+	once    sync.Once
+	family  *family
 	trouble []source.Problem
+
+	lock sync.Mutex
+	made []*Ratings // the card's own part, then its classes; made when wanted
 }
 
 // catalogue is the library with an index of names in upper case.
 type catalogue struct {
 	byName  map[string]*entry
-	entries []*entry
+	entries []entry
 }
+
+// The library has about this many cards and names; more is no harm.
+const cardCount, nameCount = 320, 1024
 
 // library is made on the first look-up by a scan for names, without parsing:
 // most runs need one or two cards, or none.
 var library = sync.OnceValue(func() *catalogue {
-	l := &catalogue{byName: make(map[string]*entry, 1024)}
+	l := &catalogue{byName: make(map[string]*entry, nameCount), entries: make([]entry, 0, cardCount)}
 	for _, text := range []string{ujtCards, putCards, scrCards, triacCards, diacCards, sourceCards, optotriacCards} {
 		l.add(text)
+	}
+	for i := range l.entries {
+		l.index(&l.entries[i])
 	}
 	return l
 })
 
 const cardStart = "\n.model "
 
-// add indexes the cards of one file.
+// add finds the cards of one file.
 func (l *catalogue) add(text string) {
-	at := strings.Index(text, cardStart)
-	for at >= 0 {
-		rest := text[at+1:]
-		end := strings.Index(rest, cardStart)
-		card := rest
-		if end >= 0 {
-			card = rest[:end]
-			at += 1 + end
-		} else {
-			at = -1
+	for at := strings.Index(text, cardStart); at >= 0; {
+		text = text[at+1:]
+		at = strings.Index(text, cardStart)
+		card := text
+		if at >= 0 {
+			card = text[:at]
 		}
-		e := &entry{text: card}
-		l.entries = append(l.entries, e)
-		l.index(e)
+		l.entries = append(l.entries, entry{text: card})
 	}
 }
 
 // index files a card under its name, its aliases and its voltage classes.
 func (l *catalogue) index(e *entry) {
-	head := e.text[len(cardStart)-1:]
-	name, rest, _ := strings.Cut(head, " ")
-	l.byName[strings.ToUpper(name)] = e
+	rest := e.text[len(cardStart)-1:]
+	l.byName[strings.ToUpper(rest[:strings.IndexByte(rest, ' ')])] = e
 	for {
 		i := strings.IndexByte(rest, '"')
 		if i < 0 {
 			return
 		}
-		list, behind, _ := strings.Cut(rest[i+1:], `"`)
-		switch {
-		case strings.HasSuffix(rest[:i], "alias="), strings.HasSuffix(rest[:i], "classes="):
-			l.indexList(e, list)
+		key, behind := rest[:i], rest[i+1:]
+		end := max(strings.IndexByte(behind, '"'), 0)
+		if strings.HasSuffix(key, " alias=") || strings.HasSuffix(key, " classes=") {
+			l.indexList(e, behind[:end])
 		}
-		rest = behind
+		rest = behind[end+1:]
 	}
 }
 
@@ -102,41 +104,51 @@ func (l *catalogue) indexList(e *entry, list string) {
 		if end > start {
 			l.byName[strings.ToUpper(list[start:end])] = e
 		}
-		if end < len(list) && list[end] == '=' { // over the voltage
-			for end < len(list) && list[end] != ' ' {
-				end++
-			}
+		for end < len(list) && list[end] != ' ' && list[end] != ',' { // over the voltage
+			end++
 		}
 		start = end + 1
 	}
 }
 
 // parse reads the card, once.
-func (e *entry) parse() []*Ratings {
+func (e *entry) parse() *family {
 	e.once.Do(func() {
 		deck := syntax.Parse(source.New("library", e.text), false)
 		e.trouble = deck.Problems
-		for _, s := range deck.Statements {
-			if s.Model != nil {
-				c := newCard(deck, s.Model, Plain, "library")
-				e.parts = append(e.parts, c.read()...)
-				e.trouble = append(e.trouble, c.problems...)
-			}
-		}
+		c := newCard(deck, deck.Statements[0].Model, Plain, "library")
+		e.family = c.family()
+		e.made = make([]*Ratings, 1+len(e.family.classes))
+		e.trouble = append(e.trouble, c.problems...)
 	})
-	return e.parts
+	return e.family
+}
+
+// part returns the card's own part (0) or that of a class (1 ...).
+func (e *entry) part(i int) *Ratings {
+	f := e.parse()
+	e.lock.Lock()
+	defer e.lock.Unlock()
+	if e.made[i] == nil {
+		if i == 0 {
+			e.made[i] = f.base
+		} else {
+			e.made[i] = f.classes[i-1].part(f.base)
+		}
+	}
+	return e.made[i]
 }
 
 // find returns the part of a card that bears a name.
 func (e *entry) find(name string) (*Ratings, bool) {
-	for _, r := range e.parse() {
-		if strings.EqualFold(r.Name, name) {
-			return r, true
-		}
-		for _, alias := range r.Aliases {
-			if strings.EqualFold(alias, name) {
-				return r, true
-			}
+	f := e.parse()
+	is := func(n string) bool { return strings.EqualFold(n, name) }
+	if is(f.base.Name) || slices.ContainsFunc(f.base.Aliases, is) {
+		return e.part(0), true
+	}
+	for i := range f.classes {
+		if slices.ContainsFunc(f.classes[i].names, is) {
+			return e.part(i + 1), true
 		}
 	}
 	return nil, false
@@ -162,8 +174,11 @@ func Lookup(name string) (*Ratings, bool) {
 // All returns every part of the library by name.
 func All() []*Ratings {
 	var list []*Ratings
-	for _, e := range library().entries {
-		list = append(list, e.parse()...)
+	l := library()
+	for i := range l.entries {
+		for k := range 1 + len(l.entries[i].parse().classes) {
+			list = append(list, l.entries[i].part(k))
+		}
 	}
 	slices.SortFunc(list, func(a, b *Ratings) int { return strings.Compare(a.Name, b.Name) })
 	return list
@@ -172,9 +187,10 @@ func All() []*Ratings {
 // Problems returns what is wrong with the library's own cards; a test wants none.
 func Problems() []source.Problem {
 	var list []source.Problem
-	for _, e := range library().entries {
-		e.parse()
-		list = append(list, e.trouble...)
+	l := library()
+	for i := range l.entries {
+		l.entries[i].parse()
+		list = append(list, l.entries[i].trouble...)
 	}
 	return list
 }

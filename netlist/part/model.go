@@ -29,11 +29,11 @@ func Plain(v syntax.Value) (float64, bool) {
 func FromModel(deck *syntax.Deck, m *syntax.Model, resolve func(syntax.Value) (float64, bool),
 	origin string) (*Ratings, []source.Problem) {
 	c := newCard(deck, m, resolve, origin)
-	parts := c.read()
-	if at, ok := c.places["classes"]; ok {
-		c.problem(at, "classes= belongs into a --parts file; here a card is one part")
+	r := c.read()
+	if r.Texts["classes"] != "" {
+		c.problem(c.place("classes"), "classes= belongs into a --parts file; here a card is one part")
 	}
-	return parts[0], c.problems
+	return r, c.problems
 }
 
 // ParseFile reads a file of .model cards, as given with --parts.
@@ -46,7 +46,7 @@ func ParseFile(f *source.File) ([]*Ratings, []source.Problem) {
 		switch {
 		case s.Model != nil:
 			c := newCard(deck, s.Model, Plain, f.Path)
-			parts := c.read()
+			parts := c.family().parts()
 			for _, r := range parts {
 				if key := strings.ToUpper(r.Name); seen[key] {
 					c.problem(s.Model.Name, "%s stands twice in this file", source.Visible(r.Name))

@@ -4,6 +4,7 @@ import (
 	"strings"
 
 	"standoff/netlist/source"
+	"standoff/netlist/syntax"
 )
 
 // isText reports whether a key holds words, not a number.
@@ -22,7 +23,6 @@ func (c *card) texts() {
 		if !isText(key) {
 			continue
 		}
-		c.places[key] = p.Key
 		text := p.Value.Text
 		switch before := c.ratings.Texts[key]; {
 		case before == "":
@@ -39,16 +39,26 @@ func (c *card) texts() {
 	c.quadrants()
 }
 
+// place returns where a key stands first.
+func (c *card) place(key string) syntax.Word {
+	for _, p := range c.model.Pairs {
+		if strings.EqualFold(p.Key.Text, key) {
+			return p.Key
+		}
+	}
+	return c.model.Name
+}
+
 // rowMark takes the marks of trust: the row's and those of single figures.
 func (c *card) rowMark() {
 	mark, ok := markOf(c.ratings.Texts["mark"])
 	if !ok && !c.spice {
-		c.problem(c.places["mark"], "mark= is read, scan or memory, not %s", source.Visible(c.ratings.Texts["mark"]))
+		c.problem(c.place("mark"), "mark= is read, scan or memory, not %s", source.Visible(c.ratings.Texts["mark"]))
 	}
 	c.marks[""] = mark
 	for _, key := range []string{"read", "scan", "memory"} {
 		mark, _ := markOf(key)
-		for _, symbol := range strings.Fields(strings.ToLower(c.ratings.Texts[key])) {
+		for symbol := range strings.FieldsSeq(strings.ToLower(c.ratings.Texts[key])) {
 			c.marks[symbol] = mark
 		}
 	}
@@ -68,6 +78,46 @@ func markOf(word string) (Mark, bool) {
 	return Declared, false
 }
 
+// markFor returns the trust in one side of a figure.
+func (c *card) markFor(base, side string) Mark {
+	if len(c.marks) > 1 {
+		if mark, ok := c.marks[base+side]; ok {
+			return mark
+		}
+		if mark, ok := c.marks[base]; ok {
+			return mark
+		}
+	}
+	return c.marks[""]
+}
+
+// sourceFor returns where a figure of such trust comes from.
+func (c *card) sourceFor(mark Mark) string {
+	if mark == Memory && c.marks[""] != Memory {
+		return "from memory, seen in no document"
+	}
+	return c.ratings.Source
+}
+
+// marksAreUsed complains about a mark for a figure that the card does not give.
+func (c *card) marksAreUsed() {
+	if c.spice || len(c.marks) == 1 {
+		return
+	}
+	for _, key := range []string{"read", "scan", "memory"} {
+		for symbol := range strings.FieldsSeq(strings.ToLower(c.ratings.Texts[key])) {
+			_, ok := c.ratings.Figures[symbol]
+			if base, side, cut := cutSide(symbol); !ok && cut {
+				ok = c.ratings.Figures[base].has(side)
+			}
+			blocking := symbol == "vdrm" || symbol == "vrrm"
+			if !ok && !(blocking && c.ratings.Texts["classes"] != "") {
+				c.problem(c.place(key), "%s is marked but not given", source.Visible(symbol))
+			}
+		}
+	}
+}
+
 // quadrants looks at the list of quadrants in which a triac is guaranteed to fire.
 func (c *card) quadrants() {
 	text, given := c.ratings.Texts["quadrants"]
@@ -78,78 +128,10 @@ func (c *card) quadrants() {
 	for _, q := range text {
 		i := strings.IndexRune(rest, q)
 		if i < 0 {
-			c.problem(c.places["quadrants"], "quadrants= lists some of 1, 2, 3 and 4 in this order, as 123 or 1234")
+			c.problem(c.place("quadrants"), "quadrants= lists some of 1, 2, 3 and 4 in this order, as 123 or 1234")
 			delete(c.ratings.Texts, "quadrants")
 			return
 		}
 		rest = rest[i+1:]
 	}
-}
-
-// fromMemory is the source of a figure that was seen in no document.
-const fromMemory = "from memory, seen in no document"
-
-// trust gives every figure its marks and its source.
-func (c *card) trust() {
-	for base, r := range c.ratings.Figures {
-		r.MinMark, r.TypMark, r.MaxMark = c.markFor(base, "_min"), c.markFor(base, "_typ"), c.markFor(base, "_max")
-		s, _ := SymbolOf(c.ratings.Kind, base)
-		switch {
-		case s.Sense == Greatest && r.HasMax, !r.HasMin && r.HasMax:
-			r.Mark = r.MaxMark
-		case s.Sense == Least && r.HasMin, !r.HasMax && r.HasMin:
-			r.Mark = r.MinMark
-		case r.HasMin && r.HasMax:
-			r.Mark = max(r.MinMark, r.MaxMark)
-		default:
-			r.Mark = r.TypMark
-		}
-		r.Source = c.ratings.Source
-		if r.Mark == Memory && c.marks[""] != Memory {
-			r.Source = fromMemory
-		}
-		c.ratings.Figures[base] = r
-	}
-	c.marksAreUsed()
-}
-
-func (c *card) markFor(base, side string) Mark {
-	if mark, ok := c.marks[base+side]; ok {
-		return mark
-	}
-	if mark, ok := c.marks[base]; ok {
-		return mark
-	}
-	return c.marks[""]
-}
-
-// marksAreUsed complains about a mark for a figure that the card does not give.
-func (c *card) marksAreUsed() {
-	for _, key := range []string{"read", "scan", "memory"} {
-		for _, symbol := range strings.Fields(strings.ToLower(c.ratings.Texts[key])) {
-			r, ok := c.ratings.Figures[symbol]
-			if !ok {
-				base, side, _ := cutSide(symbol)
-				r = c.ratings.Figures[base]
-				ok = side == "_min" && r.HasMin || side == "_typ" && r.HasTyp || side == "_max" && r.HasMax
-			}
-			blocking := (symbol == "vdrm" || symbol == "vrrm") && c.ratings.Texts["classes"] != ""
-			if !ok && !blocking && !c.spice {
-				c.problem(c.places[key], "%s is marked but not given", source.Visible(symbol))
-			}
-		}
-	}
-}
-
-// cutSide splits _min, _typ or _max off a word.
-func cutSide(word string) (base, side string, ok bool) {
-	i := len(word) - len("_min")
-	if i < 0 {
-		return word, "", false
-	}
-	switch word[i:] {
-	case "_min", "_typ", "_max":
-		return word[:i], word[i:], true
-	}
-	return word, "", false
 }
