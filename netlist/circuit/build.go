@@ -47,7 +47,7 @@ func (l Limits) elements() int {
 func Build(deck *syntax.Deck, opts Options) (*Circuit, []source.Problem) {
 	b := &builder{opts: opts, circuit: &Circuit{Title: deck.Title}, names: map[string]NodeID{},
 		byName: map[string]*Element{}, parts: map[string]*part.Ratings{}, globals: map[string]bool{},
-		used: map[*modelDef]bool{}}
+		used: map[*modelDef]bool{}, decks: map[*source.File]*syntax.Deck{}}
 	for _, p := range opts.Parts {
 		for _, name := range append([]string{p.Name}, p.Aliases...) {
 			b.parts[strings.ToLower(name)] = p
@@ -73,8 +73,9 @@ type builder struct {
 	parts    map[string]*part.Ratings
 	globals  map[string]bool
 	used     map[*modelDef]bool
-	models   []*modelDef // of the netlist, in the order of the text
-	stopped  bool        // a limit was hit and told
+	models   []*modelDef                   // of the netlist, in the order of the text
+	decks    map[*source.File]*syntax.Deck // included files, parsed once
+	stopped  bool                          // a limit was hit and told
 	told     map[string]bool
 }
 
@@ -167,8 +168,9 @@ type collector struct {
 	deck    *syntax.Deck
 	stack   []*scope
 	depth   int
-	section string // the only library section to read; "" for all
-	in      string // the section the reading is in
+	outer   *collector // of the including file
+	section string     // the only library section to read; "" for all
+	in      string     // the section the reading is in
 	branch  []branch
 }
 
@@ -303,9 +305,22 @@ func (c *collector) include(s syntax.Statement) {
 		c.b.once("include "+path, at, "%v", err)
 		return
 	}
-	deck := syntax.Parse(file, false)
-	c.b.problems = append(c.b.problems, deck.Problems...)
-	inner := &collector{b: c.b, deck: deck, stack: []*scope{c.top()}, depth: c.depth + 1}
+	for up := c; up != nil; up = up.outer {
+		if up.deck.File == file || up.deck.File.Path == file.Path {
+			c.b.once("include loop "+path, at, "%s includes itself; it is not read again", source.Visible(path))
+			return
+		}
+	}
+	deck, known := c.b.decks[file]
+	if known && s.Include.Section.Text == "" {
+		return // its cards are in already
+	}
+	if !known {
+		deck = syntax.Parse(file, false)
+		c.b.decks[file] = deck
+		c.b.problems = append(c.b.problems, deck.Problems...)
+	}
+	inner := &collector{b: c.b, deck: deck, stack: []*scope{c.top()}, depth: c.depth + 1, outer: c}
 	inner.run(s.Include.Section.Text)
 }
 

@@ -80,9 +80,9 @@ func readChecked(path string, info os.FileInfo, limits Limits) ([]byte, error) {
 func Decode(data []byte) (string, error) {
 	switch {
 	case bytes.HasPrefix(data, []byte{0xff, 0xfe}):
-		return decode16(data[2:], 0), nil
-	case bytes.HasPrefix(data, []byte{0xfe, 0xff}):
 		return decode16(data[2:], 1), nil
+	case bytes.HasPrefix(data, []byte{0xfe, 0xff}):
+		return decode16(data[2:], 0), nil
 	}
 	data = bytes.TrimPrefix(data, []byte{0xef, 0xbb, 0xbf})
 	if bytes.IndexByte(data, 0) >= 0 {
@@ -103,6 +103,7 @@ func Decode(data []byte) (string, error) {
 	return b.String(), nil
 }
 
+// decode16 decodes UTF-16; high is where in a pair the high byte stands.
 func decode16(data []byte, high int) string {
 	units := make([]uint16, len(data)/2)
 	for i := range units {
@@ -116,20 +117,15 @@ func decode16(data []byte, high int) string {
 type Loader struct {
 	roots  []string // resolved folders
 	limits Limits
-	open   map[string]bool // resolved paths that were read
+	files  map[string]*File // by resolved path
 }
 
 // NewLoader returns a loader for the includes of a top file; top is empty for
 // text that has no folder.
 func NewLoader(top string, allowed []string, limits Limits) *Loader {
-	l := &Loader{limits: limits, open: map[string]bool{}}
+	l := &Loader{limits: limits, files: map[string]*File{}}
 	if top != "" {
 		l.allow(filepath.Dir(top))
-		if real, err := filepath.EvalSymlinks(top); err == nil {
-			if abs, err := filepath.Abs(real); err == nil {
-				l.open[abs] = true
-			}
-		}
 	}
 	for _, dir := range allowed {
 		l.allow(dir)
@@ -147,7 +143,7 @@ func (l *Loader) allow(dir string) {
 	}
 }
 
-// Load reads an included file. Relative paths are looked for beside the
+// Load reads an included file, once: the same file gives the same *File. Relative paths are looked for beside the
 // including file, then in the allowed folders.
 func (l *Loader) Load(from *File, path string) (*File, error) {
 	path = strings.ReplaceAll(path, `\`, "/")
@@ -193,10 +189,9 @@ func (l *Loader) inside(abs string) bool {
 }
 
 func (l *Loader) read(shown, abs string) (*File, error) {
-	if l.open[abs] {
-		return nil, fmt.Errorf("%s is included a second time and is not read again", Visible(shown))
+	if known := l.files[abs]; known != nil {
+		return known, nil
 	}
-	l.open[abs] = true
 	info, err := os.Stat(abs)
 	if err != nil {
 		return nil, plain(shown, err)
@@ -209,5 +204,6 @@ func (l *Loader) read(shown, abs string) (*File, error) {
 	if err != nil {
 		return nil, fmt.Errorf("%s: %w", Visible(shown), err)
 	}
-	return New(shown, text), nil
+	l.files[abs] = New(shown, text)
+	return l.files[abs], nil
 }
