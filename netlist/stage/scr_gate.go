@@ -216,6 +216,8 @@ func (g *gateReading) snubber() {
 // fault says why this is no working stage, "" where it is one.
 func (g *gateReading) fault() string {
 	switch {
+	case !g.powered && (g.hasSwitch(g.anode) || g.hasSwitch(g.cathode)):
+		return "a switch stands in its anode circuit; switches are not followed"
 	case !g.powered:
 		return "its anode has no way to a supply above its cathode"
 	case g.gateOnRail():
@@ -226,6 +228,11 @@ func (g *gateReading) fault() string {
 		return "its cathode does not lie on the rail to which the pulse is referred"
 	}
 	return ""
+}
+
+// hasSwitch reports whether a controlled switch stands on a net.
+func (g *gateReading) hasSwitch(n circuit.NodeID) bool {
+	return slices.ContainsFunc(g.w.On(n), func(p circuit.Pin) bool { return p.Element.Kind == circuit.Switch })
 }
 
 // gateOnRail reports whether a dc rail holds the gate.

@@ -81,6 +81,7 @@ func TestGates(t *testing.T) {
 			"XS1: supply=V1 gate-series=R4 driver=XQ1 load=L1 freewheel=D1"},
 		{"snubber", "R4 b1 g 47\nXS1 a g 0 C106D\nRL vcc a 100\nRS a s 47\nCS s 0 10n", "XS1: supply=V1 gate-series=R4 driver=XQ1 load=RL snubber=RS,CS"},
 		{"line", "VL l 0 SIN(0 325 50)\nR4 b1 g 47\nXS1 a g 0 C106D\nRL l a 100", "XS1: supply=VL gate-series=R4 driver=XQ1 load=RL"},
+		{"switch", "R4 b1 g 47\nXS1 a g 0 C106D\nS1 a vcc e 0 SW\n.model SW sw", "XS1: a switch stands in its anode circuit; switches are not followed"},
 		{"no supply", "R4 b1 g 47\nXS1 a g 0 C106D\nRL 0 a 100", "XS1: its anode has no way to a supply above its cathode"},
 	} {
 		stages := recognise(t, oscillator+c.text)
