@@ -50,6 +50,9 @@ func account(w *circuit.Wiring, s *stage.Stage) *Account {
 		a.Unchecked = append(a.Unchecked, Unchecked{Because: "the stage is not complete: " + s.Gap})
 		return a
 	}
+	for _, because := range s.Beside {
+		a.Unchecked = append(a.Unchecked, Unchecked{Because: because})
+	}
 	switch s.Kind {
 	case stage.UJTOscillator:
 		a.oscillator(w, s)

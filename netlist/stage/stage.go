@@ -66,6 +66,8 @@ type Stage struct {
 	Nodes map[string]circuit.NodeID
 	// Gap says why the stage could not be recognised in full; "" where it was.
 	Gap string
+	// Beside lists what hangs on the stage and is not worked out, in words.
+	Beside []string
 	// Order is set where terminal order and wiring do not agree.
 	Order *OrderNote
 }

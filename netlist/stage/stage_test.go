@@ -94,6 +94,17 @@ func TestGates(t *testing.T) {
 	}
 }
 
+func TestWhatIsNotFollowedIsNamed(t *testing.T) {
+	s := recognise(t, oscillator+"R7 e t 1meg\nQ7 vcc t out QN\nR8 out 0 1k\nR9 b1 y 1k\nQ9 z y 0 QN\nR10 vcc z 1k\n.model QN npn")[0]
+	want := []string{"Q7 hangs on the charging network; the current it draws is not worked out", "Q9 hangs on base one; what it does there is not worked out"}
+	if s.Gap != "" || !slices.Equal(s.Beside, want) {
+		t.Errorf("gap %q, beside %q", s.Gap, s.Beside)
+	}
+	if s := recognise(t, oscillator+"R4 b1 g 47\nXS1 a g 0 C106D\nRL vcc a 100")[0]; s.Beside != nil {
+		t.Errorf("nothing hangs on a plain stage: %q", s.Beside)
+	}
+}
+
 // Where the usual order makes no working stage and one other does, the wiring
 // decides; a declared order stands, and the note says what the wiring wants.
 func TestTerminalOrderFromTheWiring(t *testing.T) {

@@ -21,6 +21,7 @@ func (r *recogniser) ujt(anchor *circuit.Element, nets [3]circuit.NodeID) *Stage
 		}
 	}
 	u.supplies()
+	u.beside()
 	return s
 }
 
@@ -270,6 +271,41 @@ func isDirect(e *circuit.Element) bool { return isResistor(e) || e.Kind == circu
 
 func without(list, drop []*circuit.Element) []*circuit.Element {
 	return slices.DeleteFunc(slices.Clone(list), func(e *circuit.Element) bool { return slices.Contains(drop, e) })
+}
+
+// beside names what hangs on the charging network or on base one and is not
+// followed: transistors, switches, controlled sources, unknown parts.
+func (u *ujtReading) beside() {
+	own := func(n circuit.NodeID) bool {
+		return u.isRail(n) || n == u.base1 || n == u.base2
+	}
+	charging := u.w.Walk([]circuit.NodeID{u.node, u.emitter}, carriesDC, own)
+	for _, e := range u.strangers(charging, func(n circuit.NodeID) bool { return own(n) }) {
+		u.stage.Beside = append(u.stage.Beside, e.Designator+" hangs on the charging network; the current it draws is not worked out")
+	}
+	base := u.w.Walk([]circuit.NodeID{u.base1}, carriesDC, func(n circuit.NodeID) bool { return u.isRail(n) || n == u.node || n == u.emitter })
+	for _, e := range u.strangers(base, func(n circuit.NodeID) bool { return u.isRail(n) || n == u.node || n == u.emitter }) {
+		u.stage.Beside = append(u.stage.Beside, e.Designator+" hangs on base one; what it does there is not worked out")
+	}
+}
+
+// strangers returns the parts on the inner nets of an area that no walk follows.
+func (u *ujtReading) strangers(area *circuit.Area, outside func(circuit.NodeID) bool) []*circuit.Element {
+	var list []*circuit.Element
+	for _, n := range area.Nets {
+		if outside(n) {
+			continue
+		}
+		for _, p := range u.w.On(n) {
+			e := p.Element
+			thyristor := e.Kind == circuit.SCR // its gate stage tells
+			if e == u.stage.Anchor || carriesDC(e) || e.Kind == circuit.Capacitor || thyristor || slices.Contains(list, e) {
+				continue
+			}
+			list = append(list, e)
+		}
+	}
+	return list
 }
 
 // supplies collects the sources that feed the stage.

@@ -77,11 +77,10 @@ func (t Terminal) file(w io.Writer, r *rules.Result) {
 	})
 	t.list(w, "not checked", len(r.Unchecked), func(i int) string {
 		x := r.Unchecked[i]
-		what := "everything else"
-		if x.Rule != "" {
-			what = x.Rule
+		if x.Rule == "" {
+			return x.Stage + ": " + x.Because
 		}
-		return fmt.Sprintf("%s at %s: %s", what, source.Visible(x.Stage), x.Because)
+		return fmt.Sprintf("%s at %s: %s", x.Rule, x.Stage, x.Because)
 	})
 	t.list(w, "take care", len(r.Cautions), func(i int) string { return r.Cautions[i].Message })
 	fmt.Fprintf(w, "\n  %s\n", t.stages(r)+summary(Count([]*rules.Result{r})))
@@ -119,7 +118,7 @@ func (t Terminal) head(w io.Writer, grade string, at source.Span, id string) {
 
 // text writes a paragraph indented and wrapped.
 func (t Terminal) text(w io.Writer, text string) {
-	for _, line := range wrap(text, max(t.Width, 40)-6) {
+	for _, line := range wrap(source.Visible(text), max(t.Width, 40)-6) {
 		fmt.Fprintf(w, "      %s\n", line)
 	}
 }
@@ -149,7 +148,7 @@ func (t Terminal) finding(w io.Writer, f rule.Finding) {
 	t.text(w, f.Message)
 	t.card(w, f.At)
 	if f.Working != "" {
-		t.labelled(w, "working", f.Working)
+		t.labelled(w, "working", source.Visible(f.Working))
 	}
 	if len(f.Corner) > 0 {
 		t.labelled(w, "on the board with", Settings(f.Corner))
@@ -162,7 +161,7 @@ func (t Terminal) finding(w io.Writer, f rule.Finding) {
 		}
 		t.labelled(w, "mend", t.paint(strings.Join(words, " with "), color.FgGreen)+" clears it; the board was worked out anew with it")
 	case f.NoAdvice != "":
-		t.labelled(w, "mend", f.NoAdvice)
+		t.labelled(w, "mend", source.Visible(f.NoAdvice))
 	}
 }
 
@@ -191,7 +190,7 @@ func (t Terminal) list(w io.Writer, heading string, n int, line func(int) string
 	}
 	fmt.Fprintf(w, "\n  %s\n", heading)
 	for i := range n {
-		for k, part := range wrap(line(i), max(t.Width, 40)-8) {
+		for k, part := range wrap(source.Visible(line(i)), max(t.Width, 40)-8) {
 			lead := "    - "
 			if k > 0 {
 				lead = "      "

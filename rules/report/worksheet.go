@@ -29,7 +29,7 @@ func (t Terminal) Worksheet(w io.Writer, boards []*netlist.Board) {
 		}
 		for _, p := range b.Problems {
 			at := p.Span.Position()
-			fmt.Fprintf(w, "\n  line %d could not be read: %s\n", at.Line, p.Message)
+			fmt.Fprintf(w, "\n  line %d could not be read: %s\n", at.Line, source.Visible(p.Message))
 		}
 	}
 }
@@ -56,7 +56,7 @@ func (t Terminal) stage(w io.Writer, a *operating.Account) {
 	}
 	for _, f := range a.Figures {
 		fmt.Fprintf(w, "    %-32s %12s %12s %12s\n", f.Name, quantity.Format(f.Low, f.Unit), quantity.Format(f.Nominal, f.Unit), quantity.Format(f.High, f.Unit))
-		for _, line := range wrap(f.Working, max(t.Width, 60)-8) {
+		for _, line := range wrap(source.Visible(f.Working), max(t.Width, 60)-8) {
 			fmt.Fprintf(w, "        %s\n", line)
 		}
 	}
