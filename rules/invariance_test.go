@@ -2,11 +2,13 @@ package rules_test
 
 import (
 	"fmt"
+	"io/fs"
 	"math/rand/v2"
 	"slices"
 	"strings"
 	"testing"
 
+	"standoff/fixtures"
 	"standoff/netlist"
 	"standoff/netlist/circuit"
 	"standoff/netlist/quantity"
@@ -197,6 +199,55 @@ func sensitive(id, rewriting string) bool {
 		return rewriting == "inside a subcircuit"
 	}
 	return false
+}
+
+// plainDeck strips comments from a fixture, so that a card is a line; ok is false
+// where cards are continued or nested.
+func plainDeck(text string) (plain string, ok bool) {
+	lines := strings.Split(text, "\n")
+	out := lines[:1]
+	for _, l := range lines[1:] {
+		low := strings.ToLower(l)
+		if strings.HasPrefix(l, "+") || strings.HasPrefix(low, ".subckt") || strings.HasPrefix(low, ".param") {
+			return "", false
+		}
+		if strings.HasPrefix(l, "*") && !strings.HasPrefix(l, "*>") || strings.TrimSpace(l) == "" {
+			continue
+		}
+		l, _, _ = strings.Cut(l, ";")
+		out = append(out, strings.TrimRight(l, " "))
+	}
+	return strings.Join(out, "\n") + "\n", true
+}
+
+func TestWholeBoardsWrittenAnotherWayGetTheSameVerdicts(t *testing.T) {
+	count := 0
+	files, err := fs.Glob(fixtures.Files, "boards/*.cir")
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, file := range files {
+		data, err := fixtures.Files.ReadFile(file)
+		if err != nil {
+			t.Fatal(err)
+		}
+		text, ok := plainDeck(string(data))
+		if !ok {
+			continue
+		}
+		count++
+		want := verdicts(t, text)
+		title, lines := split(t, text)
+		for name, rewrite := range rewritings {
+			other := rewrite(title, lines)
+			if got := verdicts(t, other); !slices.Equal(got, want) {
+				t.Errorf("%s, %s:\n got %v\nwant %v\n%s", file, name, got, want, other)
+			}
+		}
+	}
+	if count < 10 {
+		t.Errorf("only %d boards could be rewritten", count)
+	}
 }
 
 func TestTheSameBoardWrittenAnotherWayGetsTheSameVerdicts(t *testing.T) {
