@@ -2,6 +2,7 @@ package part
 
 import (
 	"maps"
+	"slices"
 	"strings"
 
 	"standoff/netlist/quantity"
@@ -12,12 +13,14 @@ import (
 type family struct {
 	base    *Ratings
 	classes []class
+	trouble []source.Problem // of a card of the library; a test wants none
 }
 
 // class is one voltage class of a family.
 type class struct {
 	names    []string
 	blocking Rating
+	made     *Ratings
 }
 
 // family reads the card with its voltage classes.
@@ -45,16 +48,19 @@ func (c *card) family() *family {
 	return f
 }
 
-// part returns the ratings of a class.
+// part returns the ratings of a class, made on first use.
 func (k *class) part(base *Ratings) *Ratings {
-	r := *base
-	r.Name, r.Aliases = k.names[0], k.names[1:]
-	r.Figures = maps.Clone(base.Figures)
-	r.Figures["vdrm"] = k.blocking
-	if r.Kind == SCR {
-		r.Figures["vrrm"] = k.blocking
+	if k.made == nil {
+		r := *base
+		r.Name, r.Aliases = k.names[0], k.names[1:]
+		r.Figures = maps.Clone(base.Figures)
+		r.Figures["vdrm"] = k.blocking
+		if r.Kind == SCR {
+			r.Figures["vrrm"] = k.blocking
+		}
+		k.made = &r
 	}
-	return &r
+	return k.made
 }
 
 // parts returns the card's own part and those of the classes.
@@ -64,4 +70,18 @@ func (f *family) parts() []*Ratings {
 		list = append(list, f.classes[i].part(f.base))
 	}
 	return list
+}
+
+// find returns the part that bears a name.
+func (f *family) find(name string) *Ratings {
+	is := func(n string) bool { return strings.EqualFold(n, name) }
+	if is(f.base.Name) || slices.ContainsFunc(f.base.Aliases, is) {
+		return f.base
+	}
+	for i := range f.classes {
+		if slices.ContainsFunc(f.classes[i].names, is) {
+			return f.classes[i].part(f.base)
+		}
+	}
+	return nil
 }

@@ -7,7 +7,6 @@ import (
 	"sync"
 
 	"standoff/netlist/source"
-	"standoff/netlist/syntax"
 )
 
 // The library: one file of cards a family of devices.
@@ -28,130 +27,138 @@ var (
 	optotriacCards string
 )
 
-// entry is one card of the library, not parsed before it is wanted.
-type entry struct {
-	text    string
-	once    sync.Once
-	family  *family
-	trouble []source.Problem
-
-	lock sync.Mutex
-	made []*Ratings // the card's own part, then its classes; made when wanted
-}
-
-// catalogue is the library with an index of names in upper case.
+// catalogue is the library with an index of its names.
 type catalogue struct {
-	byName  map[string]*entry
-	entries []entry
+	texts []string
+	// slots is an open hash table of the places of all names. Start-up pays for
+	// every page of memory that is touched, so it holds neither the names nor the
+	// cards, and a map, eight times the size, would cost more than the scan.
+	slots [2048]place
+
+	lock  sync.Mutex
+	cards map[place]*family   // those that were wanted, by where they start
+	found map[string]*Ratings // names that were asked for and are there
 }
 
-// The library has about this many cards and names; more is no harm.
-const cardCount, nameCount = 320, 1024
+// place is where a name or a card starts: the file in the upper bits, the offset
+// in the lower. No name starts at 0.
+type place uint32
+
+const offsetBits = 24
+
+func (p place) file() int   { return int(p >> offsetBits) }
+func (p place) offset() int { return int(p & (1<<offsetBits - 1)) }
 
 // library is made on the first look-up by a scan for names, without parsing:
 // most runs need one or two cards, or none.
 var library = sync.OnceValue(func() *catalogue {
-	l := &catalogue{byName: make(map[string]*entry, nameCount), entries: make([]entry, 0, cardCount)}
-	for _, text := range []string{ujtCards, putCards, scrCards, triacCards, diacCards, sourceCards, optotriacCards} {
-		l.add(text)
-	}
-	for i := range l.entries {
-		l.index(&l.entries[i])
+	l := &catalogue{cards: map[place]*family{}, found: map[string]*Ratings{},
+		texts: []string{ujtCards, putCards, scrCards, triacCards, diacCards, sourceCards, optotriacCards}}
+	for file := range l.texts {
+		l.scan(file)
 	}
 	return l
 })
 
-const cardStart = "\n.model "
+// How the lines of the library start that hold names.
+const (
+	modelLine   = ".model "
+	aliasLine   = `+ alias="`
+	classesLine = `+ classes="`
+)
 
-// add finds the cards of one file.
-func (l *catalogue) add(text string) {
-	for at := strings.Index(text, cardStart); at >= 0; {
-		text = text[at+1:]
-		at = strings.Index(text, cardStart)
-		card := text
-		if at >= 0 {
-			card = text[:at]
+// scan finds the names of one file.
+func (l *catalogue) scan(file int) {
+	text := l.texts[file]
+	for at := 0; at < len(text); {
+		line := text[at:]
+		switch {
+		case strings.HasPrefix(line, modelLine):
+			l.name(file, at+len(modelLine))
+		case strings.HasPrefix(line, aliasLine):
+			l.index(file, at+len(aliasLine))
+		case strings.HasPrefix(line, classesLine):
+			l.index(file, at+len(classesLine))
 		}
-		l.entries = append(l.entries, entry{text: card})
-	}
-}
-
-// index files a card under its name, its aliases and its voltage classes.
-func (l *catalogue) index(e *entry) {
-	rest := e.text[len(cardStart)-1:]
-	l.byName[strings.ToUpper(rest[:strings.IndexByte(rest, ' ')])] = e
-	for {
-		i := strings.IndexByte(rest, '"')
-		if i < 0 {
+		end := strings.IndexByte(line, '\n')
+		if end < 0 {
 			return
 		}
-		key, behind := rest[:i], rest[i+1:]
-		end := max(strings.IndexByte(behind, '"'), 0)
-		if strings.HasSuffix(key, " alias=") || strings.HasSuffix(key, " classes=") {
-			l.indexList(e, behind[:end])
-		}
-		rest = behind[end+1:]
+		at += end + 1
 	}
 }
 
-// indexList files a card under the names of a list: NAME, or NAME,NAME=VOLTS.
-func (l *catalogue) indexList(e *entry, list string) {
-	for start := 0; start < len(list); {
-		end := start
-		for end < len(list) && list[end] != ' ' && list[end] != ',' && list[end] != '=' {
-			end++
+// index files the names of a list: NAME, or NAME,NAME=VOLTS, up to the quote.
+func (l *catalogue) index(file, at int) {
+	text := l.texts[file]
+	for text[at] != '"' {
+		if at = l.name(file, at); text[at] == '=' { // over the voltage
+			for text[at] != ' ' && text[at] != '"' {
+				at++
+			}
 		}
-		if end > start {
-			l.byName[strings.ToUpper(list[start:end])] = e
+		if text[at] != '"' {
+			at++
 		}
-		for end < len(list) && list[end] != ' ' && list[end] != ',' { // over the voltage
-			end++
-		}
-		start = end + 1
 	}
 }
 
-// parse reads the card, once.
-func (e *entry) parse() *family {
-	e.once.Do(func() {
-		deck := syntax.Parse(source.New("library", e.text), false)
-		e.trouble = deck.Problems
-		c := newCard(deck, deck.Statements[0].Model, Plain, "library")
-		e.family = c.family()
-		e.made = make([]*Ratings, 1+len(e.family.classes))
-		e.trouble = append(e.trouble, c.problems...)
-	})
-	return e.family
+// name files the name that starts at a place and returns where it ends.
+func (l *catalogue) name(file, start int) int {
+	text := l.texts[file]
+	end := start
+	for !endsName(text[end]) {
+		end++
+	}
+	*l.slot(text[start:end]) = place(file<<offsetBits | start)
+	return end
 }
 
-// part returns the card's own part (0) or that of a class (1 ...).
-func (e *entry) part(i int) *Ratings {
-	f := e.parse()
-	e.lock.Lock()
-	defer e.lock.Unlock()
-	if e.made[i] == nil {
-		if i == 0 {
-			e.made[i] = f.base
-		} else {
-			e.made[i] = f.classes[i-1].part(f.base)
-		}
-	}
-	return e.made[i]
+// endsName reports whether a byte ends a name in the library.
+func endsName(c byte) bool {
+	return c == ' ' || c == ',' || c == '=' || c == '"' || c == '(' || c == '\n'
 }
 
-// find returns the part of a card that bears a name.
-func (e *entry) find(name string) (*Ratings, bool) {
-	f := e.parse()
-	is := func(n string) bool { return strings.EqualFold(n, name) }
-	if is(f.base.Name) || slices.ContainsFunc(f.base.Aliases, is) {
-		return e.part(0), true
+// slot returns the slot of a name, an empty one for a new name.
+func (l *catalogue) slot(name string) *place {
+	hash := uint32(2166136261) // FNV-1a
+	for i := range len(name) {
+		hash = (hash ^ uint32(name[i])) * 16777619
 	}
-	for i := range f.classes {
-		if slices.ContainsFunc(f.classes[i].names, is) {
-			return e.part(i + 1), true
+	for hash ^= hash >> 15; ; hash++ {
+		s := &l.slots[hash%uint32(len(l.slots))]
+		if *s == 0 || l.isAt(*s, name) {
+			return s
 		}
 	}
-	return nil, false
+}
+
+// isAt reports whether a name stands at a place.
+func (l *catalogue) isAt(p place, name string) bool {
+	rest, ok := strings.CutPrefix(l.texts[p.file()][p.offset():], name)
+	return ok && endsName(rest[0])
+}
+
+// family returns the card in which a place lies.
+func (l *catalogue) family(p place) *family {
+	text := l.texts[p.file()]
+	start := strings.LastIndex(text[:p.offset()], modelLine)
+	key := place(p.file()<<offsetBits | start)
+	f, ok := l.cards[key]
+	if !ok {
+		f = parseCard(text[start:])
+		l.cards[key] = f
+	}
+	return f
+}
+
+// find returns the part of exactly this name, in upper case.
+func (l *catalogue) find(name string) *Ratings {
+	p := *l.slot(name)
+	if p == 0 {
+		return nil
+	}
+	return l.family(p).find(name)
 }
 
 // Lookup returns the library's ratings of a part by its name, an alias or a
@@ -160,26 +167,48 @@ func (e *entry) find(name string) (*Ratings, bool) {
 func Lookup(name string) (*Ratings, bool) {
 	l := library()
 	upper := strings.ToUpper(name)
-	if e, ok := l.byName[upper]; ok {
-		return e.find(upper)
+	l.lock.Lock()
+	defer l.lock.Unlock()
+	r, known := l.found[upper]
+	if known || upper == "" || len(upper) > longestName {
+		return r, known
 	}
-	for _, form := range undecorated(upper) {
-		if e, ok := l.byName[form]; ok {
-			return e.find(form)
+	if r = l.find(upper); r == nil {
+		for _, form := range undecorated(upper) {
+			if r = l.find(form); r != nil {
+				break
+			}
 		}
 	}
-	return nil, false
+	if r != nil {
+		l.found[upper] = r
+	}
+	return r, r != nil
+}
+
+// longestName is the longest name, decorated, that is looked for.
+const longestName = 60
+
+// families calls do with every card of the library.
+func (l *catalogue) families(do func(f *family)) {
+	l.lock.Lock()
+	defer l.lock.Unlock()
+	for file, text := range l.texts {
+		for at := 0; ; {
+			next := strings.Index(text[at:], "\n"+modelLine)
+			if next < 0 {
+				break
+			}
+			at += next + len("\n"+modelLine)
+			do(l.family(place(file<<offsetBits | at)))
+		}
+	}
 }
 
 // All returns every part of the library by name.
 func All() []*Ratings {
 	var list []*Ratings
-	l := library()
-	for i := range l.entries {
-		for k := range 1 + len(l.entries[i].parse().classes) {
-			list = append(list, l.entries[i].part(k))
-		}
-	}
+	library().families(func(f *family) { list = append(list, f.parts()...) })
 	slices.SortFunc(list, func(a, b *Ratings) int { return strings.Compare(a.Name, b.Name) })
 	return list
 }
@@ -187,10 +216,6 @@ func All() []*Ratings {
 // Problems returns what is wrong with the library's own cards; a test wants none.
 func Problems() []source.Problem {
 	var list []source.Problem
-	l := library()
-	for i := range l.entries {
-		l.entries[i].parse()
-		list = append(list, l.entries[i].trouble...)
-	}
+	library().families(func(f *family) { list = append(list, f.trouble...) })
 	return list
 }
