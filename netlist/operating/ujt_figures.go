@@ -115,8 +115,7 @@ func rampDeparture(l float64) float64 {
 		return max(l, 0) / 8
 	}
 	whole := -math.Expm1(-l)
-	t := math.Log(l/whole) / l
-	return -math.Expm1(-l*t)/whole - t
+	return (1-whole/l)/whole - math.Log(l/whole)/l
 }
 
 // loadFigures are what the parts have to stand.
