@@ -32,8 +32,8 @@ type setting struct {
 
 func newCard(deck *syntax.Deck, m *syntax.Model, resolve Resolve, origin string) *card {
 	kind, spice := typeKind(m.Type.Text)
-	r := &Ratings{Name: m.Name.Text, Kind: kind, Figures: make(map[string]Rating, len(m.Pairs)), Texts: map[string]string{},
-		Origin: origin, At: deck.Span(m.Name)}
+	r := &Ratings{Name: m.Name.Text, Kind: kind, Origin: origin, At: deck.Span(m.Name),
+		Figures: make(map[string]Rating, len(m.Pairs)), Texts: map[string]string{}}
 	return &card{deck: deck, model: m, resolve: resolve, ratings: r, spice: spice, marks: map[string]Mark{}}
 }
 

@@ -22,17 +22,18 @@ func (c *card) check() {
 		}
 	}
 	if t, ok := c.ratings.Test("t_cold"); ok && t >= 25 {
-		c.drop("t_cold", fmt.Sprintf("t_cold = %s is not cold: the other figures hold at 25 deg C", quantity.Format(t, "deg C")))
+		c.drop("t_cold", fmt.Sprintf("t_cold = %g deg C is not cold: the other figures hold at 25 deg C", t))
 	}
 	if t, ok := c.ratings.Test("t_hot"); ok && t <= 25 {
-		c.drop("t_hot", fmt.Sprintf("t_hot = %s is not hot: the other figures hold at 25 deg C", quantity.Format(t, "deg C")))
+		c.drop("t_hot", fmt.Sprintf("t_hot = %g deg C is not hot: the other figures hold at 25 deg C", t))
 	}
 }
 
 // disorder says what is wrong with the order of min, typ and max.
 func disorder(s Symbol, r Rating) string {
 	above := func(lower, upper string, low, high float64) string {
-		return fmt.Sprintf("%s%s = %s lies above %s%s = %s", s.Name, lower, quantity.Format(low, s.Unit), s.Name, upper, quantity.Format(high, s.Unit))
+		return fmt.Sprintf("%s = %s lies above %s = %s", s.Name+lower, quantity.Format(low, s.Unit),
+			s.Name+upper, quantity.Format(high, s.Unit))
 	}
 	switch {
 	case r.HasMin && r.HasMax && r.Min > r.Max:

@@ -34,8 +34,8 @@ func (c *card) family() *family {
 			continue
 		}
 		mark := c.markFor("vdrm", "_min")
-		k := class{names: strings.Split(names, ","), blocking: Rating{Min: v.Value, HasMin: true, Mark: mark, MinMark: mark,
-			Source: c.sourceFor(mark)}}
+		k := class{names: strings.Split(names, ","),
+			blocking: Rating{Min: v.Value, HasMin: true, Mark: mark, MinMark: mark, Source: c.sourceFor(mark)}}
 		if strings.EqualFold(k.names[0], f.base.Name) {
 			// The card's own name is a class: there is no name for the family.
 			own := k.part(f.base)

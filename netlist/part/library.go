@@ -49,16 +49,19 @@ const offsetBits = 24
 func (p place) file() int   { return int(p >> offsetBits) }
 func (p place) offset() int { return int(p & (1<<offsetBits - 1)) }
 
-// library is made on the first look-up by a scan for names, without parsing:
-// most runs need one or two cards, or none.
-var library = sync.OnceValue(func() *catalogue {
+// library is made on the first look-up.
+var library = sync.OnceValue(newCatalogue)
+
+// newCatalogue scans the library for names, without parsing: most runs need one
+// or two cards, or none.
+func newCatalogue() *catalogue {
 	l := &catalogue{cards: map[place]*family{}, found: map[string]*Ratings{},
 		texts: []string{ujtCards, putCards, scrCards, triacCards, diacCards, sourceCards, optotriacCards}}
 	for file := range l.texts {
 		l.scan(file)
 	}
 	return l
-})
+}
 
 // How the lines of the library start that hold names.
 const (

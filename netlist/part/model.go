@@ -79,5 +79,6 @@ func typeKind(word string) (kind Kind, spice bool) {
 
 // problem notes what is wrong at a word of the card.
 func (c *card) problem(at syntax.Word, format string, args ...any) {
-	c.problems = append(c.problems, source.Problem{Span: c.deck.Span(at), Message: fmt.Sprintf(format, args...)})
+	p := source.Problem{Span: c.deck.Span(at), Message: fmt.Sprintf(format, args...)}
+	c.problems = append(c.problems, p)
 }

@@ -60,8 +60,8 @@ func (s Symbol) signed() bool { return s.Unit == "deg C" || s.Unit == "1/K" }
 // an idealised part.
 func (s Symbol) mayVanish() bool {
 	switch s.Name {
-	case "vd", "vv", "vt_10k", "vt_1meg", "vt0", "rt", "pd_slope", "vbo_symmetry", "ieo", "igao", "idrm", "zz", "vz_tol",
-		"set_error_small", "set_error_large":
+	case "vd", "vv", "vt_10k", "vt_1meg", "vt0", "rt", "pd_slope", "vbo_symmetry", "ieo", "igao", "idrm", "zz",
+		"vz_tol", "set_error_small", "set_error_large":
 		return true
 	}
 	return s.signed()

@@ -10,7 +10,8 @@ import (
 // isText reports whether a key holds words, not a number.
 func isText(key string) bool {
 	switch key {
-	case "source", "mark", "memory", "scan", "read", "alias", "classes", "quadrants", "crossing", "package", "leads", "mfg", "note":
+	case "source", "mark", "memory", "scan", "read", "alias", "classes", "quadrants", "crossing", "package", "leads",
+		"mfg", "note":
 		return true
 	}
 	return false
@@ -53,7 +54,8 @@ func (c *card) place(key string) syntax.Word {
 func (c *card) rowMark() {
 	mark, ok := markOf(c.ratings.Texts["mark"])
 	if !ok && !c.spice {
-		c.problem(c.place("mark"), "mark= is read, scan or memory, not %s", source.Visible(c.ratings.Texts["mark"]))
+		word := source.Visible(c.ratings.Texts["mark"])
+		c.problem(c.place("mark"), "mark= is read, scan or memory, not %s", word)
 	}
 	c.marks[""] = mark
 	for _, key := range []string{"read", "scan", "memory"} {
@@ -93,7 +95,7 @@ func (c *card) markFor(base, side string) Mark {
 
 // sourceFor returns where a figure of such trust comes from.
 func (c *card) sourceFor(mark Mark) string {
-	if mark == Memory && c.marks[""] != Memory {
+	if mixed := len(c.marks) > 1; mark == Memory && mixed {
 		return "from memory, seen in no document"
 	}
 	return c.ratings.Source
