@@ -187,10 +187,6 @@ func markWords(mark part.Mark) string {
 	return "assumed"
 }
 
-// material is the share by which a comparison has to move when a value from
-// memory is halved or doubled before it is said to rest on that value.
-const material = 0.02
-
 // memoryIn returns the note of a figure from memory on which a contest rests at
 // a point, "" where there is none. A contest rests on a figure where half or
 // twice of it would turn the verdict or move the margin by more than a twentieth:
