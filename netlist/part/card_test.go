@@ -130,7 +130,8 @@ func TestTheWorstQuadrantStandsForAll(t *testing.T) {
 
 func TestCurrentOfACurrentSource(t *testing.T) {
 	fixed := parse(t, ".model A isource(i=1m i_min=0.9m i_max=1.1m v_min=1)\n")[0]
-	if s, _, ok := fixed.Spread("i"); !ok || !same(s, quantity.Spread{Low: 0.9e-3, Nominal: 1e-3, High: 1.1e-3}) {
+	want := quantity.Spread{Low: 0.9e-3, Nominal: 1e-3, High: 1.1e-3}
+	if s, _, ok := fixed.Spread("i"); !ok || !same(s, want) {
 		t.Errorf("i = %v", s)
 	}
 	set := parse(t, ".model B isource(v_per_k=214u ratio=1.06 i_min=1u i_max=10m)\n")[0]
@@ -157,7 +158,8 @@ func TestPerCent(t *testing.T) {
 }
 
 func TestClassesOfAPartsFile(t *testing.T) {
-	list := parse(t, `.model FAM scr(igt=10m classes="FAM-4,FAM4=400" classes="FAM-6=600" alias=OLD mark=memory memory=vdrm)
+	list := parse(t, `.model FAM scr(igt=10m classes="FAM-4,FAM4=400" classes="FAM-6=600"
++ alias=OLD mark=memory memory=vdrm)
 `)
 	var names []string
 	for _, r := range list {
@@ -175,39 +177,42 @@ func TestClassesOfAPartsFile(t *testing.T) {
 }
 
 func TestBadCards(t *testing.T) {
-	for text, want := range map[string]string{
-		".model A ujt(etta=0.6)":                         "etta is no rating of a ujt; did you mean eta?",
-		".model A ujt(eat_min=0.6)":                      "eat_min is no rating of a ujt; did you mean eta_min?",
-		".model A scr(vgrk=5)":                           "vgrk is no rating of a scr; did you mean vgrm?",
-		".model A scr(frobnicate=5)":                     "frobnicate is no rating of a scr",
-		".model A ujt(eta_min=0.8 eta_max=0.6)":          "eta_min = 0.8 lies above eta_max = 0.6",
-		".model A ujt(ip_typ=8u ip_max=5u)":              "ip_typ = 8 uA lies above ip_max = 5 uA",
-		".model A ujt(eta=1.2)":                          "eta: a stand-off ratio lies below 1",
-		".model A ujt(eta=-0.6)":                         "eta = -0.6 makes no sense for the intrinsic stand-off ratio",
-		".model A scr(igt=0)":                            "igt = 0 A makes no sense for the gate trigger current, 25 deg C",
-		".model A scr(igt=abc)":                          `igt: "abc" is not a number`,
-		".model A scr(igt=0,5)":                          `igt: "0,5" has a decimal comma; write a point`,
-		".model A scr(igt=nan)":                          `igt: "nan" is not a number`,
-		".model A scr(igt=1e999)":                        `igt: "1e999" is out of range`,
-		".model A scr(igt={x})":                          "igt has no value that can be worked out",
-		".model A scr(igt=\"5m\")":                       "igt has no value that can be worked out",
-		".model A scr(igt=5%)":                           "igt is a figure in A, not in per cent",
-		".model A scr(igt=5m igt=6m)":                    "igt: igt_max is given already",
-		".model A scr(igt_max=5m igt=6m)":                "igt: igt_max is given already",
-		".model A scr(t_cold=40)":                        "t_cold = 40 deg C is not cold: the other figures hold at 25 deg C",
-		".model A scr(t_hot=20)":                         "t_hot = 20 deg C is not hot: the other figures hold at 25 deg C",
-		".model A scr(vgt=0.8 mark=rumour)":              "mark= is read, scan or memory, not rumour",
-		".model A scr(vgt=0.8 mark=read memory=vgd)":     "vgd is marked but not given",
-		".model A scr(vgt=0.8 mark=read scan=vgt_typ)":   "vgt_typ is marked but not given",
-		".model A scr(vgt=0.8 loose)":                    "loose stands alone: a rating is written as symbol=value",
-		".model A triac(igt=5m quadrants=135)":           "quadrants= lists some of 1, 2, 3 and 4 in this order, as 123 or 1234",
-		".model A scr(vgt=0.8 classes=\"A1=x\")":         "classes= lists NAME=VOLTS, not A1=x",
-		".model A scr(vgt=1)\n.model a scr(vgt=2)":       "a stands twice in this file",
-		".model A d(bv=12 vz_tol=-0.05)":                 "vz_tol = -0.05 makes no sense for the relative tolerance of the breakdown voltage",
-		"R1 a b 1k":                                      "a parts file holds .model cards only",
-		".model A ujt(\x1b[2J=1)":                        "",
-		".model A scr(vgt=0.8 mark=read mem\u202eory=x)": "mem\\u{202e}ory is no rating of a scr",
+	for _, c := range [][2]string{
+		{".model A ujt(etta=0.6)", "etta is no rating of a ujt; did you mean eta?"},
+		{".model A ujt(eat_min=0.6)", "eat_min is no rating of a ujt; did you mean eta_min?"},
+		{".model A scr(vgrk=5)", "vgrk is no rating of a scr; did you mean vgrm?"},
+		{".model A scr(frobnicate=5)", "frobnicate is no rating of a scr"},
+		{".model A ujt(eta_min=0.8 eta_max=0.6)", "eta_min = 0.8 lies above eta_max = 0.6"},
+		{".model A ujt(ip_typ=8u ip_max=5u)", "ip_typ = 8 uA lies above ip_max = 5 uA"},
+		{".model A ujt(eta=1.2)", "eta: a stand-off ratio lies below 1"},
+		{".model A ujt(eta=-0.6)", "eta = -0.6 makes no sense for the intrinsic stand-off ratio"},
+		{".model A scr(igt=0)", "igt = 0 A makes no sense for the gate trigger current, 25 deg C"},
+		{".model A scr(igt=abc)", `igt: "abc" is not a number`},
+		{".model A scr(igt=0,5)", `igt: "0,5" has a decimal comma; write a point`},
+		{".model A scr(igt=nan)", `igt: "nan" is not a number`},
+		{".model A scr(igt=1e999)", `igt: "1e999" is out of range`},
+		{".model A scr(igt={x})", "igt has no value that can be worked out"},
+		{".model A scr(igt=\"5m\")", "igt has no value that can be worked out"},
+		{".model A scr(igt=5%)", "igt is a figure in A, not in per cent"},
+		{".model A scr(igt=5m igt=6m)", "igt: igt_max is given already"},
+		{".model A scr(igt_max=5m igt=6m)", "igt: igt_max is given already"},
+		{".model A scr(t_cold=40)", "t_cold = 40 deg C is not cold: the other figures hold at 25 deg C"},
+		{".model A scr(t_hot=20)", "t_hot = 20 deg C is not hot: the other figures hold at 25 deg C"},
+		{".model A scr(vgt=0.8 mark=rumour)", "mark= is read, scan or memory, not rumour"},
+		{".model A scr(vgt=0.8 mark=read memory=vgd)", "vgd is marked but not given"},
+		{".model A scr(vgt=0.8 mark=read scan=vgt_typ)", "vgt_typ is marked but not given"},
+		{".model A scr(vgt=0.8 loose)", "loose stands alone: a rating is written as symbol=value"},
+		{".model A triac(igt=5m quadrants=135)",
+			"quadrants= lists some of 1, 2, 3 and 4 in this order, as 123 or 1234"},
+		{".model A scr(vgt=0.8 classes=\"A1=x\")", "classes= lists NAME=VOLTS, not A1=x"},
+		{".model A scr(vgt=1)\n.model a scr(vgt=2)", "a stands twice in this file"},
+		{".model A d(bv=12 vz_tol=-0.05)",
+			"vz_tol = -0.05 makes no sense for the relative tolerance of the breakdown voltage"},
+		{"R1 a b 1k", "a parts file holds .model cards only"},
+		{".model A ujt(\x1b[2J=1)", ""},
+		{".model A scr(vgt=0.8 mark=read mem\u202eory=x)", "mem\\u{202e}ory is no rating of a scr"},
 	} {
+		text, want := c[0], c[1]
 		_, problems := part.ParseFile(source.New("p.cir", text+"\n"))
 		if len(problems) != 1 || want != "" && problems[0].Message != want {
 			t.Errorf("%s: got %v, want %q", text, problems, want)

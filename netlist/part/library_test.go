@@ -49,8 +49,10 @@ func TestEveryFigureIsKnownAndMarked(t *testing.T) {
 				}
 			}
 			memory := strings.Contains(f.Source, "memory")
-			wrong := f.Mark == part.Memory && !memory || f.Mark != part.Memory && strings.HasPrefix(f.Source, "memory")
-			if f.Source == "" || wrong {
+			if f.Mark != part.Memory {
+				memory = !strings.HasPrefix(f.Source, "memory")
+			}
+			if f.Source == "" || !memory {
 				t.Errorf("%s of %s: mark %d does not go with the source %q", symbol, r.Name, f.Mark, f.Source)
 			}
 			if _, _, ok := r.Limit(symbol); ok && !f.HasMin && !f.HasMax {
@@ -69,8 +71,10 @@ func TestAllIsSortedAndHoldsEveryFamily(t *testing.T) {
 	for _, r := range all {
 		count[r.Kind]++
 	}
-	for kind, least := range map[part.Kind]int{part.UJT: 50, part.PUT: 11, part.SCR: 200, part.Triac: 150, part.Diac: 30,
-		part.CurrentSource: 34, part.Optotriac: 20} {
+	for kind, least := range map[part.Kind]int{
+		part.UJT: 50, part.PUT: 11, part.SCR: 200, part.Triac: 150, part.Diac: 30, part.CurrentSource: 34,
+		part.Optotriac: 20,
+	} {
 		if count[kind] < least {
 			t.Errorf("%d parts are a %s, want %d", count[kind], kind, least)
 		}
@@ -83,7 +87,8 @@ func TestFamilies(t *testing.T) {
 		"C106": {"C106Q": 15, "C106Y": 30, "C106F": 50, "C106A": 100, "C106B": 200, "C106C": 300, "C106D": 400,
 			"C106E": 500, "C106M": 600},
 		"TIC106": {"TIC106F": 50, "TIC106A": 100, "TIC106D": 400, "TIC106M": 600, "TIC106S": 700, "TIC106N": 800},
-		"MCR100": {"MCR100-3": 100, "MCR100-4": 200, "MCR100-5": 300, "MCR100-6": 400, "MCR100-7": 500, "MCR100-8": 600},
+		"MCR100": {"MCR100-3": 100, "MCR100-4": 200, "MCR100-5": 300, "MCR100-6": 400, "MCR100-7": 500,
+			"MCR100-8": 600},
 		"BT149":  {"BT149B": 200, "BT149D": 400, "BT149E": 500, "BT149G": 600},
 		"BT136":  {"BT136-500": 500, "BT136-600": 600, "BT136-800": 800},
 		"MAC97A": {"MAC97A4": 200, "MAC97A6": 400, "MAC97A8": 600},
@@ -115,10 +120,12 @@ func TestFamilies(t *testing.T) {
 
 // A card whose own name is a class makes no family.
 func TestNumberedFamilies(t *testing.T) {
-	for name, volts := range map[string]float64{"2N5060": 30, "2N5061": 60, "2N5062": 100, "2N5064": 200, "2N6394": 50, "2N6395": 100,
+	for name, volts := range map[string]float64{
+		"2N5060": 30, "2N5061": 60, "2N5062": 100, "2N5064": 200, "2N6394": 50, "2N6395": 100,
 		"2N6397": 400, "2N6399": 800, "2N1842": 25, "2N1850": 500, "2N681": 25, "2N692": 800,
-		"BT151-500R": 500, "BT151-500L": 500,
-		"BT151-650L": 650, "2N6073A": 400, "2N6344": 600, "2N6349A": 800, "TN1215-600": 600, "BTA12-700CW": 700, "T1235-600": 600} {
+		"BT151-500R": 500, "BT151-500L": 500, "BT151-650L": 650, "2N6073A": 400, "2N6344": 600,
+		"2N6349A": 800, "TN1215-600": 600, "BTA12-700CW": 700, "T1235-600": 600,
+	} {
 		r, ok := part.Lookup(name)
 		if !ok || r.Name != name && !slices.Contains(r.Aliases, name) {
 			t.Errorf("Lookup(%q) = %v", name, r)

@@ -28,10 +28,12 @@ func TestDecoratedNames(t *testing.T) {
 
 // Another part must not be found: a letter or a digit more is another part.
 func TestOtherPartsAreNotFound(t *testing.T) {
-	for _, name := range []string{"2N2648", "BC547", "2N264", "C10", "UJT", "", "X", "Q", "2N26460", "C106X", "BT136-600X", "BT151-500X",
-		"1N4148", "2N3904", "DIAC", "TRIAC", "BTA12", "2N4870/71", "2N6071C", "MCR100-9", "C106_D",
-		"GATE", "SOURCE", "UJT(", "ETA_MIN",
-		"C106A=100", "memory", ".model", strings.Repeat("X", 1000) + "2N2646", strings.Repeat("2N2646", 1000), "2N2646\x00"} {
+	for _, name := range []string{
+		"2N2648", "BC547", "2N264", "C10", "UJT", "", "X", "Q", "2N26460", "C106X", "BT136-600X",
+		"BT151-500X", "1N4148", "2N3904", "DIAC", "TRIAC", "BTA12", "2N4870/71", "2N6071C",
+		"MCR100-9", "C106_D", "GATE", "SOURCE", "UJT(", "ETA_MIN", "C106A=100", "memory", ".model",
+		strings.Repeat("X", 1000) + "2N2646", strings.Repeat("2N2646", 1000), "2N2646\x00",
+	} {
 		if r, ok := part.Lookup(name); ok {
 			t.Errorf("Lookup(%q) = %s", name, r.Name)
 		}
@@ -55,8 +57,10 @@ func TestLookupsAgreeWhenTheyRunTogether(t *testing.T) {
 }
 
 func TestNetlistOrder(t *testing.T) {
-	for kind, want := range map[part.Kind]string{part.UJT: "emitter base1 base2", part.PUT: "anode gate cathode",
-		part.SCR: "anode gate cathode", part.Triac: "mt2 gate mt1", part.Optotriac: "anode cathode mt2 mt1", "": ""} {
+	for kind, want := range map[part.Kind]string{
+		part.UJT: "emitter base1 base2", part.PUT: "anode gate cathode", part.SCR: "anode gate cathode",
+		part.Triac: "mt2 gate mt1", part.Optotriac: "anode cathode mt2 mt1", "": "",
+	} {
 		if got := strings.Join(part.NetlistOrder(kind), " "); got != want {
 			t.Errorf("order of a %s: %q, want %q", kind, got, want)
 		}

@@ -10,8 +10,8 @@ import (
 // isText reports whether a key holds words, not a number.
 func isText(key string) bool {
 	switch key {
-	case "source", "mark", "memory", "scan", "read", "alias", "classes", "quadrants", "crossing", "package", "leads",
-		"mfg", "note":
+	case "source", "mark", "memory", "scan", "read", "alias", "classes", "quadrants", "crossing", "package",
+		"leads", "mfg", "note":
 		return true
 	}
 	return false
