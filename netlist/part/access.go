@@ -20,7 +20,7 @@ func (r *Ratings) Spread(symbol string) (s quantity.Spread, mark Mark, ok bool) 
 	case !f.HasMax:
 		s.High = f.Min
 	}
-	s.Nominal = (s.Low + s.High) / 2
+	s.Nominal = s.Low/2 + s.High/2
 	if f.HasTyp {
 		s.Nominal, s.Low, s.High = f.Typ, min(s.Low, f.Typ), max(s.High, f.Typ)
 	}
