@@ -56,7 +56,15 @@ func Parse(text string) (Number, error) {
 	if n, ok := trade(text[:digits], rest); ok {
 		return n, nil
 	}
-	return suffixed(text, value, rest)
+	n, err := suffixed(text, value, rest)
+	if err == nil && n.Suffix != "" && n.Suffix != "mil" && !strings.ContainsAny(text[:digits], "eE") {
+		// Read once more with the scale as an exponent: 5u is 5e-6 to the last bit.
+		exponent := strconv.Itoa(int(math.Round(math.Log10(n.Value / value))))
+		if exact, err := strconv.ParseFloat(text[:digits]+"e"+exponent, 64); err == nil && value != 0 {
+			n.Value = exact
+		}
+	}
+	return n, err
 }
 
 // suffixed reads scale and unit behind the digits.

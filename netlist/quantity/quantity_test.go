@@ -123,3 +123,11 @@ func FuzzNumber(f *testing.F) {
 		}
 	})
 }
+
+func TestASuffixIsExact(t *testing.T) {
+	for text, want := range map[string]float64{"5u": 5e-6, "0.1u": 0.1e-6, "4.7n": 4.7e-9, "2.2meg": 2.2e6, "0.22u": 0.22e-6, "0u": 0, "-3.3k": -3300} {
+		if n, err := quantity.Parse(text); err != nil || n.Value != want {
+			t.Errorf("Parse(%q) = %v, %v; want %v", text, n.Value, err, want)
+		}
+	}
+}
