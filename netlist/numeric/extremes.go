@@ -35,10 +35,12 @@ type Function func(x, y []float64)
 type Hints struct {
 	// Bent lists outputs that may have their extremes between the ends of any variable.
 	Bent []int
-	// Guides lists outputs on which others depend only beyond a threshold: where a
-	// variable does not seem to move an output, the ends that suit a guide are
-	// tried for it as well.
+	// Guides lists outputs on which others (Guided) depend only beyond a threshold:
+	// where a variable does not seem to move one of those, the ends that suit a
+	// guide are tried for it as well.
 	Guides []int
+	// Guided lists the outputs that depend on a guide in that way.
+	Guided []int
 	// LowOnly and HighOnly list outputs of which one extreme is of no interest; it
 	// is then no more than the best that was met by the way.
 	LowOnly, HighOnly []int
@@ -58,6 +60,9 @@ type Hints struct {
 func Extremes(box []Variable, n int, f Function, hints Hints) []Extreme {
 	s := newSearch(box, n, f)
 	s.guides = hints.Guides
+	for _, j := range hints.Guided {
+		s.guided[j] = true
+	}
 	for _, j := range hints.Bent {
 		s.bent[j] = true
 	}
@@ -93,6 +98,7 @@ type search struct {
 	moves   []bool // output j, variable i at j*len(box)+i
 	bent    []bool
 	guides  []int
+	guided  []bool
 	tried   map[uint64]bool // hashes of corners that were tried
 	best    []best          // 2n: low of output j at 2j, high at 2j+1
 }
@@ -106,7 +112,7 @@ type best struct {
 }
 
 func newSearch(box []Variable, n int, f Function) *search {
-	s := &search{box: box, n: n, f: f, tried: map[uint64]bool{}, bent: make([]bool, n)}
+	s := &search{box: box, n: n, f: f, tried: make(map[uint64]bool, 1024), bent: make([]bool, n), guided: make([]bool, n)}
 	s.x, s.y = make([]float64, len(box)), make([]float64, n)
 	s.best = make([]best, 2*n)
 	s.moves = make([]bool, n*len(box))
@@ -211,8 +217,10 @@ func (s *search) corners(fixed int, value float64) {
 		for _, direction := range [2]int8{1, -1} {
 			s.corner(sign, j, direction, fixed, -1, 0)
 			for _, g := range s.guides {
-				s.corner(sign, j, direction, fixed, g, 1)
-				s.corner(sign, j, direction, fixed, g, -1)
+				if s.guided[j] {
+					s.corner(sign, j, direction, fixed, g, 1)
+					s.corner(sign, j, direction, fixed, g, -1)
+				}
 			}
 		}
 	}

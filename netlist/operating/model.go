@@ -99,9 +99,16 @@ func (m *model) extremes() []numeric.Extreme {
 		if o.name == "interbase_voltage" { // the sheet's currents change with it below the test voltage only
 			hints.Guides = append(hints.Guides, j)
 		}
+		switch o.name {
+		case "peak_current_required", "valley_current_available", "timing_resistance_min", "timing_resistance_max":
+			hints.Guided = append(hints.Guided, j)
+		}
 	}
 	for k, c := range m.contests {
 		j := len(m.outputs) + k
+		if c.limitName == "peak_current_required" || c.limitName == "valley_current_available" {
+			hints.Guided = append(hints.Guided, j)
+		}
 		if c.bent {
 			hints.Bent = append(hints.Bent, j)
 		}
