@@ -15,6 +15,9 @@ type Variable struct {
 	// Pivot says that the direction in which other variables push depends on this
 	// one, as what a temperature coefficient does depends on the temperature.
 	Pivot bool
+	// Bends says that a bent output may have its extreme between the ends of this
+	// variable.
+	Bends bool
 }
 
 // Extreme is the least and the greatest value of one output over the box, with
@@ -33,7 +36,8 @@ type Function func(x, y []float64)
 
 // Hints tell Extremes what it could not see from samples.
 type Hints struct {
-	// Bent lists outputs that may have their extremes between the ends of any variable.
+	// Bent lists outputs that may have their extremes between the ends of variables
+	// that bend.
 	Bent []int
 	// Guides lists outputs on which others (Guided) depend only beyond a threshold:
 	// where a variable does not seem to move one of those, the ends that suit a
@@ -361,7 +365,7 @@ func (s *search) explore(point []float64, asked int) {
 				s.tryOnce()
 			}
 		}
-		if v.Curved || s.bent[asked/2] {
+		if v.Curved || v.Bends && s.bent[asked/2] {
 			for _, share := range interior {
 				s.x[i] = v.Low + share*(v.High-v.Low)
 				s.tryOnce()

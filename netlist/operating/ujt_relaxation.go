@@ -152,6 +152,9 @@ func (m *ujtModel) device() error {
 		m.v.iv = -1
 	}
 	m.onResistance()
+	for i := range m.box { // the transistor's own variables
+		m.box[i].Bends = true
+	}
 	return nil
 }
 
