@@ -92,7 +92,7 @@ func (c Case) message(k operating.Comparison) string {
 func (f Finding) For(a *operating.Account, k operating.Comparison, c Case) Finding {
 	f = f.Placed(a, c.Place...)
 	f.Figure = &Figure{Name: k.Name, Value: k.Value, Limit: k.Limit, Bound: string(k.Bound), Unit: k.Unit}
-	f.Corner, f.Working = k.Corner, k.Working
+	f.Corner, f.Working, f.Assumed = k.Corner, k.Working, k.Assumed
 	for _, role := range c.Mend {
 		for _, e := range parts(a.Stage, role) {
 			f.Mend = append(f.Mend, Mend{Parts: []*circuit.Element{e}})
@@ -123,13 +123,15 @@ func Name(text string) string { return source.Visible(text) }
 
 // Validate reports what is wrong with a rule's declaration; nil where it is sound.
 func (r *Rule) Validate() error {
-	if r.ID == "" || strings.Trim(r.ID, "abcdefghijklmnopqrstuvwxyz0123456789-") != "" {
-		return fmt.Errorf("rule %q: an ID is lower-case words with hyphens", r.ID)
+	for word := range strings.SplitSeq(r.ID, "-") {
+		if word == "" || strings.Trim(word, "abcdefghijklmnopqrstuvwxyz0123456789") != "" {
+			return fmt.Errorf("rule %q: an ID is lower-case words with hyphens between", r.ID)
+		}
 	}
-	for name, text := range map[string]string{"group": r.Group, "title": r.Title, "why": r.Why,
-		"formula": r.Formula, "source": r.Source, "failing netlist": r.Failing, "mended netlist": r.Mended} {
-		if strings.TrimSpace(text) == "" {
-			return fmt.Errorf("rule %s has no %s", r.ID, name)
+	for _, part := range [...]struct{ name, text string }{{"group", r.Group}, {"title", r.Title}, {"why", r.Why},
+		{"formula", r.Formula}, {"source", r.Source}, {"failing netlist", r.Failing}, {"mended netlist", r.Mended}} {
+		if strings.TrimSpace(part.text) == "" {
+			return fmt.Errorf("rule %s has no %s", r.ID, part.name)
 		}
 	}
 	if r.Check == nil {

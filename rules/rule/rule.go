@@ -1,6 +1,16 @@
 // Package rule holds what a rule is: a value with its documentation inside
-// that looks at one board through a Pass and reports findings. It prints
-// nothing and computes nothing but margins.
+// that looks at one board through a Pass and reports findings. What goes in is
+// a circuit and the accounts of its stages; what comes out is findings. The
+// package reads no text, prints nothing and computes nothing but margins.
+//
+// A rule on a stage is a few lines:
+//
+//	Check: func(p *rule.Pass) {
+//		p.Each(stage.UJTOscillator, func(a *operating.Account) {
+//			p.Judge(a, rule.Case{Comparison: "interbase_voltage", Fails: "the transistor may break down",
+//				Value: "the interbase voltage", Limit: "it is rated for", Mend: []stage.Role{stage.BaseTwo}})
+//		})
+//	}
 package rule
 
 import (
@@ -48,6 +58,8 @@ type Finding struct {
 	Figure  *Figure
 	Corner  operating.Corner
 	Working string
+	// Assumed lists what the figure rests on that nobody declared, in words.
+	Assumed []string
 	// Mend lists what could be changed to clear the finding, in order of
 	// preference; the advice engine fills Advice from it.
 	Mend     []Mend
@@ -77,7 +89,10 @@ type Advice struct {
 type Pass struct {
 	Circuit  *circuit.Circuit
 	Accounts []*operating.Account
-	report   func(Finding)
+	// File is the board's own file, as against what it includes; nil where a
+	// board is worked out without one.
+	File   *source.File
+	report func(Finding)
 }
 
 // Report adds a finding.
