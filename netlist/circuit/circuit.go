@@ -44,21 +44,24 @@ const (
 	Switch        Kind = "s"
 	Controlled    Kind = "controlled" // E F G H B: known, but not computed
 	Line          Kind = "t"          // transmission line
-	UJT                = Kind(part.UJT)
-	PUT                = Kind(part.PUT)
-	SCR                = Kind(part.SCR)
-	Triac              = Kind(part.Triac)
-	Diac               = Kind(part.Diac)
-	SourceIC           = Kind(part.CurrentSource)
-	Optotriac          = Kind(part.Optotriac)
-	Diode              = Kind(part.Diode)
-	NPN                = Kind(part.NPN)
-	PNP                = Kind(part.PNP)
-	NJF                = Kind(part.NJF)
-	PJF                = Kind(part.PJF)
-	NMOS               = Kind(part.NMOS)
-	PMOS               = Kind(part.PMOS)
-	Unknown       Kind = "unknown" // a part whose kind nobody gave
+	// Jig is a capacitor of 1T: a test rig's way to write an open circuit for
+	// dc and a short one for ac. It is no part of the board.
+	Jig       Kind = "jig"
+	UJT            = Kind(part.UJT)
+	PUT            = Kind(part.PUT)
+	SCR            = Kind(part.SCR)
+	Triac          = Kind(part.Triac)
+	Diac           = Kind(part.Diac)
+	SourceIC       = Kind(part.CurrentSource)
+	Optotriac      = Kind(part.Optotriac)
+	Diode          = Kind(part.Diode)
+	NPN            = Kind(part.NPN)
+	PNP            = Kind(part.PNP)
+	NJF            = Kind(part.NJF)
+	PJF            = Kind(part.PJF)
+	NMOS           = Kind(part.NMOS)
+	PMOS           = Kind(part.PMOS)
+	Unknown   Kind = "unknown" // a part whose kind nobody gave
 )
 
 // Authority says where a terminal order was taken from, from best to worst.
@@ -116,7 +119,11 @@ type Element struct {
 	Basis    Basis
 	Wave     Waveform // sources only
 
-	Intent Intent
+	// Intent is never nil. Elements of which the same is declared share it.
+	Intent *Intent
+	// Coupled holds the places in Circuit.Elements of the inductors that a
+	// coupling card joins; Value is then the coupling factor.
+	Coupled []int
 	// PartName is the model or part as the card spells it.
 	PartName string
 	// Ratings is what is known of the part; nil where nothing is.
@@ -139,8 +146,11 @@ type Intent struct {
 	Kind                        string           // capacitor dielectric
 	Load                        string           // resistive inductive lamp motor
 	LatchOK                     bool
-	Frequency, Period           *quantity.Spread       // target, Low..High
-	At                          map[string]source.Span // place of each key
+	Frequency, Period           *quantity.Spread // target, Low..High
+	// At is the place of each key declared of this very element; what an "all"
+	// line says is not in it.
+	At     map[string]source.Span
+	shared bool // by several elements: copy before writing
 }
 
 // Board is what *> board declares.
@@ -177,6 +187,15 @@ type Circuit struct {
 	GroundNamed  bool            // some card uses node 0 or gnd
 	UnusedModels []*part.Ratings // defined in the netlist, never used
 	Resets       []Reset         // intent keys given twice
+	// UnusedSubckts are the subcircuits of the board's own file that no card
+	// uses: nothing inside them was looked at.
+	UnusedSubckts []Named
+}
+
+// Named is a name and where it stands.
+type Named struct {
+	Name string
+	At   source.Span
 }
 
 // Reset is an intent key that was given twice; the last one counts.

@@ -1,16 +1,18 @@
 package circuit
 
 import (
+	"cmp"
 	"slices"
 	"strings"
 
 	"standoff/netlist/part"
+	"standoff/netlist/quantity"
 	"standoff/netlist/source"
 	"standoff/netlist/syntax"
 )
 
-// triggerKinds are the parts that stay one element, whatever their subcircuit
-// holds inside.
+// isTrigger reports the kinds of parts that stay one element, whatever a
+// subcircuit of their name holds inside.
 func isTrigger(k part.Kind) bool {
 	switch k {
 	case part.UJT, part.PUT, part.SCR, part.Triac, part.Diac, part.CurrentSource, part.Optotriac:
@@ -22,116 +24,185 @@ func isTrigger(k part.Kind) bool {
 // device makes everything that is told by a part name: semiconductors, trigger
 // devices on any letter, subcircuits.
 func (p *placing) device(letter byte) {
-	fields := p.partFields()
+	fields := p.words()
 	if len(fields) < 2 {
-		p.fail(p.card.e.Name, "%s needs its nodes and a part name", source.Visible(p.card.e.Name.Text))
+		p.fail(p.card.e.Name, "%s needs its nodes and a part name", p.shown())
 		return
 	}
-	at := p.partIndex(letter, fields)
-	name := fields[at]
-	ratings := p.ratings(name.Text)
+	at := p.partPlace(letter, fields)
+	nodes, name := fields[:at], fields[at]
+	taken := cmp.Or(p.askedPart(), name.Text)
+	ratings := p.ratings(taken)
 	sub := p.in.scope.findSubckt(name.Text)
 	switch {
 	case ratings != nil && isTrigger(ratings.Kind):
-		p.trigger(letter, fields[:at], name, ratings, sub)
+		p.trigger(p.start(letter, Kind(ratings.Kind), nodes, name), ratings, sub)
 	case letter == 'X' && sub != nil:
-		if guess := p.b.guess(sub); guess != nil && len(guess.roles) == at {
-			p.guessed(fields[:at], name, sub, guess)
+		if g := p.b.guess(sub); g != nil && len(g.roles) == at {
+			e := p.start(letter, g.kind, nodes, name)
+			e.Roles, e.Order = g.roles, g.by
+			p.add(e)
 			return
 		}
-		p.expand(fields[:at], name, sub)
-	case letter == 'X':
-		p.unknown(letter, fields[:at], name, ratings)
+		p.expand(nodes, name, sub)
+	case letter == 'T' && len(p.card.e.Pairs) > 0:
+		p.line(fields)
+	case slices.Contains([]byte("DQJM"), letter):
+		p.semiconductor(letter, fields, at)
 	default:
-		p.semiconductor(letter, fields, at, ratings)
+		p.other(letter, nodes, name, ratings)
 	}
 }
 
-// partFields drops the slash before a cell name and the word PARAMS:.
-func (p *placing) partFields() []syntax.Value {
-	return slices.DeleteFunc(slices.Clone(p.card.e.Fields), func(v syntax.Value) bool {
-		return v.Text == "/" || strings.EqualFold(v.Text, "params:")
-	})
+// words returns the fields without the slash before a cell name, the word
+// PARAMS: and the flag OFF.
+func (p *placing) words() []syntax.Value {
+	skip := func(v syntax.Value) bool {
+		return v.Text == "/" || v.Expr == nil && (strings.EqualFold(v.Text, "params:") || strings.EqualFold(v.Text, "off"))
+	}
+	fields := p.card.e.Fields
+	nodes := min(2, len(fields)) // where such a word is a node
+	if !slices.ContainsFunc(fields[nodes:], skip) {
+		return fields
+	}
+	return append(slices.Clone(fields[:nodes]), slices.DeleteFunc(slices.Clone(fields[nodes:]), skip)...)
 }
 
-// partIndex finds the part name: the last word, or for a transistor or diode
-// with an area behind it, the last word that is no number.
-func (p *placing) partIndex(letter byte, fields []syntax.Value) int {
-	least := map[byte]int{'D': 2, 'Q': 3, 'J': 3, 'M': 3}[letter]
-	for i := min(least, len(fields)-1); i < len(fields); i++ {
-		if least > 0 && i >= least && (p.isModel(fields[i].Text) || p.ratings(fields[i].Text) != nil) {
-			return i
-		}
+// leastNodes says how many nodes stand before the part name at least.
+func leastNodes(letter byte) int {
+	switch letter {
+	case 'D':
+		return 2
+	case 'Q', 'J', 'M':
+		return 3
 	}
+	return 1
+}
+
+// partPlace finds the part name: the last word; behind it a diode or transistor
+// may have an area.
+func (p *placing) partPlace(letter byte, fields []syntax.Value) int {
 	last := len(fields) - 1
-	for i := last; i > 0 && i >= least && least > 0; i-- {
-		if _, err := p.in.env.value(fields[i]); err != nil && !strings.EqualFold(fields[i].Text, "off") {
+	least := leastNodes(letter)
+	if least == 1 || last <= least {
+		return last
+	}
+	for i := last; i >= least; i-- {
+		if p.isPart(fields[i].Text) {
 			return i
 		}
+	}
+	for last > least && isArea(fields[last]) {
+		last--
 	}
 	return last
+}
+
+func (p *placing) isPart(name string) bool { return p.model(name) != nil || p.b.lookup(name) != nil }
+
+// isArea tells a plain number from the name of a part: 2N3904 is none, although
+// it starts like one.
+func isArea(v syntax.Value) bool {
+	if v.Expr != nil {
+		return true
+	}
+	n, err := quantity.Parse(v.Text)
+	return err == nil && !n.Trade
+}
+
+// askedPart returns the name that a part= line gives for this element, in its
+// own subcircuit or by its path from further out.
+func (p *placing) askedPart() string {
+	if !p.b.declaresParts {
+		return ""
+	}
+	asked, path := "", strings.ToLower(p.card.e.Name.Text)
+	for in := p.in; in != nil; in = in.outer {
+		if pair, ok := in.scope.asksPart[path]; ok {
+			asked = pair.Value.Text
+		}
+		path = strings.ToLower(in.name) + "." + path
+	}
+	return asked
 }
 
 // ratings looks a part name up: the netlist's own model, a --parts file, the
 // library.
 func (p *placing) ratings(name string) *part.Ratings {
-	if def := p.in.scope.findModel(name); def != nil {
-		p.b.used[def] = true
-		return p.b.model(def)
+	if def := p.model(name); def != nil {
+		def.used = true
+		return p.b.model(def, p.in)
 	}
-	if r, ok := p.b.parts[strings.ToLower(name)]; ok {
-		return r
-	}
-	if r, ok := part.Lookup(name); ok {
-		return r
-	}
-	return nil
+	return p.b.lookup(name)
 }
 
-// model turns a .model card into ratings, once.
-func (b *builder) model(def *modelDef) *part.Ratings {
-	if def.ratings == nil {
-		env := b.environment(def.scope, nil, nil)
-		resolve := func(v syntax.Value) (float64, bool) {
-			x, err := env.value(v)
-			return x, err == nil
-		}
-		r, problems := part.FromModel(def.deck, def.m, resolve, "netlist")
-		def.ratings = r
-		b.problems = append(b.problems, problems...)
-	}
-	return def.ratings
+// start begins an element that is told by its part name.
+func (p *placing) start(letter byte, kind Kind, nodes []syntax.Value, name syntax.Value) *Element {
+	e := p.new(letter, kind, nodes)
+	e.PartName, e.ValueAt = name.Text, p.span(name.Word)
+	return e
 }
 
 // trigger makes a trigger device. Its terminal order comes from the header of a
 // subcircuit of that name, a comment there, its insides, or the library.
-func (p *placing) trigger(letter byte, nodes []syntax.Value, name syntax.Value, r *part.Ratings, sub *scope) {
-	e := p.new(letter, Kind(r.Kind), nodes)
-	e.PartName, e.ValueAt, e.Ratings, e.Order = name.Text, p.span(name.Word), r, ByLibrary
-	e.Roles = part.NetlistOrder(r.Kind)
+func (p *placing) trigger(e *Element, r *part.Ratings, sub *scope) {
+	e.Ratings, e.Order = r, ByLibrary
+	e.Roles = libraryOrder(r.Kind, len(e.Nodes))
+	if asked := p.askedPart(); asked != "" {
+		e.PartName = asked
+	}
 	if sub != nil {
-		if roles, by := p.b.headerRoles(sub, r.Kind); roles != nil {
+		if roles, by := p.b.orderOf(sub, r.Kind); roles != nil {
 			e.Roles, e.Order = roles, by
 		}
+		p.hiddenCathode(e, sub)
 	}
-	if len(nodes) != len(e.Roles) && !(r.Kind == part.CurrentSource && len(nodes) == 2) {
-		p.fail(name.Word, "%s is a %s with %d terminals, but %s has %d nodes", source.Visible(name.Text), r.Kind,
-			len(e.Roles), source.Visible(e.Designator), len(nodes))
+	if len(e.Nodes) != len(e.Roles) {
+		p.b.inside(p.in, e.ValueAt, "%s is %s with %d terminals, but %s has %d nodes", source.Visible(e.PartName),
+			describe(e.Kind), len(part.NetlistOrder(r.Kind)), p.shown(), len(e.Nodes))
+		e.Roles = nil
 	}
 	p.add(e)
 }
 
-// guessed makes a thyristor of a subcircuit whose insides show one.
-func (p *placing) guessed(nodes []syntax.Value, name syntax.Value, sub *scope, g *deviceGuess) {
-	e := p.new('X', g.kind, nodes)
-	e.PartName, e.ValueAt, e.Order, e.Roles = name.Text, p.span(name.Word), g.by, g.roles
-	p.add(e)
+// libraryOrder returns the order of the part library. A current source of two
+// terminals has none for a resistor.
+func libraryOrder(kind part.Kind, count int) []string {
+	if kind == part.CurrentSource && count == 2 {
+		return []string{"v+", "v-"}
+	}
+	return part.NetlistOrder(kind)
 }
 
-// unknown keeps a part of which nothing is known.
-func (p *placing) unknown(letter byte, nodes []syntax.Value, name syntax.Value, r *part.Ratings) {
-	e := p.new(letter, Unknown, nodes)
-	e.PartName, e.ValueAt = name.Text, p.span(name.Word)
+// hiddenCathode adds the cathode of a thyristor whose subcircuit ties it to
+// ground inside and has no pin for it.
+func (p *placing) hiddenCathode(e *Element, sub *scope) {
+	if e.Kind != SCR || len(e.Nodes) != 2 || len(sub.pins) != 2 {
+		return
+	}
+	roles := rolesOf(roleNames(part.SCR), sub.pins)
+	if len(roles) != 2 || roles[0] == roles[1] || slices.Contains(roles, "cathode") || !sub.namesGround() {
+		return
+	}
+	e.Nodes = append(e.Nodes, Ground)
+	e.Roles, e.Order = append(roles, "cathode"), ByHeader
+}
+
+// namesGround reports whether a card of the subcircuit is wired to ground.
+func (s *scope) namesGround() bool {
+	return slices.ContainsFunc(s.cards, func(c cardRef) bool {
+		return slices.ContainsFunc(c.e.Fields, func(f syntax.Value) bool { return isGround(strings.ToLower(f.Text)) })
+	})
+}
+
+// other makes a part on a letter that says nothing of what it is. Where a model
+// says it, it is that; else it is kept as unknown.
+func (p *placing) other(letter byte, nodes []syntax.Value, name syntax.Value, r *part.Ratings) {
+	if letter != 'X' && letter != 'U' && !strings.ContainsAny(p.card.e.Name.Text, "0123456789") {
+		p.fail(p.card.e.Name, "%s is no designator that is known here; is this a heading?", p.shown())
+		return
+	}
+	e := p.start(letter, Unknown, nodes, name)
 	if r != nil && r.Kind != "" {
 		e.Kind, e.Ratings = Kind(r.Kind), r
 		if order := part.NetlistOrder(r.Kind); len(order) == len(nodes) {
@@ -139,97 +210,4 @@ func (p *placing) unknown(letter byte, nodes []syntax.Value, name syntax.Value, 
 		}
 	}
 	p.add(e)
-}
-
-// letterKinds are the semiconductors of the plain letters.
-var letterKinds = map[byte]Kind{'D': Diode, 'Q': NPN, 'J': NJF, 'M': NMOS, 'T': Line}
-
-// semiconductor makes D, Q, J, M and T elements and whatever else stands on a
-// letter of its own.
-func (p *placing) semiconductor(letter byte, fields []syntax.Value, at int, r *part.Ratings) {
-	kind, known := letterKinds[letter]
-	if letter == 'T' && at < 4 && len(fields) >= 4 {
-		at = 4
-	}
-	nodes := fields[:min(at, len(fields))]
-	need := map[byte]int{'D': 2, 'Q': 3, 'J': 3, 'M': 3, 'T': 4}[letter]
-	if known && len(nodes) < need {
-		p.fail(p.card.e.Name, "%s needs %d nodes and a model", source.Visible(p.card.e.Name.Text), need)
-		return
-	}
-	if letter == 'T' && len(p.card.e.Pairs) == 0 {
-		p.fail(p.card.e.Name, "%s starts like a transmission line but has no z0=; is this a card?", source.Visible(p.card.e.Name.Text))
-		return
-	}
-	if !known {
-		kind = Unknown
-	}
-	e := p.new(letter, kind, nodes)
-	if at < len(fields) {
-		e.PartName, e.ValueAt, e.Ratings = fields[at].Text, p.span(fields[at].Word), r
-	}
-	if r != nil && r.Kind != "" {
-		e.Kind = Kind(r.Kind)
-	} else if known && letter != 'D' && letter != 'T' {
-		e.Kind = Unknown // polarity not known
-	}
-	e.Roles = letterRoles(letter, len(nodes))
-	p.add(e)
-}
-
-func letterRoles(letter byte, count int) []string {
-	var roles []string
-	switch letter {
-	case 'D':
-		roles = []string{"anode", "cathode"}
-	case 'Q':
-		roles = []string{"collector", "base", "emitter", "substrate"}
-	case 'J':
-		roles = []string{"drain", "gate", "source"}
-	case 'M':
-		roles = []string{"drain", "gate", "source", "bulk"}
-	}
-	return roles[:min(count, len(roles))]
-}
-
-// expand flattens a subcircuit.
-func (p *placing) expand(nodes []syntax.Value, name syntax.Value, sub *scope) {
-	if len(nodes) != len(sub.pins) {
-		p.fail(name.Word, "%s has %d nodes, but the subcircuit %s has %d pins", source.Visible(p.in.prefix+p.card.e.Name.Text),
-			len(nodes), source.Visible(sub.name), len(sub.pins))
-		return
-	}
-	depth := p.in.depth + 1
-	for at := p.in; at != nil; at = at.outer {
-		if at.scope == sub {
-			p.b.once("recursion "+sub.name, p.whole(), "the subcircuit %s contains itself", source.Visible(sub.name))
-			return
-		}
-	}
-	if depth > p.b.opts.Limits.depth() {
-		p.b.once("depth", p.whole(), "subcircuits nest deeper than %d", p.b.opts.Limits.depth())
-		return
-	}
-	in := &instance{outer: p.in, scope: sub, prefix: p.in.prefix + p.card.e.Name.Text + ".", depth: depth,
-		pins: make(map[string]NodeID, len(nodes))}
-	for i, n := range nodes {
-		if _, twice := in.pins[sub.pins[i]]; !twice {
-			in.pins[sub.pins[i]] = p.node(n.Word)
-		}
-	}
-	in.env = p.b.environment(sub, p.in.env, p.card.e.Pairs)
-	p.checkRepeat()
-	p.b.place(sub, in)
-	p.b.direct(in)
-}
-
-// checkRepeat notes an X line whose name was used before.
-func (p *placing) checkRepeat() {
-	key := strings.ToLower(p.card.e.Name.Text)
-	at := p.span(p.card.e.Name)
-	if known, ok := p.in.names[key]; ok {
-		p.b.circuit.Repeats = append(p.b.circuit.Repeats, Repeat{p.in.prefix + p.card.e.Name.Text, known.NameAt, at})
-		return
-	}
-	p.in.names[key] = &Element{NameAt: at}
 }

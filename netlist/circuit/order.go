@@ -5,7 +5,6 @@ import (
 	"strings"
 
 	"standoff/netlist/part"
-	"standoff/netlist/syntax"
 )
 
 // roleNames are the spellings of terminal roles, by kind of part; letters and
@@ -13,19 +12,39 @@ import (
 func roleNames(kind part.Kind) map[string]string {
 	switch kind {
 	case part.UJT:
-		return map[string]string{"e": "emitter", "em": "emitter", "emitter": "emitter", "b1": "base1", "base1": "base1",
-			"baseone": "base1", "b2": "base2", "base2": "base2", "basetwo": "base2"}
+		return map[string]string{"e": "emitter", "em": "emitter", "emit": "emitter", "emitter": "emitter",
+			"b1": "base1", "base1": "base1", "baseone": "base1", "b2": "base2", "base2": "base2", "basetwo": "base2"}
 	case part.SCR, part.PUT:
-		return map[string]string{"a": "anode", "an": "anode", "anode": "anode", "g": "gate", "gate": "gate", "gt": "gate",
-			"k": "cathode", "c": "cathode", "ca": "cathode", "cathode": "cathode", "kathode": "cathode"}
+		return map[string]string{"a": "anode", "an": "anode", "ano": "anode", "anode": "anode",
+			"g": "gate", "gt": "gate", "gate": "gate", "ga": "gate", "ag": "gate",
+			"k": "cathode", "c": "cathode", "ca": "cathode", "cat": "cathode", "kat": "cathode", "cath": "cathode",
+			"cathode": "cathode", "kathode": "cathode"}
 	case part.Triac:
-		return map[string]string{"mt2": "mt2", "t2": "mt2", "a2": "mt2", "a": "mt2", "mt1": "mt1", "t1": "mt1", "a1": "mt1",
-			"k": "mt1", "g": "gate", "gate": "gate", "gt": "gate"}
+		return map[string]string{"mt2": "mt2", "t2": "mt2", "a2": "mt2", "m2": "mt2", "a": "mt2", "anode": "mt2",
+			"anode2": "mt2", "mainterminal2": "mt2", "terminal2": "mt2",
+			"mt1": "mt1", "t1": "mt1", "a1": "mt1", "m1": "mt1", "k": "mt1", "cathode": "mt1", "anode1": "mt1",
+			"mainterminal1": "mt1", "terminal1": "mt1", "g": "gate", "gt": "gate", "gate": "gate"}
 	case part.CurrentSource:
-		return map[string]string{"v+": "v+", "r": "r", "v-": "v-", "vp": "v+", "vn": "v-"}
+		return map[string]string{"v+": "v+", "r": "r", "rset": "r", "adj": "r", "v-": "v-", "vp": "v+", "vn": "v-",
+			"vplus": "v+", "vminus": "v-", "plus": "v+", "minus": "v-"}
 	case part.Optotriac:
-		return map[string]string{"a": "anode", "anode": "anode", "k": "cathode", "cathode": "cathode", "mt2": "mt2",
-			"mt1": "mt1", "t2": "mt2", "t1": "mt1"}
+		return map[string]string{"a": "anode", "anode": "anode", "k": "cathode", "c": "cathode", "cathode": "cathode",
+			"mt2": "mt2", "t2": "mt2", "mt1": "mt1", "t1": "mt1"}
+	}
+	return otherRoleNames(kind)
+}
+
+// otherRoleNames are those of parts that have a letter of their own.
+func otherRoleNames(kind part.Kind) map[string]string {
+	switch kind {
+	case part.Diode:
+		return map[string]string{"a": "anode", "anode": "anode", "k": "cathode", "c": "cathode", "cathode": "cathode"}
+	case part.NPN, part.PNP:
+		return map[string]string{"c": "collector", "collector": "collector", "b": "base", "base": "base",
+			"e": "emitter", "emitter": "emitter", "s": "substrate", "substrate": "substrate"}
+	case part.NJF, part.PJF, part.NMOS, part.PMOS:
+		return map[string]string{"d": "drain", "drain": "drain", "g": "gate", "gate": "gate", "s": "source",
+			"source": "source", "b": "bulk", "bulk": "bulk"}
 	}
 	return nil
 }
@@ -36,38 +55,15 @@ func roleOf(names map[string]string, word string) (string, bool) {
 	if r, ok := names[word]; ok {
 		return r, true
 	}
-	word = strings.Map(func(r rune) rune {
-		if r >= 'a' && r <= 'z' || r >= '0' && r <= '9' {
-			return r
-		}
-		return -1
-	}, word)
-	r, ok := names[word]
+	r, ok := names[strings.Map(letterOrDigit, word)]
 	return r, ok
 }
 
-// headerRoles takes the terminal order of a part from its subcircuit: the names
-// in the header, a comment beside it, or the insides. nil where none tells.
-func (b *builder) headerRoles(sub *scope, kind part.Kind) ([]string, Authority) {
-	names := roleNames(kind)
-	want := part.NetlistOrder(kind)
-	if roles := rolesOf(names, sub.pins); complete(roles, want) {
-		return roles, ByHeader
+func letterOrDigit(r rune) rune {
+	if r >= 'a' && r <= 'z' || r >= '0' && r <= '9' {
+		return r
 	}
-	for _, c := range sub.header.Comments {
-		words := strings.FieldsFunc(c.Text, func(r rune) bool {
-			return !(r >= 'a' && r <= 'z' || r >= 'A' && r <= 'Z' || r >= '0' && r <= '9' || r == '+' || r == '-')
-		})
-		if roles := rolesOf(names, words); complete(roles, want) {
-			return roles, ByComment
-		}
-	}
-	if kind == part.SCR || kind == part.PUT {
-		if g := b.guess(sub); g != nil && complete(g.roles, want) {
-			return g.roles, ByInsides
-		}
-	}
-	return nil, ""
+	return -1
 }
 
 // rolesOf maps the words that name a role; others are passed over.
@@ -94,111 +90,93 @@ func complete(roles, want []string) bool {
 	return true
 }
 
-// deviceGuess is what the insides of a subcircuit show.
-type deviceGuess struct {
-	kind  Kind
-	roles []string
-	by    Authority
-}
-
-// guess looks for a crossed pair inside a three-pin subcircuit: the collector of
-// the npn feeds the base of the pnp and the other way round. The anode then is
-// the side of the pnp's emitter, the gate the base of the npn, the cathode its
-// emitter. nil where there is none.
-func (b *builder) guess(sub *scope) *deviceGuess {
-	if sub.selfKind == nil {
-		sub.selfKind = &deviceGuess{}
-		if g := b.crossedPair(sub); g != nil {
-			*sub.selfKind = *g
+// orderOf takes the terminal order of a part from its subcircuit: the names in
+// the header, a comment beside it, or the insides. nil where none tells.
+func (b *builder) orderOf(sub *scope, kind part.Kind) ([]string, Authority) {
+	names, want := roleNames(kind), part.NetlistOrder(kind)
+	if len(sub.pins) != len(want) {
+		return nil, ""
+	}
+	if roles := rolesOf(names, sub.pins); complete(roles, want) {
+		return roles, ByHeader
+	}
+	if roles := commentOrder(sub, names, want); roles != nil {
+		return roles, ByComment
+	}
+	if kind == part.SCR || kind == part.PUT {
+		if g := b.guess(sub); g != nil && complete(g.roles, want) {
+			return g.roles, ByInsides
 		}
 	}
-	if sub.selfKind.kind == "" {
+	return nil, ""
+}
+
+// commentOrder looks for an order in the comments beside a header: first in
+// those that announce one, then in single lines that hold nothing else, then in
+// a list that runs over several lines.
+func commentOrder(sub *scope, names map[string]string, want []string) []string {
+	var all []string
+	announced := false
+	for _, c := range sub.header.Comments {
+		text, ok := announcement(c.Text)
+		announced = announced || ok
+		all = append(all, text)
+		if ok {
+			if roles := listedOrder(sub, names, want, text); roles != nil {
+				return roles
+			}
+		}
+	}
+	for _, c := range sub.header.Comments {
+		if roles := listedOrder(sub, names, want, c.Text); roles != nil {
+			return roles
+		}
+	}
+	if !announced {
 		return nil
 	}
-	return sub.selfKind
+	return listedOrder(sub, names, want, strings.Join(all, " "))
 }
 
-// bipolar is a transistor inside a subcircuit.
-type bipolar struct{ collector, base, emitter string }
+// announcement returns what follows a word such as TERMINALS in a comment.
+func announcement(text string) (rest string, ok bool) {
+	lower := strings.ToLower(text)
+	for _, word := range []string{"terminals", "connections", "nodes", "pinout", "pins", "pin order", "order"} {
+		if i := strings.Index(lower, word); i >= 0 && len(lower) == len(text) {
+			return text[i+len(word):], true
+		}
+	}
+	return text, false
+}
 
-func (b *builder) crossedPair(sub *scope) *deviceGuess {
-	if len(sub.pins) != 3 {
+// listedOrder reads an order off a comment: the roles in the order of the pins
+// (A G K), or each with the pin that it is (1=A 3=G 2=K; anode 1, gate 3 ...).
+func listedOrder(sub *scope, names map[string]string, want []string, text string) []string {
+	text = strings.ToLower(text)
+	for _, pair := range [][2]string{{"main terminal ", "mt"}, {"base ", "base"}} {
+		text = strings.ReplaceAll(text, pair[0], pair[1])
+	}
+	var roles, pins []string
+	for _, w := range strings.FieldsFunc(text, betweenWords) {
+		if r, ok := roleOf(names, w); ok {
+			roles = append(roles, r)
+		} else if slices.Contains(sub.pins, w) {
+			pins = append(pins, w)
+		}
+	}
+	if !complete(roles, want) {
 		return nil
 	}
-	nets := map[string]string{}
-	root := func(n string) string {
-		for nets[n] != "" && nets[n] != n {
-			n = nets[n]
-		}
-		return n
+	if len(pins) != len(roles) || !complete(pins, sub.pins) {
+		return roles
 	}
-	var npn, pnp []bipolar
-	for _, c := range sub.cards {
-		f := c.e.Fields
-		switch c.e.Name.Text[0] | 0x20 {
-		case 'r':
-			if len(f) >= 3 && smallResistor(f[2]) {
-				nets[root(strings.ToLower(f[0].Text))] = root(strings.ToLower(f[1].Text))
-			}
-		case 'q':
-			if len(f) < 4 {
-				continue
-			}
-			q := bipolar{strings.ToLower(f[0].Text), strings.ToLower(f[1].Text), strings.ToLower(f[2].Text)}
-			switch b.typeOf(sub, f[3].Text) {
-			case part.NPN:
-				npn = append(npn, q)
-			case part.PNP:
-				pnp = append(pnp, q)
-			}
-		}
+	ordered := make([]string, len(roles))
+	for i, pin := range pins {
+		ordered[slices.Index(sub.pins, pin)] = roles[i]
 	}
-	for _, n := range npn {
-		for _, p := range pnp {
-			if root(n.collector) == root(p.base) && root(p.collector) == root(n.base) {
-				return pairRoles(sub, root, n, p)
-			}
-		}
-	}
-	return nil
+	return ordered
 }
 
-// smallResistor tells a lead resistance from a shunt.
-func smallResistor(v syntax.Value) bool {
-	r, ok := part.Plain(v)
-	return ok && r < 5
-}
-
-// typeOf returns the type of a model seen from inside a subcircuit.
-func (b *builder) typeOf(sub *scope, name string) part.Kind {
-	if def := sub.findModel(name); def != nil {
-		return part.Kind(strings.ToLower(def.m.Type.Text))
-	}
-	return ""
-}
-
-func pairRoles(sub *scope, root func(string) string, n, p bipolar) *deviceGuess {
-	roles := make([]string, len(sub.pins))
-	for i, pin := range sub.pins {
-		switch root(pin) {
-		case root(p.emitter):
-			roles[i] = "anode"
-		case root(n.base):
-			roles[i] = "gate"
-		case root(n.emitter):
-			roles[i] = "cathode"
-		case root(p.base):
-			roles[i] = "anodegate"
-		}
-	}
-	if complete(roles, []string{"anode", "gate", "cathode"}) {
-		return &deviceGuess{SCR, roles, ByInsides}
-	}
-	if i := slices.Index(roles, "anodegate"); i >= 0 {
-		roles[i] = "gate"
-		if complete(roles, []string{"anode", "gate", "cathode"}) {
-			return &deviceGuess{PUT, roles, ByInsides}
-		}
-	}
-	return nil
+func betweenWords(r rune) bool {
+	return !(r >= 'a' && r <= 'z' || r >= '0' && r <= '9' || r == '+' || r == '-')
 }

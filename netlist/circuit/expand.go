@@ -1,0 +1,128 @@
+package circuit
+
+import (
+	"strings"
+
+	"standoff/netlist/source"
+	"standoff/netlist/syntax"
+)
+
+// expand flattens a subcircuit.
+func (p *placing) expand(nodes []syntax.Value, name syntax.Value, sub *scope) {
+	b := p.b
+	if len(nodes) != len(sub.pins) {
+		p.fail(name.Word, "%s has %d nodes, but the subcircuit %s has %d pins", p.shown(), len(nodes),
+			source.Visible(sub.name), len(sub.pins))
+		return
+	}
+	if p.tooDeep(sub) {
+		return
+	}
+	if limit := b.opts.Limits.elements(); b.instances >= limit {
+		b.stop(p.card.span(), "subcircuits are used more than %d times; the rest is not read", limit)
+		return
+	}
+	b.instances++
+	in := &instance{outer: p.in, scope: sub, name: p.card.e.Name.Text, depth: p.in.depth + 1,
+		prefix: p.in.prefix + p.card.e.Name.Text + "."}
+	p.connect(in, nodes)
+	in.env = b.environment(in, p.in.env, p.card.e.Pairs)
+	b.place(in)
+}
+
+// tooDeep reports, and tells once, where subcircuits contain themselves or nest
+// too deep.
+func (p *placing) tooDeep(sub *scope) bool {
+	for at := p.in; at != nil; at = at.outer {
+		if at.scope == sub {
+			p.b.once("recursion "+sub.name, p.card.span(), "the subcircuit %s contains itself", source.Visible(sub.name))
+			return true
+		}
+	}
+	limit := p.b.opts.Limits.depth()
+	if p.in.depth >= limit {
+		p.b.once("depth", p.card.span(), "subcircuits nest deeper than %d", limit)
+		return true
+	}
+	return false
+}
+
+// connect ties the pins of an instance to the nodes outside.
+func (p *placing) connect(in *instance, nodes []syntax.Value) {
+	if in.scope.nodes == nil {
+		p.b.firstSlots(in.scope)
+	}
+	in.nodes = make([]NodeID, max(len(in.scope.slots), len(nodes)))
+	for i := range in.nodes {
+		in.nodes[i] = noNode
+	}
+	for i, n := range nodes {
+		outside := p.b.node(p.in, n.Word, p.card.deck)
+		if slot, ok := in.scope.nodes.find(in.scope.pins[i]); ok && in.nodes[slot] == noNode {
+			in.nodes[slot] = outside
+		}
+	}
+}
+
+// findRepeats notes the designators that stand twice in a scope. It looks once a
+// scope, at the cards that its first instance takes.
+func (b *builder) findRepeats(in *instance) {
+	s := in.scope
+	seen := make(index, len(s.cards))
+	cards := make([]*cardRef, 0, len(s.cards))
+	for i := range s.cards {
+		c := &s.cards[i]
+		if c.guard != nil && !b.holds(in, c.guard) {
+			continue
+		}
+		if first, twice := seen.find(c.e.Name.Text); twice {
+			known := cards[first]
+			b.circuit.Repeats = append(b.circuit.Repeats, Repeat{in.prefix + c.e.Name.Text,
+				known.deck.Span(known.e.Name), c.deck.Span(c.e.Name)})
+			continue
+		}
+		seen.add(c.e.Name.Text)
+		cards = append(cards, c)
+	}
+}
+
+// couple gives K cards their inductors.
+func (b *builder) couple(in *instance) {
+	var cards []*Element
+	wanted := map[string][]*Element{}
+	for _, e := range b.circuit.Elements[in.start:] {
+		if e.Kind == Coupling && e.Designator == in.prefix+e.NameAt.Text() {
+			cards = append(cards, e)
+		}
+		if e.Kind == Inductor {
+			lower := strings.ToLower(e.Designator)
+			wanted[lower] = append(wanted[lower], e)
+		}
+	}
+	for i := range in.scope.cards {
+		c := &in.scope.cards[i]
+		if c.e.Name.Text[0]|0x20 != 'k' || len(cards) == 0 || cards[0].NameAt != c.deck.Span(c.e.Name) {
+			continue
+		}
+		p := placing{b: b, in: in, card: c}
+		p.inductors(cards[0], wanted)
+		cards = cards[1:]
+	}
+}
+
+// inductors joins the coils that a K card names.
+func (p *placing) inductors(k *Element, coils map[string][]*Element) {
+	fields := p.card.e.Fields
+	count := len(fields) - 1
+	for count > 2 && p.span(fields[count].Word) != k.ValueAt {
+		count--
+	}
+	for _, f := range fields[:count] {
+		found := coils[strings.ToLower(p.in.prefix+f.Text)]
+		if len(found) == 0 {
+			p.fail(f.Word, "%s couples %s, but no inductor is called that", p.shown(), source.Visible(f.Text))
+			continue
+		}
+		k.Coupled = append(k.Coupled, found[0].Index)
+	}
+}
