@@ -16,6 +16,8 @@
 package netlist
 
 import (
+	"slices"
+
 	"standoff/netlist/circuit"
 	"standoff/netlist/operating"
 	"standoff/netlist/part"
@@ -40,12 +42,14 @@ type Board struct {
 	Stages   []*stage.Stage
 	Accounts []*operating.Account
 	Problems []source.Problem
-	// NothingRead is set where no card at all could be read.
+	// NothingRead is set where the file held no part, and nothing that a board
+	// could be made of either: no model, subcircuit, parameter or include.
 	NothingRead bool
 }
 
 // Read reads a board from a file. An error says that the file itself cannot be
-// read; everything else is in the board's problems.
+// read; everything else is in the board's problems. Files are included from the
+// board's own folder and those of the options.
 func Read(path string, opts Options) (*Board, error) {
 	file, err := source.Read(path, opts.FileLimits)
 	if err != nil {
@@ -67,11 +71,18 @@ func ReadText(path string, data []byte, opts Options) (*Board, error) {
 func build(file *source.File, includes circuit.Includes, opts Options) *Board {
 	deck := syntax.Parse(file, true)
 	b := &Board{Path: file.Path, File: file}
-	b.Circuit, b.Problems = circuit.Build(deck, circuit.Options{Parts: opts.Parts, Includes: includes, Limits: opts.Limits})
-	b.NothingRead = len(b.Circuit.Elements) == 0
+	b.Circuit, b.Problems = circuit.Build(deck,
+		circuit.Options{Parts: opts.Parts, Includes: includes, Limits: opts.Limits})
+	b.NothingRead = len(b.Circuit.Elements) == 0 && !slices.ContainsFunc(deck.Statements, isDefinition)
 	b.Stages = stage.Recognise(b.Circuit)
 	b.Accounts = operating.Compute(b.Circuit, b.Stages)
 	return b
+}
+
+// isDefinition reports a card that means something although it is no part.
+func isDefinition(s syntax.Statement) bool {
+	return s.Model != nil || s.Subckt != nil || s.Include != nil || s.Global != nil ||
+		s.Param != nil && len(s.Param.Pairs) > 0
 }
 
 // With returns the same board with other nominal values for the elements named,
