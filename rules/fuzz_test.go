@@ -18,7 +18,8 @@ func FuzzBoard(f *testing.F) {
 		f.Add([]byte(r.Failing))
 		f.Add([]byte(r.Mended))
 	}
-	f.Add([]byte("t\n.subckt s a\nX1 a s\n.ends\nX1 a s\nR1 a b {1/0}\nXQ1 a a a 2N2646\nV1 a 0 SIN(0 1 50)\nV2 a 0 1\n"))
+	f.Add([]byte("t\n.subckt s a\nX1 a s\n.ends\nX1 a s\nR1 a b {1/0}\nXQ1 a a a 2N2646\nV1 a 0 SIN(0 1 " +
+		"50)\nV2 a 0 1\n"))
 	f.Add([]byte("t\nV1 v 0 -20\nR1 v e 0\nC1 e 0 1e300\nXQ1 e 0 v 2N2646\n*> R1 travel=0..1e300\n"))
 	opts := netlist.Options{Limits: circuit.Limits{Elements: 2000}}
 	f.Fuzz(func(t *testing.T, data []byte) {

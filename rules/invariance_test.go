@@ -78,6 +78,10 @@ func texts2(lines []line) []string {
 	return list
 }
 
+func passive(e *circuit.Element) bool {
+	return e.Kind == circuit.Resistor || e.Kind == circuit.Capacitor
+}
+
 // rewritings by name.
 var rewritings = map[string]func(title string, lines []line) string{
 	"renamed nodes": func(title string, lines []line) string {
@@ -106,7 +110,7 @@ var rewritings = map[string]func(title string, lines []line) string{
 		for _, l := range lines {
 			f := slices.Clone(l.fields)
 			if l.element != nil && len(f) > 3 {
-				if n, err := quantity.Parse(f[3]); err == nil && (l.element.Kind == circuit.Resistor || l.element.Kind == circuit.Capacitor) {
+				if n, err := quantity.Parse(f[3]); err == nil && passive(l.element) {
 					f[3] = fmt.Sprintf("%.12e", n.Value)
 				}
 			}
@@ -133,7 +137,8 @@ var rewritings = map[string]func(title string, lines []line) string{
 		var out []string
 		for _, l := range lines {
 			f := l.fields
-			named := strings.Contains(strings.ToLower(strings.Join(texts2(lines), "\n")), "*> "+strings.ToLower(f[0])+" ")
+			all := strings.ToLower(strings.Join(texts2(lines), "\n"))
+			named := strings.Contains(all, "*> "+strings.ToLower(f[0])+" ")
 			if l.element == nil || named || len(f) != 4 || l.element.Value.Nominal == 0 {
 				out = append(out, l.text)
 				continue
@@ -141,9 +146,11 @@ var rewritings = map[string]func(title string, lines []line) string{
 			v := l.element.Value.Nominal
 			switch l.element.Kind {
 			case circuit.Resistor:
-				out = append(out, fmt.Sprintf("%sa %s split%s %g", f[0], f[1], f[0], v/2), fmt.Sprintf("%sb split%s %s %g", f[0], f[0], f[2], v/2))
+				out = append(out, fmt.Sprintf("%sa %s split%s %g", f[0], f[1], f[0], v/2),
+					fmt.Sprintf("%sb split%s %s %g", f[0], f[0], f[2], v/2))
 			case circuit.Capacitor:
-				out = append(out, fmt.Sprintf("%sa %s %s %g", f[0], f[1], f[2], v/4), fmt.Sprintf("%sb %s %s %g", f[0], f[1], f[2], 3*v/4))
+				out = append(out, fmt.Sprintf("%sa %s %s %g", f[0], f[1], f[2], v/4),
+					fmt.Sprintf("%sb %s %s %g", f[0], f[1], f[2], 3*v/4))
 			default:
 				out = append(out, l.text)
 			}
@@ -154,7 +161,7 @@ var rewritings = map[string]func(title string, lines []line) string{
 		var out []string
 		for i, l := range lines {
 			f := slices.Clone(l.fields)
-			if l.element != nil && len(f) == 4 && (l.element.Kind == circuit.Resistor || l.element.Kind == circuit.Capacitor) {
+			if l.element != nil && len(f) == 4 && passive(l.element) {
 				out = append(out, fmt.Sprintf(".param val%d={%s/2}", i, f[3]))
 				f[3] = fmt.Sprintf("{2*val%d}", i)
 			}

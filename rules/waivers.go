@@ -4,8 +4,8 @@ import (
 	"fmt"
 	"strings"
 
-	"standoff/netlist"
 	"standoff/netlist/circuit"
+	"standoff/netlist/source"
 	"standoff/rules/rule"
 )
 
@@ -13,70 +13,112 @@ import (
 type Waived struct {
 	Finding rule.Finding
 	Reason  string
-	Line    int
+	Line    int         // of the waiver
+	At      source.Span // the waiver
 }
 
-const waiverBoard = "Pump house bell\nV1 vcc 0 20\nR1 vcc e 100k\nC1 e 0 0.22u\nXQ1 e b1 vcc 2N2646\nR3 b1 0 22\n"
+const waiverBoard = `Pump house bell
+V1 vcc 0 20
+R1 vcc e 100k
+C1 e 0 0.22u
+XQ1 e b1 vcc 2N2646
+R3 b1 0 22
+`
+
+const explained = "*> waive base-two-resistor-missing XQ1 : the room is kept at one temperature\n"
 
 // waiverRules documents the rules that Check judges itself.
 func waiverRules() []*rule.Rule {
 	nothing := func(*rule.Pass) {}
 	return []*rule.Rule{
 		{ID: "waiver-unused", Group: "Netlist", Title: "A waiver sets nothing aside.",
-			Why:     "The finding it was written for is gone, or rule or designator are misspelt. A waiver that stays behind hides the next finding of its kind.",
+			Why: "The finding it was written for is gone, or rule or designator are misspelt. A waiver that " +
+				"stays behind " +
+				"hides the next finding of its kind. A waiver of a rule that was left out of this run is not judged.",
 			Formula: "no finding of that rule at that designator", Source: "common practice, no source",
-			Failing: waiverBoard + "R2 vcc 0 10k\n*> waive timing-capacitor-small XQ1 : drawn from the old board\n*> waive base-two-resistor-missing XQ1 : the room is kept at one temperature\n.end\n",
-			Mended:  waiverBoard + "R2 vcc 0 10k\n*> waive base-two-resistor-missing XQ1 : the room is kept at one temperature\n.end\n", Check: nothing},
+			Failing: waiverBoard + "*> waive timing-capacitor-small XQ1 : drawn from the old " +
+				"board\n" + explained + ".end\n",
+			Mended: waiverBoard + explained + ".end\n", Check: nothing},
 		{ID: "waiver-unexplained", Group: "Netlist", Title: "A waiver gives no reason.",
-			Why:     "Whoever reads the board next cannot tell a decision from a habit. The finding is set aside all the same.",
+			Why: "Whoever reads the board next cannot tell a decision from a habit. The finding is set aside " +
+				"all the same.",
 			Formula: "waive RULE DESIGNATOR without : reason", Source: "common practice, no source",
 			Failing: waiverBoard + "*> waive base-two-resistor-missing XQ1\n.end\n",
-			Mended:  waiverBoard + "*> waive base-two-resistor-missing XQ1 : the room is kept at one temperature\n.end\n", Check: nothing},
+			Mended:  waiverBoard + explained + ".end\n", Check: nothing},
 	}
 }
 
-// waive splits findings into those that stand and those set aside, and judges
-// the waivers.
-func waive(b *netlist.Board, findings []rule.Finding) (stand []rule.Finding, aside []Waived) {
-	used := make([]bool, len(b.Circuit.Waivers))
+// waive splits findings into those that stand and those that a waiver sets aside.
+func waive(c *circuit.Circuit, findings []rule.Finding) (stand []rule.Finding, aside []Waived) {
 	for _, f := range findings {
-		i := waiverFor(b.Circuit.Waivers, f)
-		if i < 0 {
+		if w := waiverFor(c.Waivers, f); w != nil {
+			aside = append(aside, Waived{f, w.Reason, w.At.Position().Line, w.At})
+		} else {
 			stand = append(stand, f)
-			continue
-		}
-		used[i] = true
-		w := b.Circuit.Waivers[i]
-		aside = append(aside, Waived{f, w.Reason, w.At.Position().Line})
-	}
-	for i, w := range b.Circuit.Waivers {
-		if !used[i] {
-			stand = append(stand, rule.Finding{Rule: "waiver-unused", Grade: rule.Doubt, At: w.At, Parts: []string{w.Designator},
-				Message: fmt.Sprintf("this waiver of %s at %s sets nothing aside", rule.Name(w.Rule), rule.Name(w.Designator))})
-		}
-		if w.Reason == "" {
-			stand = append(stand, rule.Finding{Rule: "waiver-unexplained", Grade: rule.Doubt, At: w.At, Parts: []string{w.Designator},
-				Message: "this waiver gives no reason; write one behind a colon"})
 		}
 	}
 	return stand, aside
 }
 
 // waiverFor finds the waiver that names the rule and the stage or a part of a
-// finding; -1 where there is none.
-func waiverFor(waivers []circuit.Waiver, f rule.Finding) int {
-	for i, w := range waivers {
-		if w.Rule != f.Rule {
+// finding; nil where there is none.
+func waiverFor(waivers []circuit.Waiver, f rule.Finding) *circuit.Waiver {
+	for i := range waivers {
+		w := &waivers[i]
+		if !strings.EqualFold(w.Rule, f.Rule) {
 			continue
 		}
-		if strings.EqualFold(w.Designator, f.Stage) {
-			return i
+		if f.Stage != "" && strings.EqualFold(w.Designator, f.Stage) {
+			return w
 		}
 		for _, p := range f.Parts {
 			if strings.EqualFold(w.Designator, p) {
-				return i
+				return w
 			}
 		}
 	}
-	return -1
+	return nil
+}
+
+// judgeWaivers tells waivers that set nothing aside or give no reason. A waiver in
+// a subcircuit stands for every instance and is judged once.
+func judgeWaivers(c *circuit.Circuit, aside []Waived, opts Options) []rule.Finding {
+	used, judged := map[source.Span]bool{}, map[source.Span]bool{}
+	for _, w := range aside {
+		used[w.At] = true
+	}
+	var list []rule.Finding
+	tell := func(w circuit.Waiver, id, message string) {
+		if opts.chooses(id) {
+			list = append(list, rule.Finding{Rule: id, Grade: rule.Doubt, At: w.At, Parts: []string{w.Designator},
+				Message: message})
+		}
+	}
+	for _, w := range c.Waivers {
+		if judged[w.At] {
+			continue
+		}
+		judged[w.At] = true
+		if !used[w.At] && opts.chooses(strings.ToLower(w.Rule)) {
+			tell(w, "waiver-unused", fmt.Sprintf("this waiver of %s at %s sets nothing aside: %s", rule.Name(w.Rule),
+				rule.Name(w.Designator), whyUnused(c, w)))
+		}
+		if w.Reason == "" {
+			tell(w, "waiver-unexplained", "this waiver gives no reason; write one behind a colon")
+		}
+	}
+	return list
+}
+
+// whyUnused says what is wrong with a waiver that sets nothing aside.
+func whyUnused(c *circuit.Circuit, w circuit.Waiver) string {
+	if _, ok := Find(strings.ToLower(w.Rule)); !ok {
+		return "there is no such rule (standoff rules lists them)"
+	}
+	for _, e := range c.Elements {
+		if strings.EqualFold(e.Designator, w.Designator) {
+			return "the rule finds nothing there"
+		}
+	}
+	return "there is no such part on this board"
 }

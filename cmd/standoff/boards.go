@@ -27,8 +27,10 @@ type readFlags struct {
 }
 
 func (f *readFlags) add(c *cobra.Command) {
-	c.Flags().StringArrayVar(&f.parts, "parts", nil, "a file of .model cards with more ratings (may be given again)")
-	c.Flags().StringArrayVar(&f.include, "include", nil, "a folder from which netlists may include files (may be given again)")
+	c.Flags().StringArrayVar(&f.parts, "parts", nil, "a file of .model cards with more ratings (may be "+
+		"given again)")
+	c.Flags().StringArrayVar(&f.include, "include", nil, "a folder from which netlists may include files "+
+		"(may be given again)")
 }
 
 // options reads the --parts files.

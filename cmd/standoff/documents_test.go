@@ -10,7 +10,8 @@ import (
 // RULES.md is what the rules themselves say.
 func TestTheRuleReferenceIsFresh(t *testing.T) {
 	var fresh, trouble bytes.Buffer
-	if status := run([]string{"rules", "--format", "markdown"}, strings.NewReader(""), &fresh, &trouble); status != 0 {
+	status := run([]string{"rules", "--format", "markdown"}, strings.NewReader(""), &fresh, &trouble)
+	if status != 0 {
 		t.Fatal(trouble.String())
 	}
 	kept, err := os.ReadFile("../../RULES.md")

@@ -15,24 +15,32 @@ import (
 // this to make a build pass: a package that needs what stands after it in the
 // flow is doing another package's work.
 var allowed = map[string]string{
-	"fixtures":          "",
-	"netlist/source":    "",
-	"netlist/quantity":  "",
-	"netlist/numeric":   "",
-	"netlist/network":   "netlist/numeric",
-	"netlist/syntax":    "netlist/source netlist/quantity",
-	"netlist/part":      "netlist/source netlist/quantity netlist/syntax",
-	"netlist/circuit":   "netlist/source netlist/quantity netlist/syntax netlist/part",
-	"netlist/stage":     "netlist/circuit netlist/part netlist/quantity",
-	"netlist/operating": "netlist/stage netlist/circuit netlist/part netlist/quantity netlist/numeric netlist/network",
-	"netlist":           "netlist/source netlist/syntax netlist/part netlist/circuit netlist/stage netlist/operating",
-	"rules/rule":        "netlist/source netlist/quantity netlist/part netlist/circuit netlist/stage netlist/operating",
-	"rules/wiring":      "rules/rule netlist/quantity netlist/circuit netlist/stage netlist/operating netlist/part",
-	"rules/oscillator":  "rules/rule netlist/quantity netlist/circuit netlist/stage netlist/operating netlist/part",
-	"rules/trigger":     "rules/rule netlist/quantity netlist/circuit netlist/stage netlist/operating netlist/part",
-	"rules": "netlist rules/rule rules/wiring rules/oscillator rules/trigger netlist/source netlist/quantity netlist/circuit " +
+	"fixtures":         "",
+	"netlist/source":   "",
+	"netlist/quantity": "",
+	"netlist/numeric":  "",
+	"netlist/network":  "netlist/numeric",
+	"netlist/syntax":   "netlist/source netlist/quantity",
+	"netlist/part":     "netlist/source netlist/quantity netlist/syntax",
+	"netlist/circuit":  "netlist/source netlist/quantity netlist/syntax netlist/part",
+	"netlist/stage":    "netlist/circuit netlist/part netlist/quantity",
+	"netlist/operating": "netlist/stage netlist/circuit netlist/part netlist/quantity netlist/numeric " +
+		"netlist/network",
+	"netlist": "netlist/source netlist/syntax netlist/part netlist/circuit netlist/stage " +
+		"netlist/operating",
+	"rules/rule": "netlist/source netlist/quantity netlist/part netlist/circuit netlist/stage " +
+		"netlist/operating",
+	"rules/wiring": "rules/rule netlist/source netlist/quantity netlist/circuit netlist/stage " +
+		"netlist/operating netlist/part",
+	"rules/oscillator": "rules/rule netlist/quantity netlist/circuit netlist/stage netlist/operating " +
+		"netlist/part",
+	"rules/trigger": "rules/rule netlist/quantity netlist/circuit netlist/stage netlist/operating " +
+		"netlist/part",
+	"rules": "netlist rules/rule rules/wiring rules/oscillator rules/trigger netlist/source " +
+		"netlist/quantity netlist/circuit " +
 		"netlist/stage netlist/operating",
-	"rules/report": "netlist rules rules/rule netlist/source netlist/quantity netlist/part netlist/circuit netlist/stage netlist/operating",
+	"rules/report": "netlist rules rules/rule netlist/source netlist/quantity netlist/part netlist/circuit " +
+		"netlist/stage netlist/operating",
 	"cmd/standoff": "netlist rules rules/rule rules/report netlist/part netlist/source",
 }
 

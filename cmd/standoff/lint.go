@@ -22,12 +22,14 @@ func newLint(s *streams) *cobra.Command {
 	f := &lintFlags{}
 	c := &cobra.Command{
 		Use: "lint [PATH...]", Short: "Checks netlists",
-		Long: "Checks netlists. PATH is a file, a folder (searched for .cir .net .sp .spice .ckt .cki) or - for standard input;\n" +
+		Long: "Checks netlists. PATH is a file, a folder (searched for .cir .net .sp .spice .ckt .cki) or - " +
+			"for standard input;\n" +
 			"without one the current folder is searched.",
 		RunE: func(_ *cobra.Command, args []string) error { return lint(s, f, args) },
 	}
 	c.Flags().StringVar(&f.format, "format", "terminal", "terminal, lines, json or sarif")
-	c.Flags().StringVar(&f.failAt, "fail-at", "hold", "hold, doubt, remark or never: the least grade that makes the exit status 1")
+	c.Flags().StringVar(&f.failAt, "fail-at", "hold", "hold, doubt, remark or never: the least grade that "+
+		"makes the exit status 1")
 	c.Flags().StringSliceVar(&f.only, "only", nil, "judge these rules only")
 	c.Flags().StringSliceVar(&f.skip, "skip", nil, "leave these rules out")
 	c.Flags().StringVar(&f.color, "color", "auto", "auto, always or never")

@@ -64,10 +64,12 @@ func newRoot(s *streams) *cobra.Command {
 	root := &cobra.Command{
 		Use:   "standoff",
 		Short: "Checks netlists of unijunction and thyristor trigger stages",
-		Long: "standoff reads netlists, recognises relaxation oscillators and thyristor gates, works out their worst case over every\n" +
+		Long: "standoff reads netlists, recognises relaxation oscillators and thyristor gates, works out " +
+			"their worst case over every\n" +
 			"spread, and says what will go wrong on some board, why, and which value would put it right.\n\n" +
 			"Exit status: 0 nothing at or above --fail-at, 1 something, 2 the job could not be done.\n" +
-			"Limits: files of 64 MiB, subcircuits and includes 40 deep, 2,000,000 elements, expressions 200 brackets deep.\n" +
+			"Limits: files of 64 MiB, subcircuits and includes 40 deep, 2,000,000 elements, expressions 200 " +
+			"brackets deep.\n" +
 			"Work on mains and on charged capacitors can kill: keep to local codes and leave it to licensed people.",
 		SilenceErrors: true, SilenceUsage: true,
 	}

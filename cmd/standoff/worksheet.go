@@ -14,7 +14,8 @@ func newWorksheet(s *streams) *cobra.Command {
 	var read readFlags
 	var format string
 	c := &cobra.Command{
-		Use: "worksheet PATH...", Short: "Prints every recognised stage with its figures and how they were worked out",
+		Use: "worksheet PATH...", Short: "Prints every recognised stage with its figures and how they were " +
+			"worked out",
 		Args: cobra.MinimumNArgs(1),
 		RunE: func(_ *cobra.Command, args []string) error { return worksheet(s, read, format, args) },
 	}

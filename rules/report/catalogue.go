@@ -35,14 +35,16 @@ func RulesJSON(w io.Writer, list []*rule.Rule) error {
 
 // RulesMarkdown writes the reference of the rules.
 func RulesMarkdown(w io.Writer, list []*rule.Rule) {
-	fmt.Fprint(w, "# Rules\n\nWritten by `standoff rules --format markdown`; do not edit. Each failing netlist yields its rule and each mended one does not: a test runs them.\n")
+	fmt.Fprint(w, "# Rules\n\nWritten by `standoff rules --format markdown`; do not edit. Each failing "+
+		"netlist yields its rule and each mended one does not: a test runs them.\n")
 	group := ""
 	for _, r := range list {
 		if r.Group != group {
 			group = r.Group
 			fmt.Fprintf(w, "\n## %s\n", group)
 		}
-		fmt.Fprintf(w, "\n### %s\n\n%s\n\n%s\n\nFormula: `%s`\n\nSource: %s\n\nFails:\n\n```\n%s```\n\nMended:\n\n```\n%s```\n", r.ID, r.Title, r.Why, r.Formula, r.Source, r.Failing, r.Mended)
+		fmt.Fprintf(w, "\n### %s\n\n%s\n\n%s\n\nFormula: `%s`\n\nSource: "+
+			"%s\n\nFails:\n\n```\n%s```\n\nMended:\n\n```\n%s```\n", r.ID, r.Title, r.Why, r.Formula, r.Source, r.Failing, r.Mended)
 	}
 }
 
@@ -116,6 +118,7 @@ func (t Terminal) Part(w io.Writer, r *part.Ratings) {
 			}
 			return quantity.Format(v, s.Unit)
 		}
-		fmt.Fprintf(w, "  %-12s %12s %12s %12s  %-13s %s\n", s.Name, cell(f.Min, f.HasMin), cell(f.Typ, f.HasTyp), cell(f.Max, f.HasMax), markWords[f.Mark], s.Meaning)
+		fmt.Fprintf(w, "  %-12s %12s %12s %12s  %-13s "+
+			"%s\n", s.Name, cell(f.Min, f.HasMin), cell(f.Typ, f.HasTyp), cell(f.Max, f.HasMax), markWords[f.Mark], s.Meaning)
 	}
 }

@@ -65,7 +65,8 @@ var levels = map[rule.Grade]string{rule.Hold: "error", rule.Doubt: "warning", ru
 func SARIF(w io.Writer, results []*rules.Result) error {
 	run := sarifRun{ColumnKind: "unicodeCodePoints", Results: []sarifResult{}}
 	run.Tool.Driver.Name = "standoff"
-	run.Tool.Driver.Rules = []sarifRule{{"unread", sarifText{"A card could not be read."}, sarifText{"The card was left out; the rest of the file was checked."}}}
+	run.Tool.Driver.Rules = []sarifRule{{"unread", sarifText{"A card could not be " +
+		"read."}, sarifText{"The card was left out; the rest of the file was checked."}}}
 	for _, r := range rules.Catalogue() {
 		run.Tool.Driver.Rules = append(run.Tool.Driver.Rules, sarifRule{r.ID, sarifText{r.Title}, sarifText{r.Why}})
 	}

@@ -73,7 +73,8 @@ func (t Terminal) file(w io.Writer, r *rules.Result) {
 	}
 	t.list(w, "set aside by waivers", len(r.Waived), func(i int) string {
 		x := r.Waived[i]
-		return fmt.Sprintf("%s at %s, line %d: %s", x.Finding.Rule, source.Visible(x.Finding.Stage), x.Line, source.Visible(x.Reason))
+		return fmt.Sprintf("%s at %s, line "+
+			"%d: %s", x.Finding.Rule, source.Visible(x.Finding.Stage), x.Line, source.Visible(x.Reason))
 	})
 	t.list(w, "not checked", len(r.Unchecked), func(i int) string {
 		x := r.Unchecked[i]
@@ -159,7 +160,8 @@ func (t Terminal) finding(w io.Writer, f rule.Finding) {
 		for _, a := range f.Advice {
 			words = append(words, source.Visible(a.Part)+" = "+a.Text)
 		}
-		t.labelled(w, "mend", t.paint(strings.Join(words, " with "), color.FgGreen)+" clears it; the board was worked out anew with it")
+		t.labelled(w, "mend", t.paint(strings.Join(words, " with "), color.FgGreen)+" clears it; the board "+
+			"was worked out anew with it")
 	case f.NoAdvice != "":
 		t.labelled(w, "mend", source.Visible(f.NoAdvice))
 	}
@@ -226,7 +228,8 @@ func Lines(w io.Writer, results []*rules.Result) {
 		}
 		for _, f := range r.Findings {
 			at := f.At.Position()
-			fmt.Fprintf(w, "%s:%d:%d: %s: %s%s [%s]\n", source.Visible(at.Path), at.Line, at.Column, f.Grade, oneLine(f.Message), mend(f), f.Rule)
+			fmt.Fprintf(w, "%s:%d:%d: %s: %s%s "+
+				"[%s]\n", source.Visible(at.Path), at.Line, at.Column, f.Grade, oneLine(f.Message), mend(f), f.Rule)
 		}
 	}
 }

@@ -55,7 +55,8 @@ func (t Terminal) stage(w io.Writer, a *operating.Account) {
 		fmt.Fprintf(w, "\n    %-32s %12s %12s %12s\n", "", "low", "nominal", "high")
 	}
 	for _, f := range a.Figures {
-		fmt.Fprintf(w, "    %-32s %12s %12s %12s\n", f.Name, quantity.Format(f.Low, f.Unit), quantity.Format(f.Nominal, f.Unit), quantity.Format(f.High, f.Unit))
+		fmt.Fprintf(w, "    %-32s %12s %12s "+
+			"%12s\n", f.Name, quantity.Format(f.Low, f.Unit), quantity.Format(f.Nominal, f.Unit), quantity.Format(f.High, f.Unit))
 		for _, line := range wrap(source.Visible(f.Working), max(t.Width, 60)-8) {
 			fmt.Fprintf(w, "        %s\n", line)
 		}

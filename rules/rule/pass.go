@@ -129,7 +129,8 @@ func (r *Rule) Validate() error {
 		}
 	}
 	for _, part := range [...]struct{ name, text string }{{"group", r.Group}, {"title", r.Title}, {"why", r.Why},
-		{"formula", r.Formula}, {"source", r.Source}, {"failing netlist", r.Failing}, {"mended netlist", r.Mended}} {
+		{"formula", r.Formula}, {"source", r.Source}, {"failing netlist", r.Failing},
+		{"mended netlist", r.Mended}} {
 		if strings.TrimSpace(part.text) == "" {
 			return fmt.Errorf("rule %s has no %s", r.ID, part.name)
 		}

@@ -29,7 +29,9 @@ func account(k operating.Comparison) *operating.Account {
 
 func judge(a *operating.Account, c rule.Case) []rule.Finding {
 	var list []rule.Finding
-	p := rule.NewPass(&circuit.Circuit{}, []*operating.Account{a}, func(f rule.Finding) { list = append(list, f) })
+	p := rule.NewPass(&circuit.Circuit{}, []*operating.Account{a}, func(f rule.Finding) {
+		list = append(list, f)
+	})
 	c.Comparison, c.Fails = "charging_current_at_peak", "it never fires"
 	c.Value, c.Limit = "the charging current", "the transistor needs"
 	p.Each(stage.UJTOscillator, func(a *operating.Account) { p.Judge(a, c) })
@@ -38,7 +40,8 @@ func judge(a *operating.Account, c rule.Case) []rule.Finding {
 
 func TestGradeFollowsMarginAndCertainty(t *testing.T) {
 	at := func(value float64, bound operating.Bound, certain bool) operating.Comparison {
-		return operating.Comparison{Value: value, Limit: 8e-6, Bound: bound, Certain: certain, Because: "I_P is from memory"}
+		return operating.Comparison{Value: value, Limit: 8e-6, Bound: bound, Certain: certain,
+			Because: "I_P is from memory"}
 	}
 	for name, row := range map[string]struct {
 		k    operating.Comparison
@@ -67,14 +70,16 @@ func TestGradeFollowsMarginAndCertainty(t *testing.T) {
 
 func TestAFindingTellsFigureLimitAndWhyItIsNoHold(t *testing.T) {
 	k := operating.Comparison{Value: 3e-6, Limit: 5e-6, Bound: operating.Min, Because: "I_P is from memory",
-		Corner: operating.Corner{{Name: "eta", Value: 0.7}}, Working: "2 V/660 kohm", Assumed: []string{"spread of R1: default"}}
+		Corner: operating.Corner{{Name: "eta", Value: 0.7}}, Working: "2 V/660 kohm",
+		Assumed: []string{"spread of R1: default"}}
 	f := judge(account(k), rule.Case{Mend: []stage.Role{stage.TimingResistor}})[0]
 	want := "it never fires: the charging current is 3 uA, the transistor needs 5 uA (below the limit); " +
 		"no more than a doubt because I_P is from memory"
 	if f.Message != want {
 		t.Errorf("message %q", f.Message)
 	}
-	if f.Figure == nil || *f.Figure != (rule.Figure{Name: "charging_current_at_peak", Value: 3e-6, Limit: 5e-6, Bound: "min", Unit: "A"}) {
+	figure := rule.Figure{Name: "charging_current_at_peak", Value: 3e-6, Limit: 5e-6, Bound: "min", Unit: "A"}
+	if f.Figure == nil || *f.Figure != figure {
 		t.Errorf("figure %+v", f.Figure)
 	}
 	if len(f.Corner) != 1 || f.Working != "2 V/660 kohm" || len(f.Assumed) != 1 {
@@ -87,8 +92,8 @@ func TestAFindingTellsFigureLimitAndWhyItIsNoHold(t *testing.T) {
 
 func TestPlaceIsTheFirstRoleThatExistsElseTheAnchor(t *testing.T) {
 	a := account(operating.Comparison{})
-	driver := &stage.Stage{Anchor: element("XQ9", 9), Parts: map[stage.Role][]*circuit.Element{stage.BaseOne: {element("R3", 3)}}}
-	a.Stage.DrivenBy = driver
+	a.Stage.DrivenBy = &stage.Stage{Anchor: element("XQ9", 9),
+		Parts: map[stage.Role][]*circuit.Element{stage.BaseOne: {element("R3", 3)}}}
 	for _, row := range []struct {
 		roles []stage.Role
 		line  int
@@ -100,7 +105,8 @@ func TestPlaceIsTheFirstRoleThatExistsElseTheAnchor(t *testing.T) {
 		{nil, 5, "XQ1"},
 	} {
 		f := rule.Finding{}.Placed(a, row.roles...)
-		if line := f.At.Position().Line; line != row.line || strings.Join(f.Parts, " ") != row.parts || f.Stage != "XQ1" {
+		line, parts := f.At.Position().Line, strings.Join(f.Parts, " ")
+		if line != row.line || parts != row.parts || f.Stage != "XQ1" {
 			t.Errorf("%v: line %d, parts %v, stage %s", row.roles, line, f.Parts, f.Stage)
 		}
 	}
@@ -115,8 +121,8 @@ func TestAnIncompleteStageIsNotJudged(t *testing.T) {
 }
 
 func TestBadDeclarationsAreRefused(t *testing.T) {
-	sound := rule.Rule{ID: "node-dangling", Group: "g", Title: "t", Why: "w", Formula: "-", Source: "s", Failing: "f",
-		Mended: "m", Check: func(*rule.Pass) {}}
+	sound := rule.Rule{ID: "node-dangling", Group: "g", Title: "t", Why: "w", Formula: "-", Source: "s",
+		Failing: "f", Mended: "m", Check: func(*rule.Pass) {}}
 	if err := sound.Validate(); err != nil {
 		t.Error(err)
 	}

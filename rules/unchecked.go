@@ -1,0 +1,60 @@
+package rules
+
+import (
+	"fmt"
+	"strings"
+
+	"standoff/netlist"
+	"standoff/netlist/circuit"
+	"standoff/rules/rule"
+)
+
+// Unchecked is something that was not judged, and why. Rule is empty where it
+// concerns all rules, Stage where it concerns no part.
+type Unchecked struct {
+	Rule, Stage, Because string
+}
+
+// unchecked lists what the chosen rules could not judge.
+func unchecked(b *netlist.Board, opts Options) []Unchecked {
+	var list []Unchecked
+	anchors := map[*circuit.Element]bool{}
+	for _, a := range b.Accounts {
+		anchors[a.Stage.Anchor] = true
+		for _, u := range a.Unchecked {
+			if u.Rule == "" || opts.chooses(u.Rule) {
+				list = append(list, Unchecked{u.Rule, a.Stage.Anchor.Designator, u.Because})
+			}
+		}
+	}
+	for _, e := range b.Circuit.Elements {
+		if why := noStage(e); why != "" && !anchors[e] {
+			list = append(list, Unchecked{"", e.Designator, why})
+		}
+	}
+	return list
+}
+
+// noStage says why no stage stands around an element that could anchor one, ""
+// where the element could not.
+func noStage(e *circuit.Element) string {
+	switch e.Kind {
+	case circuit.UJT, circuit.SCR:
+		return "no stage was recognised around it"
+	case circuit.PUT:
+		return "stages around a programmable unijunction transistor are not worked out yet"
+	case circuit.Triac:
+		return "gate stages of triacs are not worked out yet"
+	case circuit.Diac:
+		return "stages around a breakover device are not worked out yet"
+	case circuit.SourceIC:
+		return "current-source circuits are not worked out yet"
+	case circuit.Optotriac:
+		return "opto-triac stages are not worked out yet"
+	case circuit.Unknown:
+		if !strings.ContainsRune("QJM", rune(e.Letter)) {
+			return fmt.Sprintf("nothing is known of the part %s", rule.Name(e.PartName))
+		}
+	}
+	return ""
+}
