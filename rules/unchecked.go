@@ -32,6 +32,9 @@ func unchecked(b *netlist.Board, opts Options) []Unchecked {
 			list = append(list, Unchecked{"", e.Designator, why})
 		}
 	}
+	for _, s := range b.Circuit.UnusedSubckts {
+		list = append(list, Unchecked{"", s.Name, "the subcircuit is defined and no card uses it: nothing in it was looked at"})
+	}
 	return list
 }
 

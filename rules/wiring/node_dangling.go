@@ -42,7 +42,7 @@ func openOnPurpose(n *circuit.Node, formulas bool) bool {
 		return true
 	}
 	switch n.Pins[0].Element.Kind {
-	case circuit.Controlled, circuit.Unknown, circuit.Line, jig:
+	case circuit.Controlled, circuit.Unknown, circuit.Line, circuit.Jig:
 		return true
 	case circuit.VoltageSource:
 		return formulas
@@ -65,6 +65,3 @@ func hasFormulas(c *circuit.Circuit) bool {
 	}
 	return false
 }
-
-// jig is the kind of a capacitor that no board has: 1T, in a test rig.
-const jig = circuit.Kind("jig")

@@ -88,7 +88,7 @@ func joined(c *circuit.Circuit) func(circuit.NodeID) circuit.NodeID {
 	}
 	for _, e := range c.Elements {
 		switch e.Kind {
-		case circuit.Capacitor, circuit.CurrentSource, circuit.Coupling, jig:
+		case circuit.Capacitor, circuit.CurrentSource, circuit.Coupling, circuit.Jig:
 			continue
 		}
 		for _, n := range e.Nodes {
