@@ -26,7 +26,7 @@ type Options struct {
 // Limits bound what a netlist may ask for. A zero limit stands for the default.
 type Limits struct {
 	Depth           int // nesting of subcircuits and of includes; 40
-	Elements        int // elements, and uses of subcircuits, after flattening; 2,000,000
+	Elements        int // elements after flattening; 2,000,000
 	Includes        int // files included, counted each time; 1,000
 	ExpressionDepth int // parameters and operators that hang on one another; 2,000
 }
@@ -35,6 +35,13 @@ func (l Limits) depth() int           { return limitOr(l.Depth, 40) }
 func (l Limits) elements() int        { return limitOr(l.Elements, 2_000_000) }
 func (l Limits) includes() int        { return limitOr(l.Includes, 1_000) }
 func (l Limits) expressionDepth() int { return limitOr(l.ExpressionDepth, 2_000) }
+
+// work bounds what the uses of subcircuits may cost besides elements: the words
+// of their cards, whether they make an element or not, and the length of names.
+func (l Limits) work() int { return 16 * l.elements() }
+
+// arithmetic bounds the steps of all expressions together.
+func (l Limits) arithmetic() int { return 50 * l.elements() }
 
 func limitOr(limit, standard int) int {
 	if limit > 0 {
@@ -82,11 +89,12 @@ type builder struct {
 	fetched map[fetch]bool
 	early   *environment // parameters of the board, while the text is still walked
 
-	includes, instances int
-	declaresParts       bool // some part= line exists
-	stopped             bool // a limit was hit and told
-	elements            []Element
-	ids                 []NodeID
+	includes         int  // files that were included
+	work, arithmetic int  // spent on subcircuits, and on expressions
+	declaresParts    bool // some part= line exists
+	stopped          bool // a limit was hit and told
+	elements         []Element
+	ids              []NodeID
 }
 
 func (b *builder) problem(at source.Span, format string, args ...any) {

@@ -178,7 +178,8 @@ func (c *collector) model(m *syntax.Model) {
 	}
 	def := &modelDef{deck: c.deck, m: m, scope: top, guard: c.guard()}
 	key := strings.ToLower(m.Name.Text)
-	for _, known := range top.models[key] {
+	if n := len(top.models[key]); n > 0 {
+		known := top.models[key][n-1]
 		rated := isTrigger(part.Kind(strings.ToLower(m.Type.Text)))
 		if rated && def.guard == nil && known.guard == nil && !sameModel(known, def) {
 			c.b.problem(c.deck.Span(m.Name), "the model %s is defined twice, and differently; this one counts",

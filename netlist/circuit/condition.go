@@ -75,6 +75,11 @@ func (c *collector) condition(s syntax.Statement) {
 	}
 	switch keyword {
 	case "if":
+		if limit := c.b.opts.Limits.depth(); n >= limit {
+			c.b.once("if depth", c.span(s), "conditions nest deeper than %d; what is deeper is not read", limit)
+			c.blocks = append(c.blocks, block{group: &ifGroup{}, at: c.span(s), dead: true})
+			return
+		}
 		c.blocks = append(c.blocks, block{group: &ifGroup{}, outer: c.guard(), at: c.span(s), dead: !c.active()})
 		c.branch(&c.blocks[n], s)
 	case "endif":

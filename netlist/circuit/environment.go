@@ -17,7 +17,7 @@ type environment struct {
 	outer  *environment
 	values map[string]*parameter
 	worked []*parameter // those that were worked out
-	limit  int          // of what may hang on one another
+	b      *builder
 }
 
 // parameter is one name.
@@ -50,8 +50,7 @@ func (b *builder) environment(in *instance, outer *environment, overrides []synt
 	if count == 0 && outer != nil {
 		return outer
 	}
-	env := &environment{outer: outer, values: make(map[string]*parameter, count),
-		limit: b.opts.Limits.expressionDepth()}
+	env := &environment{outer: outer, values: make(map[string]*parameter, count), b: b}
 	guarded := false
 	for _, p := range s.params {
 		guarded = guarded || p.guard != nil
@@ -103,7 +102,7 @@ func (e *environment) set(p syntax.Pair) {
 func (c *collector) early() *environment {
 	b := c.b
 	if b.early == nil {
-		b.early = &environment{values: map[string]*parameter{}, limit: b.opts.Limits.expressionDepth()}
+		b.early = &environment{values: map[string]*parameter{}, b: b}
 		for _, p := range c.stack[0].scope.params {
 			b.early.put(p.pair, b.early)
 		}

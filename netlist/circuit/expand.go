@@ -18,16 +18,31 @@ func (p *placing) expand(nodes []syntax.Value, name syntax.Value, sub *scope) {
 	if p.tooDeep(sub) {
 		return
 	}
-	if limit := b.opts.Limits.elements(); b.instances >= limit {
-		b.stop(p.card.span(), "subcircuits are used more than %d times; the rest is not read", limit)
+	prefix := p.in.prefix + p.card.e.Name.Text + "."
+	if b.work += sub.cost(len(prefix)); b.work > b.opts.Limits.work() {
+		b.stop(p.card.span(), "the subcircuits unfold to far more than a board can hold; the rest is not read")
 		return
 	}
-	b.instances++
 	in := &instance{outer: p.in, scope: sub, name: p.card.e.Name.Text, depth: p.in.depth + 1,
-		prefix: p.in.prefix + p.card.e.Name.Text + "."}
+		prefix: prefix}
 	p.connect(in, nodes)
 	in.env = b.environment(in, p.in.env, p.card.e.Pairs)
 	b.place(in)
+}
+
+// cost says what one use of a subcircuit takes: the words of its cards, and the
+// names that it makes.
+func (s *scope) cost(prefix int) int {
+	if s.words == 0 {
+		s.words = 1 + len(s.params) + len(s.intents) + len(s.pins)
+		for _, c := range s.cards {
+			s.words += 1 + len(c.e.Fields) + len(c.e.Pairs)
+			if c.e.Function != nil {
+				s.words += len(c.e.Function.Args)
+			}
+		}
+	}
+	return s.words + len(s.cards)*prefix/16
 }
 
 // tooDeep reports, and tells once, where subcircuits contain themselves or nest
@@ -64,25 +79,21 @@ func (p *placing) connect(in *instance, nodes []syntax.Value) {
 	}
 }
 
-// findRepeats notes the designators that stand twice in a scope. It looks once a
-// scope, at the cards that its first instance takes.
+// findRepeats notes the designators that stand twice in a scope, once a scope.
+// Cards in branches of an .if may share a name.
 func (b *builder) findRepeats(in *instance) {
 	s := in.scope
-	seen := make(index, len(s.cards))
-	cards := make([]*cardRef, 0, len(s.cards))
+	s.names = newIndex(len(s.cards))
+	s.named = make([]*cardRef, 0, len(s.cards))
 	for i := range s.cards {
 		c := &s.cards[i]
-		if c.guard != nil && !b.holds(in, c.guard) {
-			continue
-		}
-		if first, twice := seen.find(c.e.Name.Text); twice {
-			known := cards[first]
+		first, fresh := s.names.add(c.e.Name.Text)
+		if fresh {
+			s.named = append(s.named, c)
+		} else if known := s.named[first]; c.guard == nil && known.guard == nil {
 			b.circuit.Repeats = append(b.circuit.Repeats, Repeat{in.prefix + c.e.Name.Text,
 				known.deck.Span(known.e.Name), c.deck.Span(c.e.Name)})
-			continue
 		}
-		seen.add(c.e.Name.Text)
-		cards = append(cards, c)
 	}
 }
 

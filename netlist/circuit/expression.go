@@ -20,8 +20,11 @@ func (e *environment) finite(x *syntax.Expr, depth int) (float64, error) {
 }
 
 func (e *environment) node(x *syntax.Expr, depth int) (float64, error) {
-	if depth > e.limit {
-		return 0, fmt.Errorf("more than %d parameters and operators hang on one another", e.limit)
+	if limit := e.b.opts.Limits.expressionDepth(); depth > limit {
+		return 0, fmt.Errorf("more than %d parameters and operators hang on one another", limit)
+	}
+	if e.b.arithmetic++; e.b.arithmetic > e.b.opts.Limits.arithmetic() {
+		return 0, errors.New("the netlist asks for more arithmetic than a board can need")
 	}
 	switch x.Op {
 	case "num":

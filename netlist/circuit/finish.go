@@ -93,7 +93,7 @@ func (b *builder) markUsedInside() {
 		}
 		for i := range s.cards {
 			for _, f := range s.cards[i].e.Fields {
-				if def := s.findModel(f.Text, always); def != nil {
+				if def := s.findModel(f.Text); def != nil {
 					def.used = true
 				}
 			}

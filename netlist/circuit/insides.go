@@ -96,7 +96,7 @@ func (n nets) join(a, b string) {
 // pin that is still open then is the gate.
 func (b *builder) crossedPair(sub *scope) *deviceGuess {
 	npn, pnp := b.transistors(sub)
-	if len(npn) == 0 || len(pnp) == 0 {
+	if len(npn) == 0 || len(pnp) == 0 || len(npn)+len(pnp) > 20 {
 		return nil
 	}
 	tight, loose := nets{}, nets{}
@@ -141,7 +141,7 @@ func (b *builder) transistors(sub *scope) (npn, pnp []bipolar) {
 // a subcircuit.
 func (s *scope) typeOf(words []syntax.Value) part.Kind {
 	for _, w := range words {
-		if def := s.findModel(w.Text, always); def != nil {
+		if def := s.findModel(w.Text); def != nil {
 			return part.Kind(strings.ToLower(def.m.Type.Text))
 		}
 	}

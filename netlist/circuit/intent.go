@@ -165,7 +165,7 @@ func (b *builder) direct(in *instance) {
 // through its elements once, however many lines there are.
 func (b *builder) subjects(in *instance) map[string][]*Element {
 	found := map[string][]*Element{}
-	wanted := index{}
+	wanted := newIndex(len(in.scope.intents))
 	for _, ref := range in.scope.intents {
 		if ref.i.Waive == nil && ref.i.Letter.Text == "" {
 			if full := in.prefix + ref.i.Subject.Text; !strings.EqualFold(full, "board") {
@@ -173,7 +173,7 @@ func (b *builder) subjects(in *instance) map[string][]*Element {
 			}
 		}
 	}
-	if len(wanted) == 0 {
+	if len(wanted.names) == 0 {
 		return found
 	}
 	for _, e := range b.circuit.Elements[in.start:] {
@@ -193,6 +193,9 @@ type given struct {
 	key     string
 }
 
+// mostNamesakes bounds how many parts of one designator a line is applied to.
+const mostNamesakes = 20
+
 // declare applies one line to the elements it names: one, or all that share the
 // name by mistake.
 func (b *builder) declare(in *instance, ref intentRef, elements []*Element, seen map[given]bool) {
@@ -200,7 +203,7 @@ func (b *builder) declare(in *instance, ref intentRef, elements []*Element, seen
 		b.noSubject(in, ref)
 		return
 	}
-	for _, e := range elements {
+	for _, e := range elements[:min(len(elements), mostNamesakes)] {
 		for _, pair := range ref.i.Pairs {
 			mark := given{e.Index, strings.ToLower(pair.Key.Text)}
 			if seen[mark] {
@@ -222,17 +225,15 @@ func (b *builder) declare(in *instance, ref intentRef, elements []*Element, seen
 // noSubject says what is wrong with a line whose subject is not there.
 func (b *builder) noSubject(in *instance, ref intentRef) {
 	at, shown := ref.deck.Span(ref.i.Subject), source.Visible(in.prefix+ref.i.Subject.Text)
-	for i := range in.scope.cards {
-		c := &in.scope.cards[i]
-		if !strings.EqualFold(c.e.Name.Text, ref.i.Subject.Text) {
-			continue
-		}
-		if f := c.e.Fields; len(f) > 0 && in.scope.findSubckt(f[len(f)-1].Text) != nil {
-			b.inside(in, at, "%s is a subcircuit; a line names a part inside it, as %s.R1", shown, shown)
-		}
-		return // its card was told about, or does not count
+	i, ok := in.scope.names.find(ref.i.Subject.Text)
+	if !ok {
+		b.inside(in, at, "no element is called %s", shown)
+		return
 	}
-	b.inside(in, at, "no element is called %s", shown)
+	// A card that is no element: it was told about, or is a subcircuit.
+	if f := in.scope.named[i].e.Fields; len(f) > 0 && in.scope.findSubckt(f[len(f)-1].Text) != nil {
+		b.inside(in, at, "%s is a subcircuit; a line names a part inside it, as %s.R1", shown, shown)
+	}
 }
 
 // takePart gives an element the ratings of another part name.

@@ -1,6 +1,7 @@
 package circuit
 
 import (
+	"slices"
 	"strings"
 
 	"standoff/netlist/part"
@@ -22,6 +23,7 @@ type instance struct {
 	all    map[byte]*Intent // what "all" lines of this instance and around it declare
 	chosen map[*ifGroup]int // which branches of .if it takes
 	models map[*modelDef]*part.Ratings
+	picked map[picked]*modelDef
 }
 
 // noNode stands for a node that was not made yet.
@@ -235,9 +237,50 @@ func (p *placing) pair(keys ...string) (syntax.Value, bool) {
 	return syntax.Value{}, false
 }
 
-// model finds a model of the netlist as this instance sees it.
+// model finds a model of the netlist as this instance sees it: of several with
+// one name the last that stands in no branch, or in one that is taken.
 func (p *placing) model(name string) *modelDef {
-	return p.in.scope.findModel(name, func(g *guard) bool { return p.b.holds(p.in, g) })
+	name = strings.ToLower(name)
+	for s := p.in.scope; s != nil; s = s.parent {
+		defs := s.models[name]
+		if len(defs) == 0 {
+			continue
+		}
+		key := picked{s, name}
+		def, known := p.in.picked[key]
+		if !known {
+			def = p.pick(defs)
+			if len(defs) > 1 {
+				p.in.keepPick(key, def)
+			}
+		}
+		if def != nil {
+			return def
+		}
+	}
+	return nil
+}
+
+func (p *placing) pick(defs []*modelDef) *modelDef {
+	for _, def := range slices.Backward(defs) {
+		if p.b.holds(p.in, def.guard) {
+			return def
+		}
+	}
+	return nil
+}
+
+// picked is a name of several models of a scope.
+type picked struct {
+	scope *scope
+	name  string
+}
+
+func (in *instance) keepPick(key picked, def *modelDef) {
+	if in.picked == nil {
+		in.picked = map[picked]*modelDef{}
+	}
+	in.picked[key] = def
 }
 
 // use marks a model of the netlist as used.

@@ -1,7 +1,6 @@
 package circuit
 
 import (
-	"slices"
 	"strings"
 
 	"standoff/netlist/part"
@@ -24,11 +23,14 @@ type scope struct {
 	models  map[string][]*modelDef
 	subckts map[string]*scope
 
-	nodes    index      // every node name met
+	nodes    *index     // every node name met
 	slots    []nodeSlot // by the number of the name
 	couples  bool       // it has K cards
 	asksPart map[string]syntax.IntentPair
-	placed   bool         // it was used
+	placed   bool   // it was used
+	names    *index // designators, with their first cards
+	named    []*cardRef
+	words    int          // of all its cards
 	insides  *deviceGuess // what its insides look like; worked out on first use
 }
 
@@ -101,28 +103,24 @@ func (s *scope) findSubckt(name string) *scope {
 }
 
 // findModel looks a model up from here outwards. Of several with one name the
-// last that counts wins; holds says which count.
-func (s *scope) findModel(name string, holds func(*guard) bool) *modelDef {
+// last counts.
+func (s *scope) findModel(name string) *modelDef {
 	name = strings.ToLower(name)
 	for ; s != nil; s = s.parent {
-		for _, def := range slices.Backward(s.models[name]) {
-			if def.guard == nil || holds(def.guard) {
-				return def
-			}
+		if defs := s.models[name]; len(defs) > 0 {
+			return defs[len(defs)-1]
 		}
 	}
 	return nil
 }
-
-// always is for looking models up where no instance is at hand.
-func always(*guard) bool { return true }
 
 // slot returns the number of a node name in a scope.
 func (b *builder) slot(s *scope, w syntax.Word, deck *syntax.Deck) int32 {
 	if s.nodes == nil {
 		b.firstSlots(s)
 	}
-	if i, ok := s.nodes.find(w.Text); ok {
+	i, fresh := s.nodes.add(w.Text)
+	if !fresh {
 		return i
 	}
 	kind := ownNode
@@ -133,20 +131,19 @@ func (b *builder) slot(s *scope, w syntax.Word, deck *syntax.Deck) int32 {
 		kind = globalNode
 	}
 	s.slots = append(s.slots, nodeSlot{kind, w.Start, w.Text, deck})
-	return s.nodes.add(w.Text)
+	return i
 }
 
 // firstSlots numbers the pins of a subcircuit. A pin name that stands twice in
 // the header means its first place.
 func (b *builder) firstSlots(s *scope) {
-	s.nodes = make(index, len(s.cards))
+	s.nodes = newIndex(len(s.cards))
 	s.slots = make([]nodeSlot, 0, len(s.cards)+len(s.pins))
 	if s.header == nil {
 		return
 	}
 	for _, pin := range s.header.Nodes {
-		if _, ok := s.nodes.find(pin.Text); !ok {
-			s.nodes.add(pin.Text)
+		if _, fresh := s.nodes.add(pin.Text); fresh {
 			s.slots = append(s.slots, nodeSlot{pinNode, pin.Start, pin.Text, s.deck})
 		}
 	}

@@ -73,6 +73,7 @@ func (b *builder) model(def *modelDef, in *instance) *part.Ratings {
 	if r := at.models[def]; r != nil {
 		return r
 	}
+	b.work += len(def.m.Pairs)
 	resolve := func(v syntax.Value) (float64, bool) {
 		x, err := at.env.value(v)
 		return x, err == nil

@@ -2,7 +2,6 @@ package circuit
 
 import (
 	"math"
-	"strings"
 
 	"standoff/netlist/quantity"
 )
@@ -16,11 +15,12 @@ func (c *Circuit) With(values map[string]float64) *Circuit {
 	copy(other.Elements, c.Elements)
 	other.Nodes = make([]Node, len(c.Nodes))
 	copy(other.Nodes, c.Nodes)
-	wanted := make(index, len(values))
+	wanted := newIndex(len(values))
 	numbers := make([]float64, 0, len(values))
 	for name, v := range values {
-		wanted[strings.ToLower(name)] = int32(len(numbers))
-		numbers = append(numbers, v)
+		if _, fresh := wanted.add(name); fresh {
+			numbers = append(numbers, v)
+		}
 	}
 	for i, e := range c.Elements {
 		if at, ok := wanted.find(e.Designator); ok {
