@@ -138,9 +138,10 @@ func (c *collector) element(s *syntax.Statement) {
 
 func (c *collector) params(pairs []syntax.Pair) {
 	top := c.top()
+	foreseen := c.scanned && len(c.blocks) == 0 && c.in == ""
 	for _, p := range pairs {
 		top.params = append(top.params, paramRef{p, c.guard()})
-		if top.parent == nil && c.b.early != nil {
+		if top.parent == nil && c.b.early != nil && !foreseen {
 			c.b.early.set(p)
 		}
 	}

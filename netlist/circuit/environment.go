@@ -17,6 +17,7 @@ type environment struct {
 	outer  *environment
 	values map[string]*parameter
 	worked []*parameter // those that were worked out
+	failed bool         // one of them could not be
 	b      *builder
 }
 
@@ -88,10 +89,15 @@ func (e *environment) put(p syntax.Pair, in *environment) {
 	e.values[strings.ToLower(p.Key.Text)] = &parameter{value: p.Value, env: in}
 }
 
-// set gives a name a value after others were worked out, which may have hung on
-// it.
+// set gives a name a value after others were worked out. They are worked out
+// anew where they may have hung on it.
 func (e *environment) set(p syntax.Pair) {
+	_, known := e.values[strings.ToLower(p.Key.Text)]
 	e.put(p, e)
+	if !known && !e.failed {
+		return
+	}
+	e.failed = false
 	for _, w := range e.worked {
 		w.state = notWorked
 	}
@@ -126,9 +132,7 @@ func (c *collector) lookAhead() {
 			depth--
 		case s.Param != nil && depth <= 0:
 			for _, p := range s.Param.Pairs {
-				if _, known := c.b.early.values[strings.ToLower(p.Key.Text)]; !known {
-					c.b.early.put(p, c.b.early)
-				}
+				c.b.early.put(p, c.b.early)
 			}
 		}
 	}
@@ -171,6 +175,7 @@ func (e *environment) work(p *parameter, name string, depth int) (float64, error
 	p.state = beingWorked
 	p.v, p.err = p.env.valueAt(p.value, depth+1)
 	p.state = isWorked
+	e.failed = e.failed || p.err != nil
 	e.worked = append(e.worked, p)
 	return p.v, p.err
 }
