@@ -18,14 +18,24 @@ type Unchecked struct {
 // unchecked lists what the chosen rules could not judge.
 func unchecked(b *netlist.Board, opts Options) []Unchecked {
 	var list []Unchecked
-	anchors := map[*circuit.Element]bool{}
 	for _, a := range b.Accounts {
-		anchors[a.Stage.Anchor] = true
 		for _, u := range a.Unchecked {
 			if u.Rule == "" || opts.chooses(u.Rule) {
 				list = append(list, Unchecked{u.Rule, a.Stage.Anchor.Designator, u.Because})
 			}
 		}
+	}
+	return append(list, Unstaged(b)...)
+}
+
+// Unstaged lists what belongs to no stage that was recognised, though it could:
+// trigger devices and thyristors, parts that nobody knows, subcircuits that no
+// card uses.
+func Unstaged(b *netlist.Board) []Unchecked {
+	var list []Unchecked
+	anchors := map[*circuit.Element]bool{}
+	for _, a := range b.Accounts {
+		anchors[a.Stage.Anchor] = true
 	}
 	for _, e := range b.Circuit.Elements {
 		if why := noStage(e); why != "" && !anchors[e] {
@@ -33,7 +43,8 @@ func unchecked(b *netlist.Board, opts Options) []Unchecked {
 		}
 	}
 	for _, s := range b.Circuit.UnusedSubckts {
-		list = append(list, Unchecked{"", s.Name, "the subcircuit is defined and no card uses it: nothing in it was looked at"})
+		list = append(list, Unchecked{"", s.Name,
+			"the subcircuit is defined and no card uses it: nothing in it was looked at"})
 	}
 	return list
 }

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 	"io"
 	"io/fs"
@@ -16,37 +17,50 @@ import (
 	"standoff/netlist"
 	"standoff/netlist/part"
 	"standoff/netlist/source"
+	"standoff/rules/report"
 )
 
-// extensions are the endings of netlists in a searched folder.
-var extensions = []string{".cir", ".net", ".sp", ".spice", ".ckt", ".cki"}
+// isNetlist reports whether a file in a searched folder is taken for a netlist.
+func isNetlist(path string) bool {
+	switch strings.ToLower(filepath.Ext(path)) {
+	case ".cir", ".net", ".sp", ".spice", ".ckt", ".cki":
+		return true
+	}
+	return false
+}
 
 // readFlags are the flags of every command that reads boards.
 type readFlags struct {
-	parts, include []string
+	parts, include, limits []string
 }
 
 func (f *readFlags) add(c *cobra.Command) {
-	c.Flags().StringArrayVar(&f.parts, "parts", nil, "a file of .model cards with more ratings (may be "+
-		"given again)")
-	c.Flags().StringArrayVar(&f.include, "include", nil, "a folder from which netlists may include files "+
-		"(may be given again)")
+	c.Flags().StringArrayVar(&f.parts, "parts", nil,
+		"`FILE` of .model cards with more ratings (may be given again)")
+	c.Flags().StringArrayVar(&f.include, "include", nil,
+		"`DIR` from which netlists may include files, besides their own (may be given again)")
+	c.Flags().StringArrayVar(&f.limits, "limit", nil, "`NAME=N` moves a limit (may be given again)")
+	c.Long += "\n\n" + limitsHelp()
 }
 
-// options reads the --parts files.
+// options takes the flags over and reads the --parts files.
 func (f *readFlags) options(s *streams) (netlist.Options, error) {
 	opts := netlist.Options{IncludeDirs: f.include}
+	if err := setLimits(&opts, f.limits); err != nil {
+		return opts, err
+	}
+	for _, dir := range f.include {
+		if info, err := os.Stat(dir); err != nil || !info.IsDir() {
+			return opts, fmt.Errorf("--include %s: there is no such folder", dir)
+		}
+	}
 	for _, path := range f.parts {
-		file, err := source.Read(path, source.Limits{})
+		file, err := source.Read(path, opts.FileLimits)
 		if err != nil {
 			return opts, err
 		}
 		list, problems := part.ParseFile(file)
-		for _, p := range problems {
-			at := p.Span.Position()
-			fmt.Fprintf(s.err, "%s:%d:%d: %s\n", source.Visible(at.Path), at.Line, at.Column, p.Message)
-		}
-		if len(problems) > 0 {
+		if s.tellProblems(problems); len(problems) > 0 {
 			return opts, fmt.Errorf("%s has cards that cannot be used", path)
 		}
 		opts.Parts = append(opts.Parts, list...)
@@ -55,7 +69,8 @@ func (f *readFlags) options(s *streams) (netlist.Options, error) {
 }
 
 // find turns arguments into files: folders are searched, in the order of names.
-func find(args []string) ([]string, error) {
+// What cannot be searched is told, and the work goes on.
+func (s *streams) find(args []string) ([]string, error) {
 	if len(args) == 0 {
 		args = []string{"."}
 	}
@@ -66,39 +81,45 @@ func find(args []string) ([]string, error) {
 			paths = append(paths, arg) // a file, or one that reading will complain about
 			continue
 		}
-		var found []string
-		err = filepath.WalkDir(arg, func(path string, d fs.DirEntry, err error) error {
-			switch {
-			case err != nil:
-				return err
-			case d.IsDir() && path != arg && strings.HasPrefix(d.Name(), "."):
-				return filepath.SkipDir
-			case !d.IsDir() && slices.Contains(extensions, strings.ToLower(filepath.Ext(path))):
-				found = append(found, path)
-			}
-			return nil
-		})
-		if err != nil {
-			return nil, err
-		}
+		found := s.search(arg)
 		slices.Sort(found)
 		paths = append(paths, found...)
 	}
-	if len(paths) == 0 {
-		return nil, fmt.Errorf("no netlist here (%s)", strings.Join(extensions, " "))
+	if len(paths) == 0 && s.status == exitClean {
+		return nil, errors.New("no netlist here (.cir .net .sp .spice .ckt .cki)")
 	}
 	return paths, nil
+}
+
+// search lists the netlists below a folder; folders with a point in front are
+// left out.
+func (s *streams) search(folder string) []string {
+	var found []string
+	_ = filepath.WalkDir(folder, func(path string, d fs.DirEntry, err error) error {
+		switch {
+		case err != nil:
+			s.trouble(fmt.Errorf("%s cannot be searched", path))
+			return nil
+		case d.IsDir() && path != folder && strings.HasPrefix(d.Name(), "."):
+			return filepath.SkipDir
+		case !d.IsDir() && isNetlist(path):
+			found = append(found, path)
+		}
+		return nil
+	})
+	return found
 }
 
 // each works on every path on all cores and hands the results on in their
 // order. A path that cannot be read is told and makes the exit status 2.
 func each[T any](s *streams, args []string, opts netlist.Options, work func(*netlist.Board) T) ([]T, error) {
-	paths, err := find(args)
+	paths, err := s.find(args)
 	if err != nil {
 		return nil, err
 	}
 	type outcome struct {
 		value T
+		told  []source.Problem
 		err   error
 	}
 	outcomes := make([]outcome, len(paths))
@@ -107,11 +128,16 @@ func each[T any](s *streams, args []string, opts netlist.Options, work func(*net
 	for range min(runtime.GOMAXPROCS(0), len(paths)) {
 		wait.Go(func() {
 			for i := range next {
+				o := &outcomes[i]
 				b, err := s.read(paths[i], opts)
-				if err == nil {
-					outcomes[i].value = work(b)
+				switch {
+				case err != nil:
+					o.err = err
+				case b.NothingRead:
+					o.told, o.err = b.Problems, fmt.Errorf("%s: nothing could be read", paths[i])
+				default:
+					o.value = work(b)
 				}
-				outcomes[i].err = err
 			}
 		})
 	}
@@ -120,11 +146,11 @@ func each[T any](s *streams, args []string, opts netlist.Options, work func(*net
 	}
 	close(next)
 	wait.Wait()
-	var results []T
+	results := make([]T, 0, len(paths))
 	for _, o := range outcomes {
 		if o.err != nil {
-			fmt.Fprintf(s.err, "standoff: %s\n", source.Visible(o.err.Error()))
-			s.status = exitFailed
+			s.tellProblems(o.told)
+			s.trouble(o.err)
 			continue
 		}
 		results = append(results, o.value)
@@ -132,28 +158,38 @@ func each[T any](s *streams, args []string, opts netlist.Options, work func(*net
 	return results, nil
 }
 
-// read reads one board; one of which nothing could be read is an error.
+// read reads one board.
 func (s *streams) read(path string, opts netlist.Options) (*netlist.Board, error) {
-	var b *netlist.Board
-	var err error
-	if path == "-" {
-		data, readErr := io.ReadAll(io.LimitReader(s.in, 64<<20))
-		if readErr != nil {
-			return nil, fmt.Errorf("standard input cannot be read")
-		}
-		b, err = netlist.ReadText("-", data, opts)
-	} else {
-		b, err = netlist.Read(path, opts)
+	if path != "-" {
+		return netlist.Read(path, opts)
 	}
+	most := opts.FileLimits.FileBytes
+	if most <= 0 {
+		most = standardFileBytes
+	}
+	data, err := io.ReadAll(io.LimitReader(s.in, most+1))
+	switch {
+	case err != nil:
+		return nil, errors.New("standard input cannot be read")
+	case int64(len(data)) > most:
+		return nil, fmt.Errorf("standard input has more than %d bytes", most)
+	}
+	b, err := netlist.ReadText("-", data, opts)
 	if err != nil {
-		return nil, err
-	}
-	if b.NothingRead {
-		for _, p := range b.Problems {
-			at := p.Span.Position()
-			fmt.Fprintf(s.err, "%s:%d:%d: %s\n", source.Visible(at.Path), at.Line, at.Column, p.Message)
-		}
-		return nil, fmt.Errorf("%s: nothing could be read: no element card in it", path)
+		return nil, fmt.Errorf("standard input: %w", err)
 	}
 	return b, nil
+}
+
+// tellProblems writes what is wrong with a file that cannot be used.
+func (s *streams) tellProblems(list []source.Problem) {
+	for _, p := range list {
+		fmt.Fprintf(s.err, "%s: %s\n", report.Place(p.Span), source.Visible(p.Message))
+	}
+}
+
+// trouble tells that part of the job could not be done.
+func (s *streams) trouble(err error) {
+	fmt.Fprintf(s.err, "standoff: %s\n", source.Visible(err.Error()))
+	s.status = exitFailed
 }

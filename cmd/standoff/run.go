@@ -6,10 +6,10 @@ import (
 	"fmt"
 	"io"
 	"os"
+	"strconv"
 
 	"github.com/spf13/cobra"
 
-	"standoff/netlist/source"
 	"standoff/rules/report"
 )
 
@@ -33,20 +33,21 @@ var errFound = errors.New("found")
 
 // run is the whole program: arguments and streams in, exit status out.
 func run(args []string, in io.Reader, out, trouble io.Writer) int {
-	buffered := bufio.NewWriter(out)
-	defer buffered.Flush()
+	buffered := bufio.NewWriterSize(out, 64<<10)
 	s := &streams{in: in, out: buffered, err: trouble, terminal: isTerminal(out)}
 	root := newRoot(s)
 	root.SetArgs(args)
 	root.SetOut(buffered)
 	root.SetErr(trouble)
 	err := root.Execute()
+	if flushed := buffered.Flush(); flushed != nil {
+		s.trouble(fmt.Errorf("the report could not be written: %w", flushed))
+	}
 	switch {
-	case errors.Is(err, errFound):
-		return exitFound
-	case err != nil:
-		fmt.Fprintf(trouble, "standoff: %s\n", source.Visible(err.Error()))
-		return exitFailed
+	case err != nil && !errors.Is(err, errFound):
+		s.trouble(err)
+	case err != nil && s.status == exitClean:
+		s.status = exitFound
 	}
 	return s.status
 }
@@ -64,13 +65,13 @@ func newRoot(s *streams) *cobra.Command {
 	root := &cobra.Command{
 		Use:   "standoff",
 		Short: "Checks netlists of unijunction and thyristor trigger stages",
-		Long: "standoff reads netlists, recognises relaxation oscillators and thyristor gates, works out " +
-			"their worst case over every\n" +
-			"spread, and says what will go wrong on some board, why, and which value would put it right.\n\n" +
-			"Exit status: 0 nothing at or above --fail-at, 1 something, 2 the job could not be done.\n" +
-			"Limits: files of 64 MiB, subcircuits and includes 40 deep, 2,000,000 elements, expressions 200 " +
-			"brackets deep.\n" +
-			"Work on mains and on charged capacitors can kill: keep to local codes and leave it to licensed people.",
+		Long: "standoff reads netlists, recognises relaxation oscillators and thyristor gates, works out their\n" +
+			"worst case over every spread, and says what will go wrong on some board, why, and which value would\n" +
+			"put it right.\n\n" +
+			"Exit status: 0 nothing at or above --fail-at, 1 something, 2 the job could not be done.\n\n" +
+			limitsHelp() +
+			"\nWork on mains and on charged capacitors can kill: keep to the local codes and leave it to licensed\n" +
+			"people.",
 		SilenceErrors: true, SilenceUsage: true,
 	}
 	root.CompletionOptions.DisableDefaultCmd = true
@@ -81,6 +82,9 @@ func newRoot(s *streams) *cobra.Command {
 // paint returns how the terminal is written to.
 func (s *streams) paint(mode string) (report.Terminal, error) {
 	t := report.Terminal{Width: 100}
+	if columns, err := strconv.Atoi(os.Getenv("COLUMNS")); err == nil && s.terminal {
+		t.Width = min(columns, 120)
+	}
 	switch mode {
 	case "always":
 		t.Colour = true

@@ -43,8 +43,9 @@ func RulesMarkdown(w io.Writer, list []*rule.Rule) {
 			group = r.Group
 			fmt.Fprintf(w, "\n## %s\n", group)
 		}
-		fmt.Fprintf(w, "\n### %s\n\n%s\n\n%s\n\nFormula: `%s`\n\nSource: "+
-			"%s\n\nFails:\n\n```\n%s```\n\nMended:\n\n```\n%s```\n", r.ID, r.Title, r.Why, r.Formula, r.Source, r.Failing, r.Mended)
+		fmt.Fprintf(w, "\n### %s\n\n%s\n\n%s\n\n", r.ID, r.Title, r.Why)
+		fmt.Fprintf(w, "Formula: `%s`\n\nSource: %s\n\n", r.Formula, r.Source)
+		fmt.Fprintf(w, "Fails:\n\n```\n%s```\n\nMended:\n\n```\n%s```\n", r.Failing, r.Mended)
 	}
 }
 
@@ -67,7 +68,7 @@ func (t Terminal) RuleList(w io.Writer, list []*rule.Rule) {
 func (t Terminal) Explain(w io.Writer, r *rule.Rule) {
 	fmt.Fprintf(w, "%s  (%s)\n\n", t.paint(r.ID, color.Bold), r.Group)
 	for _, text := range []string{r.Title, r.Why, "Formula: " + r.Formula, "Source: " + r.Source} {
-		for _, line := range wrap(text, max(t.Width, 40)-2) {
+		for _, line := range wrap(text, t.columns()-2) {
 			fmt.Fprintf(w, "  %s\n", line)
 		}
 		fmt.Fprintln(w)
@@ -95,7 +96,19 @@ func (t Terminal) PartList(w io.Writer, list []*part.Ratings) {
 // trust says how far the row as a whole can be trusted.
 func trust(r *part.Ratings) string { return r.Texts["mark"] }
 
-var markWords = map[part.Mark]string{part.Declared: "declared", part.Read: "read", part.Scan: "damaged scan", part.Memory: "from memory", part.Assumed: "assumed"}
+func markWords(m part.Mark) string {
+	switch m {
+	case part.Declared:
+		return "declared"
+	case part.Read:
+		return "read"
+	case part.Scan:
+		return "damaged scan"
+	case part.Memory:
+		return "from memory"
+	}
+	return "assumed"
+}
 
 // Part writes one part's ratings.
 func (t Terminal) Part(w io.Writer, r *part.Ratings) {
@@ -118,7 +131,7 @@ func (t Terminal) Part(w io.Writer, r *part.Ratings) {
 			}
 			return quantity.Format(v, s.Unit)
 		}
-		fmt.Fprintf(w, "  %-12s %12s %12s %12s  %-13s "+
-			"%s\n", s.Name, cell(f.Min, f.HasMin), cell(f.Typ, f.HasTyp), cell(f.Max, f.HasMax), markWords[f.Mark], s.Meaning)
+		fmt.Fprintf(w, "  %-12s %12s %12s %12s  %-13s %s\n", s.Name, cell(f.Min, f.HasMin), cell(f.Typ, f.HasTyp),
+			cell(f.Max, f.HasMax), markWords(f.Mark), s.Meaning)
 	}
 }

@@ -4,11 +4,15 @@
 package report
 
 import (
+	"bytes"
 	"encoding/json"
+	"fmt"
 	"io"
 	"math"
+	"unicode"
+	"unicode/utf16"
+	"unicode/utf8"
 
-	"standoff/netlist"
 	"standoff/netlist/operating"
 	"standoff/netlist/source"
 	"standoff/rules"
@@ -83,6 +87,7 @@ type (
 		Figure  *figureDoc        `json:"figure,omitempty"`
 		Corner  map[string]number `json:"corner,omitempty"`
 		Working string            `json:"working,omitempty"`
+		Assumed []string          `json:"assumed,omitempty"`
 		Advice  []adviceDoc       `json:"advice"`
 		None    string            `json:"advice_none,omitempty"`
 	}
@@ -99,10 +104,11 @@ type (
 		Text  string `json:"text"`
 	}
 	waivedDoc struct {
-		Rule   string `json:"rule"`
-		Stage  string `json:"stage"`
-		Reason string `json:"reason"`
-		Line   int    `json:"line"`
+		Rule   string   `json:"rule"`
+		Stage  string   `json:"stage"`
+		Parts  []string `json:"parts"`
+		Reason string   `json:"reason"`
+		Line   int      `json:"line"`
 	}
 	uncheckedDoc struct {
 		Rule    string `json:"rule"`
@@ -125,13 +131,14 @@ type (
 func JSON(w io.Writer, results []*rules.Result) error {
 	doc := lintDoc{Schema: "standoff.lint/1", Files: []lintFile{}, Totals: Count(results)}
 	for _, r := range results {
-		f := lintFile{Path: r.Board.Path, Findings: []findingDoc{}, Waived: []waivedDoc{}, Unchecked: []uncheckedDoc{},
-			Cautions: []cautionDoc{}, Problems: problems(r.Problems)}
+		f := lintFile{Path: r.Board.Path, Findings: []findingDoc{}, Waived: []waivedDoc{},
+			Unchecked: []uncheckedDoc{}, Cautions: []cautionDoc{}, Problems: problems(r.Problems)}
 		for _, x := range r.Findings {
 			f.Findings = append(f.Findings, finding(x))
 		}
 		for _, x := range r.Waived {
-			f.Waived = append(f.Waived, waivedDoc{x.Finding.Rule, x.Finding.Stage, x.Reason, x.Line})
+			f.Waived = append(f.Waived, waivedDoc{x.Finding.Rule, x.Finding.Stage, orNone(x.Finding.Parts),
+				x.Reason, x.Line})
 		}
 		for _, x := range r.Unchecked {
 			f.Unchecked = append(f.Unchecked, uncheckedDoc(x))
@@ -144,10 +151,36 @@ func JSON(w io.Writer, results []*rules.Result) error {
 	return write(w, doc)
 }
 
+// write writes a document. What a terminal might obey - control characters and
+// invisible ones - is written as an escape, which means the same.
 func write(w io.Writer, doc any) error {
-	e := json.NewEncoder(w)
+	var text bytes.Buffer
+	e := json.NewEncoder(&text)
 	e.SetIndent("", " ")
-	return e.Encode(doc)
+	if err := e.Encode(doc); err != nil {
+		return err
+	}
+	_, err := w.Write(escape(text.Bytes()))
+	return err
+}
+
+// escape writes everything in a JSON text that is not visible as \uNNNN.
+func escape(text []byte) []byte {
+	out := make([]byte, 0, len(text))
+	for len(text) > 0 {
+		r, size := utf8.DecodeRune(text)
+		switch {
+		case r < 0x7f || unicode.IsPrint(r):
+			out = append(out, text[:size]...)
+		case r > 0xffff:
+			a, b := utf16.EncodeRune(r)
+			out = fmt.Appendf(out, `\u%04x\u%04x`, a, b)
+		default:
+			out = fmt.Appendf(out, `\u%04x`, r)
+		}
+		text = text[size:]
+	}
+	return out
 }
 
 func problems(list []source.Problem) []problemDoc {
@@ -161,18 +194,24 @@ func problems(list []source.Problem) []problemDoc {
 
 func finding(f rule.Finding) findingDoc {
 	at := f.At.Position()
-	d := findingDoc{Rule: f.Rule, Grade: f.Grade.String(), Stage: f.Stage, Parts: f.Parts, File: at.Path, Line: at.Line,
-		Column: at.Column, Message: f.Message, Corner: corner(f.Corner), Working: f.Working, Advice: []adviceDoc{}, None: f.NoAdvice}
-	if d.Parts == nil {
-		d.Parts = []string{}
-	}
-	if f.Figure != nil {
-		d.Figure = &figureDoc{f.Figure.Name, number(f.Figure.Value), number(f.Figure.Limit), f.Figure.Bound, f.Figure.Unit}
+	d := findingDoc{Rule: f.Rule, Grade: f.Grade.String(), Stage: f.Stage, Parts: orNone(f.Parts), File: at.Path,
+		Line: at.Line, Column: at.Column, Message: f.Message, Corner: corner(f.Corner), Working: f.Working,
+		Assumed: f.Assumed, Advice: []adviceDoc{}, None: f.NoAdvice}
+	if k := f.Figure; k != nil {
+		d.Figure = &figureDoc{k.Name, number(k.Value), number(k.Limit), k.Bound, k.Unit}
 	}
 	for _, a := range f.Advice {
 		d.Advice = append(d.Advice, adviceDoc{a.Part, number(a.Value), a.Text})
 	}
 	return d
+}
+
+// orNone makes a list that JSON writes as [] where there is none.
+func orNone(list []string) []string {
+	if list == nil {
+		return []string{}
+	}
+	return list
 }
 
 func corner(c operating.Corner) map[string]number {
@@ -184,78 +223,4 @@ func corner(c operating.Corner) map[string]number {
 		m[s.Name] = number(s.Value)
 	}
 	return m
-}
-
-type (
-	sheetDoc struct {
-		Schema string      `json:"schema"`
-		Files  []sheetFile `json:"files"`
-	}
-	sheetFile struct {
-		Path     string       `json:"path"`
-		Stages   []stageDoc   `json:"stages"`
-		Problems []problemDoc `json:"problems"`
-	}
-	stageDoc struct {
-		Kind      string               `json:"kind"`
-		Anchor    string               `json:"anchor"`
-		Part      string               `json:"part"`
-		Order     []string             `json:"terminal_order"`
-		OrderFrom string               `json:"terminal_order_from"`
-		Roles     map[string][]string  `json:"roles"`
-		Drives    []string             `json:"drives"`
-		Figures   map[string]spreadDoc `json:"figures"`
-		Unchecked []uncheckedDoc       `json:"unchecked,omitempty"`
-	}
-	spreadDoc struct {
-		Low     number   `json:"low"`
-		Nominal number   `json:"nominal"`
-		High    number   `json:"high"`
-		Unit    string   `json:"unit"`
-		Working string   `json:"working"`
-		Assumed []string `json:"assumed,omitempty"`
-	}
-)
-
-// WorksheetJSON writes the stages in the form standoff.worksheet/1.
-func WorksheetJSON(w io.Writer, boards []*netlist.Board) error {
-	doc := sheetDoc{Schema: "standoff.worksheet/1", Files: []sheetFile{}}
-	for _, b := range boards {
-		f := sheetFile{Path: b.Path, Stages: []stageDoc{}, Problems: problems(b.Problems)}
-		for _, a := range b.Accounts {
-			f.Stages = append(f.Stages, stageOf(a))
-		}
-		doc.Files = append(doc.Files, f)
-	}
-	return write(w, doc)
-}
-
-func stageOf(a *operating.Account) stageDoc {
-	s := a.Stage
-	d := stageDoc{Kind: string(s.Kind), Anchor: s.Anchor.Designator, Part: s.Anchor.PartName, Roles: map[string][]string{},
-		Drives: []string{}, Figures: map[string]spreadDoc{}}
-	d.Order, d.OrderFrom = order(a)
-	for role, list := range s.Parts {
-		for _, e := range list {
-			d.Roles[string(role)] = append(d.Roles[string(role)], e.Designator)
-		}
-	}
-	for _, g := range s.Drives {
-		d.Drives = append(d.Drives, g.Anchor.Designator)
-	}
-	for _, f := range a.Figures {
-		d.Figures[f.Name] = spreadDoc{number(f.Low), number(f.Nominal), number(f.High), f.Unit, f.Working, f.Assumed}
-	}
-	for _, u := range a.Unchecked {
-		d.Unchecked = append(d.Unchecked, uncheckedDoc{u.Rule, s.Anchor.Designator, u.Because})
-	}
-	return d
-}
-
-// order returns the terminal order that was used and where it was taken from.
-func order(a *operating.Account) ([]string, string) {
-	if o := a.Stage.Order; o != nil && o.Followed {
-		return o.Wiring, "wiring"
-	}
-	return a.Stage.Anchor.Roles, string(a.Stage.Anchor.Order)
 }

@@ -3,6 +3,7 @@ package report
 import (
 	"io"
 	"path/filepath"
+	"strings"
 
 	"standoff/netlist/source"
 	"standoff/rules"
@@ -41,6 +42,12 @@ type (
 		Level     string          `json:"level"`
 		Message   sarifText       `json:"message"`
 		Locations []sarifLocation `json:"locations"`
+		// Suppressions tells of the waiver that set a result aside.
+		Suppressions []sarifSuppression `json:"suppressions,omitempty"`
+	}
+	sarifSuppression struct {
+		Kind          string `json:"kind"`
+		Justification string `json:"justification,omitempty"`
 	}
 	sarifLocation struct {
 		Physical sarifPhysical `json:"physicalLocation"`
@@ -72,17 +79,28 @@ func SARIF(w io.Writer, results []*rules.Result) error {
 	}
 	for _, r := range results {
 		for _, p := range r.Problems {
-			run.Results = append(run.Results, sarifResult{"unread", "error", sarifText{p.Message}, place(r, p.Span)})
+			run.Results = append(run.Results,
+				sarifResult{"unread", "error", sarifText{p.Message}, locations(r, p.Span), nil})
 		}
 		for _, f := range r.Findings {
-			run.Results = append(run.Results, sarifResult{f.Rule, levels[f.Grade], sarifText{f.Message + mend(f)}, place(r, f.At)})
+			run.Results = append(run.Results, resultOf(r, f))
+		}
+		for _, w := range r.Waived {
+			x := resultOf(r, w.Finding)
+			x.Suppressions = []sarifSuppression{{"inSource", w.Reason}}
+			run.Results = append(run.Results, x)
 		}
 	}
 	return write(w, sarifLog{"https://json.schemastore.org/sarif-2.1.0.json", "2.1.0", []sarifRun{run}})
 }
 
-// place is where a result lies; one without a place lies at the start of the file.
-func place(r *rules.Result, at source.Span) []sarifLocation {
+func resultOf(r *rules.Result, f rule.Finding) sarifResult {
+	return sarifResult{f.Rule, levels[f.Grade], sarifText{message(f) + remedy(f)}, locations(r, f.At), nil}
+}
+
+// locations is where a result lies; one without a place lies at the start of the
+// file.
+func locations(r *rules.Result, at source.Span) []sarifLocation {
 	p := at.Position()
 	if at.IsZero() {
 		p = source.Position{Path: r.Board.Path, Line: 1, Column: 1}
@@ -91,13 +109,17 @@ func place(r *rules.Result, at source.Span) []sarifLocation {
 	return []sarifLocation{{sarifPhysical{sarifArtifact{uri(p.Path)}, region}}}
 }
 
-// uri writes a path as a relative reference with everything unusual escaped.
+// uri writes a path as a reference with everything unusual escaped: a relative one,
+// or a file URI where the path is absolute.
 func uri(path string) string {
 	const hex = "0123456789ABCDEF"
 	var b []byte
+	if filepath.IsAbs(path) {
+		b = append(b, "file://"...)
+	}
 	for _, c := range []byte(filepath.ToSlash(path)) {
 		switch {
-		case c >= 'a' && c <= 'z', c >= 'A' && c <= 'Z', c >= '0' && c <= '9', c == '/', c == '.', c == '-', c == '_', c == '~':
+		case c >= 'a' && c <= 'z', c >= 'A' && c <= 'Z', c >= '0' && c <= '9', strings.IndexByte("/.-_~", c) >= 0:
 			b = append(b, c)
 		default:
 			b = append(b, '%', hex[c>>4], hex[c&15])

@@ -1,6 +1,7 @@
 package report
 
 import (
+	"cmp"
 	"fmt"
 	"io"
 	"strings"
@@ -62,19 +63,19 @@ func (t Terminal) file(w io.Writer, r *rules.Result) {
 	}
 	fmt.Fprintf(w, "%s%s\n", t.paint(source.Visible(r.Board.Path), color.Bold), title)
 	for _, p := range r.Problems {
-		fmt.Fprintln(w)
-		t.head(w, t.paint("UNREAD", color.FgRed, color.Bold), p.Span, "")
+		fmt.Fprintf(w, "\n  %s  %s\n", t.paint("UNREAD", color.FgRed, color.Bold), place(r, p.Span))
 		t.text(w, p.Message)
 		t.card(w, p.Span)
 	}
 	for _, f := range r.Findings {
-		fmt.Fprintln(w)
+		fmt.Fprintf(w, "\n  %s  %s  %s  %s\n", t.grade(f.Grade), place(r, f.At), t.paint(f.Rule, color.Bold),
+			source.Visible(about(f)))
 		t.finding(w, f)
 	}
 	t.list(w, "set aside by waivers", len(r.Waived), func(i int) string {
 		x := r.Waived[i]
-		return fmt.Sprintf("%s at %s, line "+
-			"%d: %s", x.Finding.Rule, source.Visible(x.Finding.Stage), x.Line, source.Visible(x.Reason))
+		return fmt.Sprintf("%s at %s, line %d: %s", x.Finding.Rule, about(x.Finding), x.Line,
+			cmp.Or(x.Reason, "no reason given"))
 	})
 	t.list(w, "not checked", len(r.Unchecked), func(i int) string {
 		x := r.Unchecked[i]
@@ -84,7 +85,29 @@ func (t Terminal) file(w io.Writer, r *rules.Result) {
 		return fmt.Sprintf("%s at %s: %s", x.Rule, x.Stage, x.Because)
 	})
 	t.list(w, "take care", len(r.Cautions), func(i int) string { return r.Cautions[i].Message })
-	fmt.Fprintf(w, "\n  %s\n", t.stages(r)+summary(Count([]*rules.Result{r})))
+	if said := len(r.Problems) + len(r.Findings) + len(r.Waived) + len(r.Unchecked) + len(r.Cautions); said > 0 {
+		fmt.Fprintln(w)
+	}
+	t.summary(w, t.stages(r)+summary(Count([]*rules.Result{r})))
+}
+
+// about names what a finding concerns: its stage, else its parts.
+func about(f rule.Finding) string { return cmp.Or(f.Stage, strings.Join(f.Parts, " ")) }
+
+// place names a line, and its file where that is not the board's own.
+func place(r *rules.Result, at source.Span) string {
+	p := at.Position()
+	if at.IsZero() || at.File == r.Board.File {
+		return fmt.Sprintf("line %d", max(p.Line, 1))
+	}
+	return fmt.Sprintf("%s line %d", source.Visible(p.Path), p.Line)
+}
+
+// summary writes the last line of a file.
+func (t Terminal) summary(w io.Writer, text string) {
+	for i, line := range wrap(text, t.columns()-4) {
+		fmt.Fprintf(w, "  %s%s\n", strings.Repeat("  ", min(i, 1)), line)
+	}
 }
 
 func (t Terminal) stages(r *rules.Result) string {
@@ -111,69 +134,96 @@ func summary(t Totals) string {
 	return text
 }
 
-// head writes the grade, the place and the rule.
-func (t Terminal) head(w io.Writer, grade string, at source.Span, id string) {
-	p := at.Position()
-	fmt.Fprintf(w, "  %s  line %d  %s\n", grade, p.Line, id)
-}
+// columns is the width that is written to: no less than 40.
+func (t Terminal) columns() int { return max(t.Width, 40) }
 
 // text writes a paragraph indented and wrapped.
 func (t Terminal) text(w io.Writer, text string) {
-	for _, line := range wrap(source.Visible(text), max(t.Width, 40)-6) {
+	for _, line := range wrap(source.Visible(text), t.columns()-6) {
 		fmt.Fprintf(w, "      %s\n", line)
 	}
 }
 
-// card shows the source line with the subject marked.
+// card shows the source line with the subject marked by carets. Of a line that is
+// too long the stretch around the subject is shown.
 func (t Terminal) card(w io.Writer, at source.Span) {
 	if at.IsZero() {
 		return
 	}
 	p := at.Position()
-	line := at.File.Line(p.Line)
-	shown := source.Visible(line)
-	before := utf8.RuneCountInString(source.Visible(string([]rune(line)[:min(p.Column-1, utf8.RuneCountInString(line))])))
-	marked := max(1, utf8.RuneCountInString(source.Visible(strings.SplitN(at.Text(), "\n", 2)[0])))
-	if room := max(t.Width, 40) - 10; utf8.RuneCountInString(shown) > room {
-		shown = string([]rune(shown)[:room-3]) + "..."
-		marked = max(1, min(marked, room-before))
+	line := []rune(at.File.Line(p.Line))
+	subject, _, _ := strings.Cut(at.Text(), "\n")
+	shown := []rune(source.Visible(string(line)))
+	before := utf8.RuneCountInString(source.Visible(string(line[:min(p.Column-1, len(line))])))
+	marked := max(1, utf8.RuneCountInString(source.Visible(strings.TrimRight(subject, "\r"))))
+	const gap = "..."
+	room := t.columns() - 8
+	if from := before + min(marked, room/2) - room + len(gap); from > 0 {
+		shown = append([]rune(gap), shown[from+len(gap):]...)
+		before -= from
 	}
-	fmt.Fprintf(w, "%5d | %s\n", p.Line, shown)
-	if before < max(t.Width, 40)-10 {
-		fmt.Fprintf(w, "      | %s%s\n", strings.Repeat(" ", before), strings.Repeat("^", marked))
+	if len(shown) > room {
+		shown = append(shown[:room-len(gap)], []rune(gap)...)
 	}
+	carets := strings.Repeat("^", max(1, min(marked, room-before)))
+	fmt.Fprintf(w, "%5d | %s\n      | %s%s\n", p.Line, string(shown), strings.Repeat(" ", before), carets)
 }
 
 func (t Terminal) finding(w io.Writer, f rule.Finding) {
-	t.head(w, t.grade(f.Grade), f.At, t.paint(f.Rule, color.Bold))
 	t.text(w, f.Message)
 	t.card(w, f.At)
+	if f.Figure != nil {
+		t.labelled(w, "figure", f.Figure.Name+" "+quantity.Format(f.Figure.Value, f.Figure.Unit)+bound(f.Figure))
+	}
 	if f.Working != "" {
-		t.labelled(w, "working", source.Visible(f.Working))
+		t.labelled(w, "working", f.Working)
 	}
 	if len(f.Corner) > 0 {
 		t.labelled(w, "on the board with", Settings(f.Corner))
 	}
+	if len(f.Assumed) > 0 {
+		t.labelled(w, "rests on", strings.Join(gathered(f.Assumed), "; "))
+	}
 	switch {
 	case len(f.Advice) > 0:
-		var words []string
-		for _, a := range f.Advice {
-			words = append(words, source.Visible(a.Part)+" = "+a.Text)
-		}
-		t.labelled(w, "mend", t.paint(strings.Join(words, " with "), color.FgGreen)+" clears it; the board "+
-			"was worked out anew with it")
+		t.labelled(w, "mend", rules.Words(f.Advice)+" clears it; the whole board was worked out anew with it")
 	case f.NoAdvice != "":
-		t.labelled(w, "mend", source.Visible(f.NoAdvice))
+		t.labelled(w, "mend", f.NoAdvice)
 	}
 }
 
-func (t Terminal) labelled(w io.Writer, label, text string) {
-	for i, line := range wrap(label+": "+text, max(t.Width, 40)-6) {
-		indent := "      "
-		if i > 0 {
-			indent = "        "
+// gathered brings all default spreads of a list into one entry, at its end.
+func gathered(notes []string) []string {
+	var list, spreads []string
+	for _, n := range notes {
+		name, ok := strings.CutPrefix(n, "spread of ")
+		if name, also := strings.CutSuffix(name, ": default"); ok && also {
+			spreads = append(spreads, name)
+		} else {
+			list = append(list, n)
 		}
-		fmt.Fprintf(w, "%s%s\n", indent, line)
+	}
+	if len(spreads) > 0 {
+		list = append(list, "default spreads of "+strings.Join(spreads, ", "))
+	}
+	return list
+}
+
+// bound tells the limit of a figure.
+func bound(f *rule.Figure) string {
+	if f.Bound == "min" {
+		return ", wanted at least " + quantity.Format(f.Limit, f.Unit)
+	}
+	return ", wanted at most " + quantity.Format(f.Limit, f.Unit)
+}
+
+// labelled writes a paragraph with what it is in front.
+func (t Terminal) labelled(w io.Writer, label, text string) {
+	for i, line := range wrap(source.Visible(label+": "+text), t.columns()-8) {
+		if i == 0 {
+			line = t.paint(label, color.Faint) + strings.TrimPrefix(line, label)
+		}
+		fmt.Fprintf(w, "      %s%s\n", strings.Repeat("  ", min(i, 1)), line)
 	}
 }
 
@@ -181,7 +231,7 @@ func (t Terminal) labelled(w io.Writer, label, text string) {
 func Settings(c operating.Corner) string {
 	var words []string
 	for _, s := range c {
-		words = append(words, source.Visible(s.Name)+" "+quantity.Format(s.Value, s.Unit))
+		words = append(words, s.Name+" "+quantity.Format(s.Value, s.Unit))
 	}
 	return strings.Join(words, ", ")
 }
@@ -192,7 +242,7 @@ func (t Terminal) list(w io.Writer, heading string, n int, line func(int) string
 	}
 	fmt.Fprintf(w, "\n  %s\n", heading)
 	for i := range n {
-		for k, part := range wrap(source.Visible(line(i)), max(t.Width, 40)-8) {
+		for k, part := range wrap(source.Visible(line(i)), t.columns()-8) {
 			lead := "    - "
 			if k > 0 {
 				lead = "      "
@@ -217,32 +267,4 @@ func wrap(text string, width int) []string {
 		line += word
 	}
 	return append(lines, line)
-}
-
-// Lines writes one finding a line: FILE:LINE:COLUMN: GRADE: MESSAGE [RULE].
-func Lines(w io.Writer, results []*rules.Result) {
-	for _, r := range results {
-		for _, p := range r.Problems {
-			at := p.Span.Position()
-			fmt.Fprintf(w, "%s:%d:%d: problem: %s\n", source.Visible(at.Path), at.Line, at.Column, oneLine(p.Message))
-		}
-		for _, f := range r.Findings {
-			at := f.At.Position()
-			fmt.Fprintf(w, "%s:%d:%d: %s: %s%s "+
-				"[%s]\n", source.Visible(at.Path), at.Line, at.Column, f.Grade, oneLine(f.Message), mend(f), f.Rule)
-		}
-	}
-}
-
-func oneLine(text string) string { return source.Visible(strings.Join(strings.Fields(text), " ")) }
-
-func mend(f rule.Finding) string {
-	if len(f.Advice) == 0 {
-		return ""
-	}
-	var words []string
-	for _, a := range f.Advice {
-		words = append(words, source.Visible(a.Part)+" = "+a.Text)
-	}
-	return "; " + strings.Join(words, " with ") + " clears it"
 }

@@ -12,6 +12,7 @@ import (
 	"standoff/netlist/quantity"
 	"standoff/netlist/source"
 	"standoff/netlist/stage"
+	"standoff/rules"
 )
 
 // Worksheet writes every stage with its roles and figures.
@@ -27,16 +28,18 @@ func (t Terminal) Worksheet(w io.Writer, boards []*netlist.Board) {
 		for _, a := range b.Accounts {
 			t.stage(w, a)
 		}
-		for _, p := range b.Problems {
-			at := p.Span.Position()
-			fmt.Fprintf(w, "\n  line %d could not be read: %s\n", at.Line, source.Visible(p.Message))
-		}
+		loose := rules.Unstaged(b)
+		t.list(w, "in no stage", len(loose), func(i int) string { return loose[i].Stage + ": " + loose[i].Because })
+		t.list(w, "could not be read", len(b.Problems), func(i int) string {
+			return Place(b.Problems[i].Span) + ": " + b.Problems[i].Message
+		})
 	}
 }
 
 func (t Terminal) stage(w io.Writer, a *operating.Account) {
 	s := a.Stage
-	fmt.Fprintf(w, "\n  %s  %s %s\n", t.paint(string(s.Kind), color.Bold), source.Visible(s.Anchor.Designator), source.Visible(s.Anchor.PartName))
+	fmt.Fprintf(w, "\n  %s  %s %s\n", t.paint(string(s.Kind), color.Bold), source.Visible(s.Anchor.Designator),
+		source.Visible(s.Anchor.PartName))
 	roles, from := order(a)
 	fmt.Fprintf(w, "    %-20s %s (%s)\n", "terminals", strings.Join(roles, " "), from)
 	for _, role := range stage.Roles {
@@ -55,13 +58,14 @@ func (t Terminal) stage(w io.Writer, a *operating.Account) {
 		fmt.Fprintf(w, "\n    %-32s %12s %12s %12s\n", "", "low", "nominal", "high")
 	}
 	for _, f := range a.Figures {
-		fmt.Fprintf(w, "    %-32s %12s %12s "+
-			"%12s\n", f.Name, quantity.Format(f.Low, f.Unit), quantity.Format(f.Nominal, f.Unit), quantity.Format(f.High, f.Unit))
-		for _, line := range wrap(source.Visible(f.Working), max(t.Width, 60)-8) {
+		show := func(v float64) string { return quantity.Format(v, f.Unit) }
+		fmt.Fprintf(w, "    %-32s %12s %12s %12s\n", f.Name, show(f.Low), show(f.Nominal), show(f.High))
+		for _, line := range wrap(source.Visible(f.Working), t.columns()-8) {
 			fmt.Fprintf(w, "        %s\n", line)
 		}
 	}
-	t.list(w, "  rests on", len(notes(a)), func(i int) string { return notes(a)[i] })
+	rests := gathered(notes(a))
+	t.list(w, "  rests on", len(rests), func(i int) string { return rests[i] })
 	t.list(w, "  not worked out", len(a.Unchecked), func(i int) string {
 		u := a.Unchecked[i]
 		if u.Rule != "" {
