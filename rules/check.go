@@ -61,11 +61,18 @@ func run(b *netlist.Board, opts Options) []rule.Finding {
 	return list
 }
 
+// path is the file that a finding lies in.
+func path(f rule.Finding) string {
+	if f.At.File == nil {
+		return ""
+	}
+	return f.At.File.Path
+}
+
 // compare orders findings by file, place, rule and then whatever tells them
 // apart, so that the order never depends on how they were found.
 func compare(a, b rule.Finding) int {
-	pa, pb := a.At.Position(), b.At.Position()
 	return cmp.Or(
-		cmp.Compare(pa.Path, pb.Path), cmp.Compare(a.At.Start, b.At.Start), cmp.Compare(a.Rule, b.Rule),
+		cmp.Compare(path(a), path(b)), cmp.Compare(a.At.Start, b.At.Start), cmp.Compare(a.Rule, b.Rule),
 		cmp.Compare(a.Stage, b.Stage), cmp.Compare(b.Grade, a.Grade), cmp.Compare(a.Message, b.Message))
 }

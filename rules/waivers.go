@@ -3,6 +3,7 @@ package rules
 import (
 	"fmt"
 	"strings"
+	"sync"
 
 	"standoff/netlist/circuit"
 	"standoff/netlist/source"
@@ -87,6 +88,7 @@ func judgeWaivers(c *circuit.Circuit, aside []Waived, opts Options) []rule.Findi
 	for _, w := range aside {
 		used[w.At] = true
 	}
+	onBoard := sync.OnceValue(func() map[string]bool { return designators(c) })
 	var list []rule.Finding
 	tell := func(w circuit.Waiver, id, message string) {
 		if opts.chooses(id) {
@@ -100,8 +102,14 @@ func judgeWaivers(c *circuit.Circuit, aside []Waived, opts Options) []rule.Findi
 		}
 		judged[w.At] = true
 		if !used[w.At] && opts.chooses(strings.ToLower(w.Rule)) {
+			why := "the rule finds nothing there"
+			if _, known := Find(strings.ToLower(w.Rule)); !known {
+				why = "there is no such rule (standoff rules lists them)"
+			} else if !onBoard()[strings.ToLower(w.Designator)] {
+				why = "there is no such part on this board"
+			}
 			tell(w, "waiver-unused", fmt.Sprintf("this waiver of %s at %s sets nothing aside: %s", rule.Name(w.Rule),
-				rule.Name(w.Designator), whyUnused(c, w)))
+				rule.Name(w.Designator), why))
 		}
 		if w.Reason == "" {
 			tell(w, "waiver-unexplained", "this waiver gives no reason; write one behind a colon")
@@ -110,15 +118,11 @@ func judgeWaivers(c *circuit.Circuit, aside []Waived, opts Options) []rule.Findi
 	return list
 }
 
-// whyUnused says what is wrong with a waiver that sets nothing aside.
-func whyUnused(c *circuit.Circuit, w circuit.Waiver) string {
-	if _, ok := Find(strings.ToLower(w.Rule)); !ok {
-		return "there is no such rule (standoff rules lists them)"
-	}
+// designators returns the names of all parts, in lower case.
+func designators(c *circuit.Circuit) map[string]bool {
+	names := make(map[string]bool, len(c.Elements))
 	for _, e := range c.Elements {
-		if strings.EqualFold(e.Designator, w.Designator) {
-			return "the rule finds nothing there"
-		}
+		names[strings.ToLower(e.Designator)] = true
 	}
-	return "there is no such part on this board"
+	return names
 }

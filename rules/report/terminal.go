@@ -91,8 +91,18 @@ func (t Terminal) file(w io.Writer, r *rules.Result) {
 	t.summary(w, t.stages(r)+summary(Count([]*rules.Result{r})))
 }
 
-// about names what a finding concerns: its stage, else its parts.
-func about(f rule.Finding) string { return cmp.Or(f.Stage, strings.Join(f.Parts, " ")) }
+// about names what a finding concerns: its stage, else its parts, the first few of
+// them.
+func about(f rule.Finding) string {
+	const few = 4
+	if f.Stage != "" {
+		return f.Stage
+	}
+	if more := len(f.Parts) - few; more > 0 {
+		return fmt.Sprintf("%s and %d more", strings.Join(f.Parts[:few], " "), more)
+	}
+	return strings.Join(f.Parts, " ")
+}
 
 // place names a line, and its file where that is not the board's own.
 func place(r *rules.Result, at source.Span) string {

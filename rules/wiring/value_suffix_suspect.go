@@ -32,21 +32,31 @@ func valueSuffixSuspect() *rule.Rule {
 				if !e.HasValue || e.Written == "" {
 					continue
 				}
-				measure := quantity.Format(e.Value.Nominal, unit(e.Kind))
-				read := fmt.Sprintf("%s was read as %s", rule.Name(e.Written), measure)
-				f := about(e, rule.Hold, "")
-				f.At = e.ValueAt
-				if text := s.absurd(e); text != "" {
-					f.Message = read + ": " + text
-					report(f)
-				} else if n, err := quantity.Parse(e.Written); err == nil && n.Trade {
+				f := about(e, rule.Hold, s.absurd(e))
+				if f.Message == "" && inTradeNotation(e.Written) {
 					f.Grade = rule.Remark
-					f.Message = read + "; write " + quantity.Short(e.Value.Nominal) + " so that every reader does"
+					f.Message = "write " + quantity.Short(e.Value.Nominal) + " so that every reader does"
+				}
+				if f.Message != "" {
+					f.At = e.ValueAt
+					f.Message = fmt.Sprintf("%s was read as %s: %s", rule.Name(e.Written),
+						quantity.Format(e.Value.Nominal, unit(e.Kind)), f.Message)
 					report(f)
 				}
 			}
 		},
 	}
+}
+
+// inTradeNotation reports whether a value has a letter in place of its point: 4k7.
+func inTradeNotation(written string) bool {
+	for i := 1; i < len(written); i++ { // most have no digit behind a letter: no need to read them
+		if written[i] >= '0' && written[i] <= '9' && written[i-1] >= 'A' {
+			n, err := quantity.Parse(written)
+			return err == nil && n.Trade
+		}
+	}
+	return false
 }
 
 func unit(k circuit.Kind) string {
