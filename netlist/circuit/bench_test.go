@@ -22,7 +22,8 @@ var decks = map[string]func(count int) string{
 	// A chain of stages of five elements each, with parameters and intent.
 	"stages": func(count int) string {
 		var b strings.Builder
-		b.WriteString(".subckt stage in out gnd R=1k\n.model DX d\nR1 in m {R}\nR2 M out {R*2}\nC1 m gnd 10n\nD1 m 0 DX\n" +
+		b.WriteString(".subckt stage in out gnd R=1k\n.model DX d\nR1 in m {R}\nR2 M out {R*2}\nC1 m gnd 10n\n" +
+			"D1 m 0 DX\n" +
 			"R3 out gnd 1k\n*> all R tol=1%\n*> C1 kind=c0g\n.ends\n")
 		for i := range count / 5 {
 			fmt.Fprintf(&b, "X%d N%d N%d 0 stage R=2k\n", i, i, i+1)

@@ -83,6 +83,7 @@ type builder struct {
 	scopes  []*scope
 	models  []*modelDef // of the netlist, in the order of the text
 	parts   partIndex   // of --parts files
+	looked  partIndex   // every name that was looked for, as it was written; nil where it is not there
 	globals map[string]NodeID
 	reach   map[string]NodeID             // inner nodes that the board names by their path
 	decks   map[*source.File]*syntax.Deck // included files, parsed once
@@ -133,6 +134,18 @@ type partIndex map[string]*part.Ratings
 // lookup finds a part as a --parts file has it, or the one it has in place of
 // the library's part of this name: a decorated name counts as the plain one.
 func (b *builder) lookup(name string) *part.Ratings {
+	if r, known := b.looked[name]; known {
+		return r
+	}
+	r := b.lookUp(name)
+	if b.looked == nil {
+		b.looked = map[string]*part.Ratings{}
+	}
+	b.looked[name] = r
+	return r
+}
+
+func (b *builder) lookUp(name string) *part.Ratings {
 	if b.parts == nil {
 		b.parts = partIndex{}
 		for _, p := range b.opts.Parts {

@@ -24,8 +24,9 @@ func isTrigger(k part.Kind) bool {
 // device makes everything that is told by a part name: semiconductors, trigger
 // devices on any letter, subcircuits.
 func (p *placing) device(letter byte) {
-	fields := p.words()
-	if len(fields) < 2 {
+	fields := p.words(letter)
+	pinless := letter == 'X' && len(fields) == 1 && p.in.scope.findSubckt(fields[0].Text) != nil
+	if len(fields) < 2 && !pinless {
 		p.fail(p.card.e.Name, "%s needs its nodes and a part name", p.shown())
 		return
 	}
@@ -35,7 +36,7 @@ func (p *placing) device(letter byte) {
 	ratings := p.ratings(taken)
 	sub := p.in.scope.findSubckt(name.Text)
 	switch {
-	case ratings != nil && isTrigger(ratings.Kind):
+	case ratings != nil && isTrigger(ratings.Kind) && !sub.namesake(ratings):
 		p.trigger(p.start(letter, Kind(ratings.Kind), nodes, name), ratings, sub)
 	case letter == 'X' && sub != nil:
 		if g := p.b.guess(sub); g != nil && len(g.roles) == at {
@@ -54,18 +55,43 @@ func (p *placing) device(letter byte) {
 	}
 }
 
-// words returns the fields without the slash before a cell name, the word
-// PARAMS: and the flag OFF.
-func (p *placing) words() []syntax.Value {
-	skip := func(v syntax.Value) bool {
-		return v.Text == "/" || v.Expr == nil && (strings.EqualFold(v.Text, "params:") || strings.EqualFold(v.Text, "off"))
+// namesake reports a subcircuit that only happens to be called like a part of
+// the library: it has another number of pins.
+func (s *scope) namesake(r *part.Ratings) bool {
+	if s == nil || r.Origin != "library" {
+		return false
 	}
+	hidden := r.Kind == part.SCR && len(s.pins) == 2
+	return len(libraryOrder(r.Kind, len(s.pins))) != len(s.pins) && !hidden
+}
+
+// words returns the fields without the word PARAMS:, the slash before a cell
+// name, and the flag OFF of a semiconductor.
+func (p *placing) words(letter byte) []syntax.Value {
 	fields := p.card.e.Fields
-	nodes := min(2, len(fields)) // where such a word is a node
-	if !slices.ContainsFunc(fields[nodes:], skip) {
-		return fields
+	least := leastNodes(letter)
+	skip := func(i int) bool {
+		switch word := fields[i].Text; {
+		case strings.EqualFold(word, "params:"):
+			return true
+		case word == "/":
+			return letter == 'X' && i == len(fields)-2
+		}
+		return least > 1 && i > least && strings.EqualFold(fields[i].Text, "off")
 	}
-	return append(slices.Clone(fields[:nodes]), slices.DeleteFunc(slices.Clone(fields[nodes:]), skip)...)
+	for i := range fields {
+		if !skip(i) {
+			continue
+		}
+		kept := slices.Clone(fields[:i])
+		for k := i + 1; k < len(fields); k++ {
+			if !skip(k) {
+				kept = append(kept, fields[k])
+			}
+		}
+		return kept
+	}
+	return fields
 }
 
 // leastNodes says how many nodes stand before the part name at least.
@@ -184,14 +210,16 @@ func (p *placing) hiddenCathode(e *Element, sub *scope) {
 	if len(roles) != 2 || roles[0] == roles[1] || slices.Contains(roles, "cathode") || !sub.namesGround() {
 		return
 	}
+	p.b.circuit.GroundNamed = true
 	e.Nodes = append(e.Nodes, Ground)
 	e.Roles, e.Order = append(roles, "cathode"), ByHeader
 }
 
 // namesGround reports whether a card of the subcircuit is wired to ground.
 func (s *scope) namesGround() bool {
+	grounded := func(f syntax.Value) bool { return isGround(strings.ToLower(f.Text)) }
 	return slices.ContainsFunc(s.cards, func(c cardRef) bool {
-		return slices.ContainsFunc(c.e.Fields, func(f syntax.Value) bool { return isGround(strings.ToLower(f.Text)) })
+		return slices.ContainsFunc(c.e.Fields, grounded)
 	})
 }
 

@@ -50,7 +50,8 @@ func (s *scope) cost(prefix int) int {
 func (p *placing) tooDeep(sub *scope) bool {
 	for at := p.in; at != nil; at = at.outer {
 		if at.scope == sub {
-			p.b.once("recursion "+sub.name, p.card.span(), "the subcircuit %s contains itself", source.Visible(sub.name))
+			p.b.once("recursion "+sub.name, p.card.span(), "the subcircuit %s contains itself",
+				source.Visible(sub.name))
 			return true
 		}
 	}

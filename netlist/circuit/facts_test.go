@@ -7,7 +7,8 @@ import (
 )
 
 func TestRepeats(t *testing.T) {
-	c := sound(t, "R1 a b 1\nr1 a b 2\nR1 a b 3\n.subckt s a\nR1 a 0 1\nR1 a 0 2\n.ends\nX1 a s\nX2 a s\nx1 a s\n"+
+	c := sound(t, "R1 a b 1\nr1 a b 2\nR1 a b 3\n.subckt s a\nR1 a 0 1\nR1 a 0 2\n.ends\nX1 a s\nX2 a s\n"+
+		"x1 a s\n"+
 		".subckt d a m=1\n.if(m)\nR5 a 0 1\n.else\nR5 a 0 2\n.endif\n.ends\nX3 a d")
 	var got []string
 	for _, r := range c.Repeats {
@@ -56,10 +57,12 @@ func TestGround(t *testing.T) {
 }
 
 func TestCouplings(t *testing.T) {
-	c := sound(t, "K1 L1 l2 0.99\nL1 a 0 1m\nL2 b 0 2m\n.subckt t a b\nL1 a 0 1m\nL2 b 0 1m\nL3 b c 1m\nK1 L1 L2 L3 1\n.ends\n"+
+	c := sound(t, "K1 L1 l2 0.99\nL1 a 0 1m\nL2 b 0 2m\n.subckt t a b\nL1 a 0 1m\nL2 b 0 1m\nL3 b c 1m\n"+
+		"K1 L1 L2 L3 1\n.ends\n"+
 		"X1 a b t\nX2 a b t\n.model CORE core\nK2 L1 L2 0.5 CORE")
-	for name, want := range map[string]string{"K1": "L1 L2", "X1.K1": "X1.L1 X1.L2 X1.L3", "X2.K1": "X2.L1 X2.L2 X2.L3",
-		"K2": "L1 L2"} {
+	for name, want := range map[string]string{"K1": "L1 L2", "X1.K1": "X1.L1 X1.L2 X1.L3",
+		"X2.K1": "X2.L1 X2.L2 X2.L3",
+		"K2":    "L1 L2"} {
 		var got []string
 		k := find(t, c, name)
 		for _, i := range k.Coupled {

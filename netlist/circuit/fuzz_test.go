@@ -12,12 +12,17 @@ import (
 // Whatever the text, a circuit comes out that hangs together.
 func FuzzBuild(f *testing.F) {
 	for _, seed := range []string{
-		"V1 a 0 SIN(0 325 50)\nR1 a b 4k7\nC1 b 0 1u\n*> board mains=207..253 ambient=0..50\n*> R1 travel=1k..10k tol=20%",
-		".subckt s a b R=1k\n.if(R>1)\nR1 a b {R}\n.else\nC1 a b 1n\n.endif\n*> R1 tol=1%\n.ends\nX1 a 0 s R={2*p}\n.param p=3",
-		"* TERMINALS: K G A\n.subckt C106D 1 2 3\nQ1 x g 3 N\nQ2 g x 1 P\n.model N npn\n.model P pnp\n.ends\nXS1 a g k C106D",
+		"V1 a 0 SIN(0 325 50)\nR1 a b 4k7\nC1 b 0 1u\n*> board mains=207..253 ambient=0..50\n" +
+			"*> R1 travel=1k..10k tol=20%",
+		".subckt s a b R=1k\n.if(R>1)\nR1 a b {R}\n.else\nC1 a b 1n\n.endif\n*> R1 tol=1%\n.ends\n" +
+			"X1 a 0 s R={2*p}\n.param p=3",
+		"* TERMINALS: K G A\n.subckt C106D 1 2 3\nQ1 x g 3 N\nQ2 g x 1 P\n.model N npn\n.model P pnp\n.ends\n" +
+			"XS1 a g k C106D",
 		"XQ1 e b1 b2 2N2646\n*> XQ1 pins=b2,e,b1 frequency=1..2 part=2N2647\n*> waive x XQ1 : y",
-		"K1 L1 L2 0.9\nL1 a 0 1m\nL2 b 0 1m\nQ1 c b e s QM 2\n.model QM npn\nT1 a b c d z0=50\nE1 a 0 POLY(1) b 0 1",
-		".global v\n.subckt a x\n.subckt b y\nR1 y v 1\n.ends\nX1 x b\n.ends\nX1 n a\nR2 X1.X1.m 0 1\n*> all R tol=1%\n*> X1.X1.R1 tol=2%",
+		"K1 L1 L2 0.9\nL1 a 0 1m\nL2 b 0 1m\nQ1 c b e s QM 2\n.model QM npn\nT1 a b c d z0=50\n" +
+			"E1 a 0 POLY(1) b 0 1",
+		".global v\n.subckt a x\n.subckt b y\nR1 y v 1\n.ends\nX1 x b\n.ends\nX1 n a\nR2 X1.X1.m 0 1\n" +
+			"*> all R tol=1%\n*> X1.X1.R1 tol=2%",
 		".lib tt\n.lib x tt\n.endl\n.include x\n.model M ujt(eta={q})\n.param q={q}",
 	} {
 		f.Add(seed)

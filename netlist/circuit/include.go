@@ -40,7 +40,8 @@ func (c *collector) include(i syntax.Include) {
 		depth: c.depth + 1, outer: c, section: section}
 	inner.run()
 	if section != "" && !inner.found {
-		b.problem(c.deck.Span(i.Section), "%s has no section %s", source.Visible(path), source.Visible(i.Section.Text))
+		b.problem(c.deck.Span(i.Section), "%s has no section %s", source.Visible(path),
+			source.Visible(i.Section.Text))
 	}
 }
 

@@ -65,23 +65,30 @@ func TestIncludes(t *testing.T) {
 	}
 	for _, c := range []struct{ name, text, want, told string }{
 		{"one in the other", ".include nest.inc", "R1 r a,0 5", ""},
-		{"the same twice counts once", ".include x.inc\n.include x.inc\n.include r.inc\n.include r.inc", "R1 r a,0 5", ""},
-		{"a missing file is told once", ".include gone\n.include gone\nR1 a 0 1", "R1 r a,0 1", "t.cir:2: gone is not there"},
+		{"the same twice counts once", ".include x.inc\n.include x.inc\n.include r.inc\n.include r.inc",
+			"R1 r a,0 5", ""},
+		{"a missing file is told once", ".include gone\n.include gone\nR1 a 0 1", "R1 r a,0 1",
+			"t.cir:2: gone is not there"},
 		{"nothing to say", ".include quiet\nR1 a 0 1", "R1 r a,0 1", ""},
-		{"a loop", ".include loop.inc", "R7 r a,0 7", "loop.inc:1: loop.inc includes itself; it is not read again"},
+		{"a loop", ".include loop.inc", "R7 r a,0 7",
+			"loop.inc:1: loop.inc includes itself; it is not read again"},
 		{"a bad card in it", ".include bad.inc", "R9 r a,0 9", "bad.inc:1: R8 needs two nodes and a value"},
 		{"its end is not ours", ".include end.inc\nR2 a 0 2", "R1 r a,0 1; R2 r a,0 2", ""},
 		{"a section that fetches another of its file", ".lib corner.lib tt", "R5 r a,0 1", ""},
 		{"another section", ".lib corner.lib SS\nR1 a 0 {x}", "R1 r a,0 2", ""},
 		{"what stands in no section", ".include corner.lib", "R6 r a,0 6", ""},
-		{"no such section", ".lib corner.lib ff\nR1 a 0 1", "R1 r a,0 1", "t.cir:2: corner.lib has no section ff"},
+		{"no such section", ".lib corner.lib ff\nR1 a 0 1", "R1 r a,0 1",
+			"t.cir:2: corner.lib has no section ff"},
 		{"a .lib that nothing closes names a file", ".lib plain\nR1 a 0 1", "R4 r a,0 4; R1 r a,0 1", ""},
-		{"for each subcircuit anew", ".subckt p c b e\n.include mod.inc\nQ1 c b e M\n.ends\n.subckt q c b e\n.include mod.inc\n" +
+		{"for each subcircuit anew", ".subckt p c b e\n.include mod.inc\nQ1 c b e M\n.ends\n.subckt q c b e\n" +
+			".include mod.inc\n" +
 			"Q1 c b e M\n.ends\nX1 c b e p\nX2 c b e q", "X1.Q1 npn c,b,e 0; X2.Q1 npn c,b,e 0", ""},
 		{"in a branch that is not taken", ".if(0)\n.include gone\n.endif\nR1 a 0 1", "R1 r a,0 1", ""},
-		{"under the condition of the subcircuit", ".param x=1\n.subckt p a on=0\n.if(on)\n.include r.inc\n.endif\nR2 a 0 2\n.ends\n" +
-			"X1 a p\nX2 a p on=1", "X1.R2 r a,0 2; X2.R1 r a,0 1; X2.R2 r a,0 2", ""},
-		{"the same subcircuit from two files", ".include sub.inc\n.subckt s a\nR1 a 0 1\n.ends\nX1 n s", "X1.R1 r n,0 1", ""},
+		{"under the condition of the subcircuit",
+			".param x=1\n.subckt p a on=0\n.if(on)\n.include r.inc\n.endif\nR2 a 0 2\n.ends\n" +
+				"X1 a p\nX2 a p on=1", "X1.R2 r a,0 2; X2.R1 r a,0 1; X2.R2 r a,0 2", ""},
+		{"the same subcircuit from two files", ".include sub.inc\n.subckt s a\nR1 a 0 1\n.ends\nX1 n s",
+			"X1.R1 r n,0 1", ""},
 		{"another of the same name", ".include sub.inc\n.subckt s a\nR1 a 0 2\n.ends\nX1 n s", "X1.R1 r n,0 1",
 			"t.cir:3: the subcircuit s is defined twice, and differently; the one on line 1 of sub.inc counts"},
 	} {
@@ -96,7 +103,8 @@ func TestIncludeLimits(t *testing.T) {
 	texts := map[string]string{}
 	for i := range 30 {
 		// Every file includes the next one twice, in two subcircuits: 2^30 of them.
-		texts[fmt.Sprint("f", i)] = fmt.Sprintf(".subckt a%d x\n.include f%d\n.ends\n.subckt b%d x\n.include f%d\n.ends\n",
+		texts[fmt.Sprint("f", i)] = fmt.Sprintf(".subckt a%d x\n.include f%d\n.ends\n.subckt b%d x\n"+
+			".include f%d\n.ends\n",
 			i, i+1, i, i+1)
 	}
 	texts["f30"] = "R1 a 0 1\n"

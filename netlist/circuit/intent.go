@@ -241,7 +241,8 @@ func (b *builder) takePart(in *instance, e *Element, pair syntax.IntentPair, dec
 	p := &placing{b: b, in: in}
 	r := p.ratings(pair.Value.Text)
 	if r == nil || r.Kind == "" {
-		b.inside(in, deck.Span(pair.Value), "part: nothing is known of the part %s", source.Visible(pair.Value.Text))
+		b.inside(in, deck.Span(pair.Value), "part: nothing is known of the part %s",
+			source.Visible(pair.Value.Text))
 		return
 	}
 	if kind := Kind(r.Kind); kind != e.Kind {

@@ -61,13 +61,15 @@ func TestEveryKey(t *testing.T) {
 	if i := intentOf(t, c, "C1 kind=X7R"); i.Kind != "x7r" {
 		t.Errorf("kind is %q", i.Kind)
 	}
-	if i := intentOf(t, s, "XS1 load=motor latch=ok"); i.Load != "motor" || !i.LatchOK || i.At["latch"].IsZero() {
+	if i := intentOf(t, s, "XS1 load=motor latch=ok"); i.Load != "motor" || !i.LatchOK ||
+		i.At["latch"].IsZero() {
 		t.Errorf("got %+v", i)
 	}
 }
 
 func TestBadIntent(t *testing.T) {
-	const r, c, v, q, s = "R1 a b 1k\n*> ", "C1 a b 1n\n*> ", "V1 a 0 9\n*> ", "XQ1 e x y 2N2646\n*> ", "XS1 a g k C106D\n*> "
+	const r, c, v, q, s = "R1 a b 1k\n*> ", "C1 a b 1n\n*> ", "V1 a 0 9\n*> ", "XQ1 e x y 2N2646\n*> ",
+		"XS1 a g k C106D\n*> "
 	for _, x := range []struct{ text, want string }{
 		{r + "R1 tol=5", "tol: a tolerance of 5 makes no sense; per cent are written with their sign, as 5%"},
 		{r + "R1 tol=-5%", "tol: a tolerance of -5% makes no sense"},
@@ -109,17 +111,23 @@ func TestBadIntent(t *testing.T) {
 		{q + "XQ1 period=0..1", "period: period has to be above zero"},
 		{q + "XQ1 period=1min..2min", "period: a period is written in seconds"},
 		{q + "XQ1 tol=1%", "tol does not fit XQ1, which is a unijunction transistor"},
-		{q + "XQ1 pins=a,g,k", "pins: pins= of a unijunction transistor names emitter, base1, base2 once each, in the order of the nodes"},
-		{q + "XQ1 pins=e,b1,b1", "pins: pins= of a unijunction transistor names emitter, base1, base2 once each, in the order of the nodes"},
+		{q + "XQ1 pins=a,g,k",
+			"pins: pins= of a unijunction transistor names emitter, base1, base2 once each, " +
+				"in the order of the nodes"},
+		{q + "XQ1 pins=e,b1,b1",
+			"pins: pins= of a unijunction transistor names emitter, base1, base2 once each, " +
+				"in the order of the nodes"},
 		{s + "XS1 load=heavy", "load: load is one of resistive, inductive, lamp, motor"},
 		{s + "XS1 latch=no", "latch: latch is one of ok"},
 		{"XA a b WHAT\n*> XA pins=e,b9", "pins: e,b9 are no terminals of one part"},
-		{".subckt s a\nR1 a 0 1\n.ends\nX1 n s\n*> X1 tol=1%", "X1 is a subcircuit; a line names a part inside it, as X1.R1"},
+		{".subckt s a\nR1 a 0 1\n.ends\nX1 n s\n*> X1 tol=1%",
+			"X1 is a subcircuit; a line names a part inside it, as X1.R1"},
 		{".subckt s a\nR1 a 0 1\n.ends\nX1 n s\n*> X1.R2 tol=1%", "no element is called X1.R2"},
 		{".subckt s a\nR1 a 0 1\n*> R2 tol=1%\n.ends\nX1 n s\nX2 n s", "no element is called X1.R2"},
 		{".subckt s a\nR1 a 0 1\n*> R1 tol=x\n.ends\nX1 n s\nX2 n s", `tol: "x" is not a number`},
 		{".subckt s a\nR1 a 0 1\n*> all R tol=x\n.ends\nX1 n s\nX2 n s", `tol: "x" is not a number`},
-		{".subckt s a\nR1 a 0 1\n*> board ambient=0..50\n.ends\nX1 n s\nX2 n s", "board lines belong to the top level"},
+		{".subckt s a\nR1 a 0 1\n*> board ambient=0..50\n.ends\nX1 n s\nX2 n s",
+			"board lines belong to the top level"},
 	} {
 		list := told(x.text)
 		if len(list) != 1 {
@@ -155,7 +163,8 @@ X3 a inner
 *> R1 tol=1%
 *> X2.X1.R1 tol=6%
 *> X2.R1 tol=7%`)
-	for name, want := range map[string]float64{"R1": 1, "R2": 10, "X1.R1": 2, "X1.R2": 2, "X1.X1.R1": 3, "X1.X1.R2": 4,
+	for name, want := range map[string]float64{"R1": 1, "R2": 10, "X1.R1": 2, "X1.R2": 2,
+		"X1.X1.R1": 3, "X1.X1.R2": 4,
 		"X2.X1.R1": 6, "X2.X1.R2": 4, "X2.R1": 7, "X2.R2": 2, "X3.R1": 10, "X3.R2": 4} {
 		if got := find(t, c, name).Intent.Tol.High * 100; math.Abs(got-want) > 1e-9 {
 			t.Errorf("%s has %g %%, want %g", name, got, want)
@@ -172,7 +181,8 @@ X3 a inner
 
 func TestResets(t *testing.T) {
 	c := sound(t, "R1 a b 1k\n*> R1 tol=1% tol=2%\n*> R1 tol=3%\n*> all C volts=1\n*> all C volts=2\n"+
-		"*> board line=50\n*> board line=60\n.subckt s a\nR1 a 0 1\n*> R1 tol=1%\n*> R1 tol=2%\n.ends\nX1 a s\nX2 a s\n"+
+		"*> board line=50\n*> board line=60\n.subckt s a\nR1 a 0 1\n*> R1 tol=1%\n*> R1 tol=2%\n.ends\n"+
+		"X1 a s\nX2 a s\n"+
 		"XQ1 a b c 2N2646\n*> XQ1 part=2N2646\n*> XQ1 part=2N2647")
 	var got []string
 	for _, r := range c.Resets {
@@ -188,7 +198,8 @@ func TestResets(t *testing.T) {
 }
 
 func TestWaivers(t *testing.T) {
-	c := sound(t, "R1 a b 1k\n*> waive Resistor-Power R1 : it is a fuse\n.subckt s a\nR1 a 0 1\n*> waive x R1\n.ends\nX1 a s\nX2 a s")
+	c := sound(t, "R1 a b 1k\n*> waive Resistor-Power R1 : it is a fuse\n.subckt s a\nR1 a 0 1\n"+
+		"*> waive x R1\n.ends\nX1 a s\nX2 a s")
 	var got []string
 	for _, w := range c.Waivers {
 		got = append(got, strings.TrimSpace(w.Rule+" "+w.Designator+" "+w.Reason))

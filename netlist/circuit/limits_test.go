@@ -87,13 +87,17 @@ func TestWorkIsBounded(t *testing.T) {
 	limits := circuit.Limits{Elements: 10_000}
 	many := func(line string, count int) string { return strings.Repeat(line+"\n", count) }
 	for name, c := range map[string]struct{ text, want string }{
-		"cards that no use takes": {".subckt s a m=0\n.if(m)\n" + many("R1 a 0 1", 1000) + ".endif\n.ends\n" + many("X1 a s", 1000),
+		"cards that no use takes": {".subckt s a m=0\n.if(m)\n" + many("R1 a 0 1", 1000) + ".endif\n.ends\n" +
+			many("X1 a s", 1000),
 			"the subcircuits unfold to far more than a board can hold; the rest is not read"},
-		"a long waveform in each": {".subckt s a\nV1 a 0 PWL(" + strings.Repeat("0 1 ", 1000) + ")\n.ends\n" + many("X1 a s", 1000),
+		"a long waveform in each": {".subckt s a\nV1 a 0 PWL(" + strings.Repeat("0 1 ", 1000) + ")\n.ends\n" +
+			many("X1 a s", 1000),
 			"the subcircuits unfold to far more than a board can hold; the rest is not read"},
-		"long names": {".subckt s a\n" + many("R1 a 0 1", 100) + ".ends\nX" + strings.Repeat("n", 100_000) + " a s\n",
+		"long names": {".subckt s a\n" + many("R1 a 0 1", 100) + ".ends\nX" + strings.Repeat("n", 100_000) +
+			" a s\n",
 			"the subcircuits unfold to far more than a board can hold; the rest is not read"},
-		"a wide expression in each": {".subckt s a p=1\nR1 a 0 {" + strings.Repeat("(p+p)*", 500) + "1}\n.ends\n" + many("X1 a s", 1000),
+		"a wide expression in each": {".subckt s a p=1\nR1 a 0 {" + strings.Repeat("(p+p)*", 500) +
+			"1}\n.ends\n" + many("X1 a s", 1000),
 			"the value of X1.R1: the netlist asks for more arithmetic than a board can need"},
 		"nested conditions": {many(".if(1)", 60) + "R1 a 0 1\n" + many(".endif", 60),
 			"conditions nest deeper than 40; what is deeper is not read"},

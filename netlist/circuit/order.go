@@ -26,10 +26,12 @@ func roleNames(kind part.Kind) map[string]string {
 			"mainterminal1": "mt1", "terminal1": "mt1", "g": "gate", "gt": "gate", "gate": "gate"}
 	case part.CurrentSource:
 		return map[string]string{"v+": "v+", "r": "r", "rset": "r", "adj": "r", "v-": "v-", "vp": "v+", "vn": "v-",
-			"vplus": "v+", "vminus": "v-", "plus": "v+", "minus": "v-"}
+			"vplus": "v+", "vminus": "v-", "plus": "v+", "minus": "v-", "a": "v+", "anode": "v+", "k": "v-",
+			"c": "v-", "cathode": "v-"}
 	case part.Optotriac:
-		return map[string]string{"a": "anode", "anode": "anode", "k": "cathode", "c": "cathode", "cathode": "cathode",
-			"mt2": "mt2", "t2": "mt2", "mt1": "mt1", "t1": "mt1"}
+		return map[string]string{"a": "anode", "anode": "anode", "k": "cathode", "c": "cathode",
+			"cathode": "cathode",
+			"mt2":     "mt2", "t2": "mt2", "mt1": "mt1", "t1": "mt1"}
 	}
 	return otherRoleNames(kind)
 }
@@ -38,7 +40,8 @@ func roleNames(kind part.Kind) map[string]string {
 func otherRoleNames(kind part.Kind) map[string]string {
 	switch kind {
 	case part.Diode:
-		return map[string]string{"a": "anode", "anode": "anode", "k": "cathode", "c": "cathode", "cathode": "cathode"}
+		return map[string]string{"a": "anode", "anode": "anode", "k": "cathode", "c": "cathode",
+			"cathode": "cathode"}
 	case part.NPN, part.PNP:
 		return map[string]string{"c": "collector", "collector": "collector", "b": "base", "base": "base",
 			"e": "emitter", "emitter": "emitter", "s": "substrate", "substrate": "substrate"}
@@ -93,7 +96,7 @@ func complete(roles, want []string) bool {
 // orderOf takes the terminal order of a part from its subcircuit: the names in
 // the header, a comment beside it, or the insides. nil where none tells.
 func (b *builder) orderOf(sub *scope, kind part.Kind) ([]string, Authority) {
-	names, want := roleNames(kind), part.NetlistOrder(kind)
+	names, want := roleNames(kind), libraryOrder(kind, len(sub.pins))
 	if len(sub.pins) != len(want) {
 		return nil, ""
 	}

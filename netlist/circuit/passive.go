@@ -89,6 +89,27 @@ func (p *placing) setValue(e *Element, v syntax.Value) {
 		p.fail(v.Word, "%s cannot have the value %s", p.shown(), source.Visible(v.Text))
 	default:
 		e.Value.Nominal, e.HasValue = value, true
+		p.parallel(e)
+	}
+}
+
+// parallel counts equal parts side by side, written as m=.
+func (p *placing) parallel(e *Element) {
+	v, ok := p.pair("m")
+	if !ok {
+		return
+	}
+	m, err := p.value(v)
+	switch {
+	case err != nil:
+		p.fail(v.Word, "m of %s: %v", p.shown(), err)
+	case m <= 0:
+		p.fail(v.Word, "%s cannot have m=%s: parts side by side are counted from 1", p.shown(),
+			source.Visible(v.Text))
+	case e.Kind == Capacitor:
+		e.Value.Nominal *= m
+	default:
+		e.Value.Nominal /= m
 	}
 }
 

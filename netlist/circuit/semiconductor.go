@@ -1,6 +1,8 @@
 package circuit
 
 import (
+	"strings"
+
 	"standoff/netlist/part"
 	"standoff/netlist/syntax"
 )
@@ -40,11 +42,24 @@ func (p *placing) semiconductor(letter byte, fields []syntax.Value, at int) {
 	e := p.start(letter, kind, fields[:at], fields[at])
 	if r := p.ratings(e.PartName); r != nil && r.Kind != "" {
 		e.Kind, e.Ratings = Kind(r.Kind), r
-	} else if letter == 'D' {
+	} else if def := p.model(e.PartName); def != nil {
 		e.Ratings = r
+		if letter == 'M' && strings.EqualFold(def.m.Type.Text, "vdmos") {
+			e.Kind = powerKind(def.m)
+		}
 	}
 	e.Roles = letterRoles(letter, at)
 	p.add(e)
+}
+
+// powerKind tells the channel of a power transistor, which stands in a flag.
+func powerKind(m *syntax.Model) Kind {
+	for _, w := range m.Flags {
+		if strings.EqualFold(w.Text, "pchan") {
+			return PMOS
+		}
+	}
+	return NMOS
 }
 
 // line makes a transmission line.

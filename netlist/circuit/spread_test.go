@@ -61,11 +61,14 @@ func TestSpreadsOfOddSources(t *testing.T) {
 		by   circuit.Basis
 	}{
 		{"V1 a 0 SIN(0 325 50)", [3]float64{308.75, 325, 341.25}, circuit.BasisDefault},
-		{"V1 a 0 SIN(0 -325 50)" + mains, [3]float64{-253 * math.Sqrt2, -325, -207 * math.Sqrt2}, circuit.BasisDeclared},
-		{"V1 a 0 SIN(0 400 50)" + mains, [3]float64{207 * math.Sqrt2, 253 * math.Sqrt2, 253 * math.Sqrt2}, circuit.BasisDeclared},
+		{"V1 a 0 SIN(0 -325 50)" +
+			mains, [3]float64{-253 * math.Sqrt2, -325, -207 * math.Sqrt2}, circuit.BasisDeclared},
+		{"V1 a 0 SIN(0 400 50)" +
+			mains, [3]float64{207 * math.Sqrt2, 253 * math.Sqrt2, 253 * math.Sqrt2}, circuit.BasisDeclared},
 		{"V1 a 0 SIN(0 12 50)" + mains, [3]float64{11.4, 12, 12.6}, circuit.BasisDefault},
 		{"V1 a 0 SIN(0 325 400)" + mains, [3]float64{308.75, 325, 341.25}, circuit.BasisDefault},
-		{"V1 a 0 SIN(0 325 50)" + mains + "\n*> V1 range=300..340", [3]float64{300, 325, 340}, circuit.BasisDeclared},
+		{"V1 a 0 SIN(0 325 50)" + mains + "\n*> V1 range=300..340",
+			[3]float64{300, 325, 340}, circuit.BasisDeclared},
 		{"V1 a 0 -12", [3]float64{-12.6, -12, -11.4}, circuit.BasisDefault},
 		{"V1 a 0 0", [3]float64{0, 0, 0}, circuit.BasisExact},
 		{"V1 a 0 20\n*> V1 range=9..15", [3]float64{9, 15, 15}, circuit.BasisDeclared},

@@ -35,8 +35,10 @@ R4 a b RMOD
 *> all R tol=1%
 *> C1 tol=-20%..80%
 *> R3 travel=1k..20k`)
-	d := c.With(map[string]float64{"R1": 2e3, "r2": 100, "R3": 5e3, "C1": 2e-6, "c2": 3e-6, "V1": -20, "R4": 10, "NONE": 1})
-	for name, want := range map[string][3]float64{"R1": {1980, 2000, 2020}, "R2": {99, 100, 101}, "R3": {500, 5000, 10000},
+	d := c.With(map[string]float64{"R1": 2e3, "r2": 100, "R3": 5e3, "C1": 2e-6, "c2": 3e-6, "V1": -20,
+		"R4": 10, "NONE": 1})
+	for name, want := range map[string][3]float64{"R1": {1980, 2000, 2020}, "R2": {99, 100, 101},
+		"R3": {500, 5000, 10000},
 		"C1": {1.6e-6, 2e-6, 3.6e-6}, "C2": {2.7e-6, 3e-6, 3.3e-6}, "V1": {-21, -20, -19}, "R4": {9.9, 10, 10.1}} {
 		before, e := find(t, c, name), find(t, d, name)
 		for i, got := range []float64{e.Value.Low, e.Value.Nominal, e.Value.High} {
