@@ -65,6 +65,17 @@ func show(c *circuit.Circuit, e *circuit.Element) string {
 	return fmt.Sprintf("%s %s %s %.6g", e.Designator, e.Kind, strings.Join(nodes, ","), e.Value.Nominal)
 }
 
+func TestManyNodesOnOneCard(t *testing.T) {
+	var b strings.Builder
+	for i := range 200 {
+		fmt.Fprintf(&b, " n%d N%d", i, i)
+	}
+	c := sound(t, "X1"+b.String()+" WHATSIT")
+	if e := c.Elements[0]; len(e.Nodes) != 400 || len(c.Nodes) != 201 || e.Nodes[0] != e.Nodes[1] {
+		t.Errorf("%d pins on %d nodes", len(e.Nodes), len(c.Nodes))
+	}
+}
+
 func TestElements(t *testing.T) {
 	for _, c := range []struct{ text, want string }{
 		{"R1 a gnd 4.7k", "R1 r a,0 4700"},

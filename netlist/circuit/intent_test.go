@@ -54,7 +54,7 @@ func TestEveryKey(t *testing.T) {
 		{s, "xs1 HEATSINK=5", 5, func(i *circuit.Intent) float64 { return value(i.Heatsink) }},
 		{".param p=0.5\nR1 a b 1k", "R1 power=p", 0.5, func(i *circuit.Intent) float64 { return value(i.Power) }},
 	} {
-		if got := x.got(intentOf(t, x.card, x.line)); math.Abs(got-x.want) > 1e-9*math.Abs(x.want) {
+		if got := x.got(intentOf(t, x.card, x.line)); !(math.Abs(got-x.want) <= 1e-9*math.Abs(x.want)) {
 			t.Errorf("%s: got %g, want %g", x.line, got, x.want)
 		}
 	}
@@ -166,7 +166,7 @@ X3 a inner
 	for name, want := range map[string]float64{"R1": 1, "R2": 10, "X1.R1": 2, "X1.R2": 2,
 		"X1.X1.R1": 3, "X1.X1.R2": 4,
 		"X2.X1.R1": 6, "X2.X1.R2": 4, "X2.R1": 7, "X2.R2": 2, "X3.R1": 10, "X3.R2": 4} {
-		if got := find(t, c, name).Intent.Tol.High * 100; math.Abs(got-want) > 1e-9 {
+		if got := find(t, c, name).Intent.Tol.High * 100; !(math.Abs(got-want) <= 1e-9) {
 			t.Errorf("%s has %g %%, want %g", name, got, want)
 		}
 	}

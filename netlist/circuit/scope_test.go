@@ -96,6 +96,8 @@ func TestConditions(t *testing.T) {
 		{"a chosen parameter is seen further down",
 			".param a=1\n.if(a)\n.param b=2\n.endif\n.if(b==2)\nR1 a 0 {b}\n.endif",
 			"R1 r a,0 2"},
+		{"a chosen parameter takes the place of another", ".param a=1\n.if(a==1)\n.param a=2\n.endif\n" +
+			".if(a==2)\nR1 a 0 {a}\n.endif", "R1 r a,0 2"},
 		{"nested, the outer one is off", ".if(0)\n.if(1)\nR1 a 0 1\n.endif\n.else\nR2 a 0 2\n.endif",
 			"R2 r a,0 2"},
 		{"nested, the inner one is off", ".if(1)\n.if(0)\nR1 a 0 1\n.else\nR3 a 0 3\n.endif\nR2 a 0 2\n.endif",
@@ -131,7 +133,7 @@ func TestFunctions(t *testing.T) {
 		"mc(5,0.1)": 5, "2*temper": 50,
 	} {
 		c := sound(t, "R1 a b {"+text+"}")
-		if got := c.Elements[0].Value.Nominal; math.Abs(got-want) > 1e-12 {
+		if got := c.Elements[0].Value.Nominal; !(math.Abs(got-want) <= 1e-12) {
 			t.Errorf("%s: got %g, want %g", text, got, want)
 		}
 	}

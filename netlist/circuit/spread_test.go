@@ -39,7 +39,7 @@ X1 a s
 	} {
 		v := find(t, c, name).Value
 		for i, got := range []float64{v.Low, v.Nominal, v.High} {
-			if math.Abs(got-want[i]) > 1e-9*want[i] {
+			if !(math.Abs(got-want[i]) <= 1e-9*want[i]) {
 				t.Errorf("%s: got %+v, want %v", name, v, want)
 				break
 			}
@@ -81,7 +81,7 @@ func TestSpreadsOfOddSources(t *testing.T) {
 	} {
 		e := sound(t, c.text).Elements[0]
 		for i, got := range []float64{e.Value.Low, e.Value.Nominal, e.Value.High} {
-			if math.Abs(got-c.want[i]) > 1e-9*math.Abs(c.want[i]) || e.Basis != c.by {
+			if !(math.Abs(got-c.want[i]) <= 1e-9*math.Abs(c.want[i])) || e.Basis != c.by {
 				t.Errorf("%s: got %+v (%s), want %v (%s)", c.text, e.Value, e.Basis, c.want, c.by)
 				break
 			}
@@ -92,7 +92,7 @@ func TestSpreadsOfOddSources(t *testing.T) {
 func TestTemperatureCoefficientOnTheCard(t *testing.T) {
 	c := sound(t, "R1 a b 1k tc=0.004\nR2 a b 1k TC = 0.001,0.00002\nR3 a b 1k tc=1m\n*> R3 tempco=50")
 	for name, want := range map[string]float64{"R1": 0.004, "R2": 0.001, "R3": 50e-6} {
-		if got := *find(t, c, name).Intent.Tempco; math.Abs(got-want) > 1e-12 {
+		if got := *find(t, c, name).Intent.Tempco; !(math.Abs(got-want) <= 1e-12) {
 			t.Errorf("%s: %g, want %g", name, got, want)
 		}
 	}

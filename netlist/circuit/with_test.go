@@ -42,7 +42,7 @@ R4 a b RMOD
 		"C1": {1.6e-6, 2e-6, 3.6e-6}, "C2": {2.7e-6, 3e-6, 3.3e-6}, "V1": {-21, -20, -19}, "R4": {9.9, 10, 10.1}} {
 		before, e := find(t, c, name), find(t, d, name)
 		for i, got := range []float64{e.Value.Low, e.Value.Nominal, e.Value.High} {
-			if math.Abs(got-want[i]) > 1e-9*math.Abs(want[i]) {
+			if !(math.Abs(got-want[i]) <= 1e-9*math.Abs(want[i])) {
 				t.Errorf("%s: got %+v, want %v", name, e.Value, want)
 				break
 			}
