@@ -44,7 +44,7 @@ func (c *collector) run() {
 		s := &c.deck.Statements[i]
 		switch {
 		case s.Lib != nil:
-			c.library(*s, sections[i])
+			c.fetchable(*s, sections[i])
 		case c.section != c.in:
 			// a library section that nobody fetched, or not the one that was
 		case s.Condition != nil:
@@ -91,8 +91,8 @@ func (c *collector) sections() map[int]bool {
 	return closed
 }
 
-// library opens or closes a section, or fetches a file of that name.
-func (c *collector) library(s syntax.Statement, closed bool) {
+// fetchable opens or closes a section, or fetches a file of that name.
+func (c *collector) fetchable(s syntax.Statement, closed bool) {
 	switch {
 	case s.Lib.Close:
 		c.in = ""
