@@ -96,17 +96,21 @@ func (m *model) extremes() []numeric.Extreme {
 		if o.bent {
 			hints.Bent = append(hints.Bent, j)
 		}
-		if o.name == "interbase_voltage" { // the sheet's currents change with it below the test voltage only
+		// The sheet's currents change with the bar voltage below the test voltage
+		// only; a pulse has a width only where its current is enough.
+		if o.name == "interbase_voltage" || o.name == "gate_pulse_current" {
 			hints.Guides = append(hints.Guides, j)
 		}
 		switch o.name {
-		case "peak_current_required", "valley_current_available", "timing_resistance_min", "timing_resistance_max":
+		case "peak_current_required", "valley_current_available", "timing_resistance_min", "timing_resistance_max",
+			"gate_pulse_width":
 			hints.Guided = append(hints.Guided, j)
 		}
 	}
 	for k, c := range m.contests {
 		j := len(m.outputs) + k
-		if c.limitName == "peak_current_required" || c.limitName == "valley_current_available" {
+		if c.limitName == "peak_current_required" || c.limitName == "valley_current_available" ||
+			c.name == "gate_pulse_width" {
 			hints.Guided = append(hints.Guided, j)
 		}
 		if c.bent {

@@ -7,6 +7,7 @@ import (
 	"standoff/netlist/circuit"
 	"standoff/netlist/network"
 	"standoff/netlist/part"
+	"standoff/netlist/quantity"
 	"standoff/netlist/stage"
 )
 
@@ -28,6 +29,7 @@ type scrGate struct {
 	source    network.Branch // voltage of the capacitor over the lower rail
 	on        network.Branch // resistance of the emitter path
 	gate      network.Branch // the gate as a clamp
+	others    []neighbour    // other gates on the same base one
 	shunt     *mesh          // what lies across the gate, nil where nothing does
 	need      trigger
 	g         gateState
@@ -112,10 +114,14 @@ func (m *scrGate) driveNetwork() error {
 	m.source = net.Voltage(charged, m.drive.node(n["lower"]))
 	m.on = net.Resistor(charged, m.drive.node(n["base1"]))
 	m.gate = net.Diode(m.drive.node(g["gate"]), m.drive.node(g["cathode"]))
+	m.neighbours()
 	if err := m.drive.compile(); err != nil {
 		return err
 	}
 	m.drive.solver.SetDiode(m.gate, gateSlope, math.Inf(1), 1)
+	for _, o := range m.others {
+		m.drive.solver.SetDiode(o.branch, gateSlope, math.Inf(1), 1)
+	}
 	if across := m.gateStage.Parts[stage.GateShunt]; len(across) > 0 {
 		m.shunt, err = newMesh(m.bench, []circuit.NodeID{g["gate"], g["cathode"]}, func(e *circuit.Element) bool { return !contains(across, e) })
 		if err != nil {
@@ -131,6 +137,41 @@ func (m *scrGate) driveNetwork() error {
 	return nil
 }
 
+// neighbour is another gate on the same base one: a clamp that takes its share.
+type neighbour struct {
+	branch network.Branch
+	volts  int // variable of its voltage
+}
+
+// leastGateVoltage is the least voltage at which a gate begins to take current
+// (TIC106 and C106 sheets: 0.4 V at 25 deg C).
+const leastGateVoltage = 0.4
+
+// neighbours adds the other gates that the same pulse feeds. Their voltage may be
+// anything from the least one to the greatest trigger voltage of their sheet: no
+// maker limits it downwards for most types.
+func (m *scrGate) neighbours() {
+	for _, s := range m.stage.Drives {
+		if s == m.gateStage {
+			continue
+		}
+		gate, inside := m.drive.nodes[m.w.Net(s.Nodes["gate"])]
+		cathode, alsoInside := m.drive.nodes[m.w.Net(s.Nodes["cathode"])]
+		if !inside || !alsoInside {
+			continue
+		}
+		high := 1.5
+		if r := s.Anchor.Ratings; r != nil {
+			if v, _, ok := r.Limit("vgt"); ok {
+				high = max(v, leastGateVoltage)
+			}
+		}
+		volts := m.assumed("gate voltage of "+s.Anchor.Designator, "V",
+			quantity.Spread{Low: leastGateVoltage, Nominal: (leastGateVoltage + high) / 2, High: high}, "assumed")
+		m.others = append(m.others, neighbour{m.drive.net.Diode(gate, cathode), volts})
+	}
+}
+
 // gateAt works oscillator and gate out at one point.
 func (m *scrGate) gateAt(x []float64) {
 	m.at(x)
@@ -138,6 +179,9 @@ func (m *scrGate) gateAt(x []float64) {
 	m.drive.load(x)
 	v := m.drive.solver.Values
 	v[m.on] = m.s.on + m.s.re + 1e-6
+	for _, o := range m.others {
+		v[o.branch] = x[o.volts]
+	}
 	g.scale = m.smallCapacitor()
 	g.open, _, _ = m.pulseAt(m.s.vp, never)
 	_, g.short, _ = m.pulseAt(m.s.vp, 0)
@@ -187,6 +231,12 @@ func (m *scrGate) against(amperes, volts, shunt float64) drive {
 		return d
 	}
 	d.current = (into + volts*shunt) * g.scale
+	if len(m.others) > 0 {
+		if d.current >= d.required {
+			d.width = m.shared(amperes/g.scale, volts)
+		}
+		return d
+	}
 	second := m.s.vp * 0.98
 	_, into2, out2 := m.pulseAt(second, volts)
 	slopeInto, slopeOut := (into-into2)/(m.s.vp-second), (out-out2)/(m.s.vp-second)
@@ -200,6 +250,40 @@ func (m *scrGate) against(amperes, volts, shunt float64) drive {
 	}
 	d.width = max(m.s.c/slopeOut*math.Log(out/end), 0)
 	return d
+}
+
+// sharedSteps is into how many steps the fall of the capacitor is cut where
+// several gates share a pulse.
+const sharedSteps = 24
+
+// shared returns how long the current into the gate stays above amperes where
+// other gates take their share until they let go: the fall of the capacitor is
+// cut into steps, and in each the network is taken as straight.
+func (m *scrGate) shared(amperes, volts float64) float64 {
+	step := (m.s.vp - m.s.vv) / sharedSteps
+	_, into, out := m.pulseAt(m.s.vp, volts)
+	width := 0.0
+	for k := 1; k <= sharedSteps; k++ {
+		_, next, nextOut := m.pulseAt(m.s.vp-float64(k)*step, volts)
+		share := 1.0
+		if next < amperes {
+			share = (into - amperes) / (into - next)
+			nextOut = out + share*(nextOut-out)
+		}
+		if nextOut <= 0 {
+			return width
+		}
+		if fall := out - nextOut; fall > 1e-9*out {
+			width += m.s.c * share * step * math.Log(out/nextOut) / fall
+		} else {
+			width += m.s.c * share * step / out
+		}
+		if next < amperes {
+			return width
+		}
+		into, out = next, nextOut
+	}
+	return width
 }
 
 // quiet works out the gate before the pulse: voltage and dc resistance to the

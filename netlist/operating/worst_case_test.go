@@ -93,6 +93,11 @@ func randomDeck(seed uint64) string {
 		d.resistor("g", "0", 200, 5000)
 		d.card("X2 a g 0 C106D")
 		d.resistor("vcc", "a", 10, 1000)
+		if d.IntN(3) == 0 {
+			d.resistor("b1", "g2", 10, 500)
+			d.card("X3 a2 g2 0 BT151-500L")
+			d.resistor("vcc", "a2", 10, 1000)
+		}
 	}
 	return d.b.String()
 }
@@ -109,7 +114,7 @@ func modelOf(t testing.TB, text string) *model {
 	if stages[0].Gap != "" {
 		t.Fatalf("%s\n%s", text, stages[0].Gap)
 	}
-	if len(stages) == 2 && stages[1].Gap == "" && len(stages[0].Drives) == 1 {
+	if len(stages) >= 2 && stages[1].Gap == "" && len(stages[0].Drives) == len(stages)-1 {
 		m, err := newSCRGate(w, stages[1], stages[0])
 		if err != nil {
 			t.Fatalf("%s\n%v", text, err)
