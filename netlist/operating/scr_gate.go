@@ -147,6 +147,10 @@ type neighbour struct {
 // (TIC106 and C106 sheets: 0.4 V at 25 deg C).
 const leastGateVoltage = 0.4
 
+// usualGateVoltage is the greatest trigger voltage of a gate whose sheet names none,
+// that of most standard types (2N6394, BT151, TIC126 sheets: 1.5 V at 25 deg C).
+const usualGateVoltage = 1.5
+
 // neighbours adds the other gates that the same pulse feeds. Their voltage may be
 // anything from the least one to the greatest trigger voltage of their sheet: no
 // maker limits it downwards for most types.
@@ -160,7 +164,7 @@ func (m *scrGate) neighbours() {
 		if !inside || !alsoInside {
 			continue
 		}
-		high := 1.5
+		high := usualGateVoltage
 		if r := s.Anchor.Ratings; r != nil {
 			if v, _, ok := r.Limit("vgt"); ok {
 				high = max(v, leastGateVoltage)
