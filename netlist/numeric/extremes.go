@@ -48,6 +48,10 @@ type Hints struct {
 	// LowOnly and HighOnly list outputs of which one extreme is of no interest; it
 	// is then no more than the best that was met by the way.
 	LowOnly, HighOnly []int
+	// One computes output j alone, where that costs less than all of them; nil
+	// where it does not. It serves while the surroundings of one best point are
+	// explored.
+	One func(x []float64, j int) float64
 }
 
 // Extremes returns the extremes of n outputs of f over the box.
@@ -63,7 +67,7 @@ type Hints struct {
 // variables, not with 2 to its power.
 func Extremes(box []Variable, n int, f Function, hints Hints) []Extreme {
 	s := newSearch(box, n, f)
-	s.guides = hints.Guides
+	s.guides, s.one = hints.Guides, hints.One
 	for _, j := range hints.Guided {
 		s.guided[j] = true
 	}
@@ -102,6 +106,8 @@ type search struct {
 	moves   []bool // output j, variable i at j*len(box)+i
 	bent    []bool
 	guides  []int
+	one     func(x []float64, j int) float64
+	alone   bool // the present exploration serves one output only
 	guided  []bool
 	tried   map[uint64]bool // hashes of corners that were tried
 	best    []best          // 2n: low of output j at 2j, high at 2j+1
@@ -148,6 +154,24 @@ func (s *search) try() {
 			high.set(v, s.x)
 		}
 	}
+}
+
+// tryFor is try for the sake of one best point: where an output can be computed
+// alone, only that is. It returns the value.
+func (s *search) tryFor(asked int) float64 {
+	j := asked / 2
+	if s.one == nil || !s.alone {
+		s.try()
+		return s.y[j]
+	}
+	v := s.one(s.x, j)
+	b := &s.best[asked]
+	if asked%2 == 0 && !(v >= b.value) || asked%2 == 1 && !(v <= b.value) {
+		if v == v {
+			b.set(v, s.x)
+		}
+	}
+	return v
 }
 
 // set stores a better point. A gain within rounding does not ask for another
@@ -299,7 +323,7 @@ func (s *search) exploreAll() bool {
 		}
 		found = true
 		copy(point, s.best[b].at)
-		s.markExplored(point, b)
+		s.alone = !s.markExplored(point, b)
 		s.best[b].explored = true
 		s.explore(point, b)
 	}
@@ -332,7 +356,8 @@ func (s *search) movesOf(b int) []bool {
 // markExplored marks every output that the exploration of a point for one
 // output serves too: its variables are among those that are moved, and stand
 // where the point has them.
-func (s *search) markExplored(point []float64, asked int) {
+// It reports whether there was any but the one that asked.
+func (s *search) markExplored(point []float64, asked int) (others bool) {
 	moved := s.movesOf(asked)
 	for b := range s.best {
 		own, at, served := s.movesOf(b), s.best[b].at, true
@@ -343,9 +368,11 @@ func (s *search) markExplored(point []float64, asked int) {
 			}
 		}
 		if served {
+			others = others || b != asked && !s.best[b].idle && !s.best[b].explored
 			s.best[b].explored = true
 		}
 	}
+	return others
 }
 
 // explore moves one variable at a time away from the point. Curved variables
@@ -362,13 +389,13 @@ func (s *search) explore(point []float64, asked int) {
 		for _, end := range [2]float64{v.Low, v.High} {
 			if end != point[i] {
 				s.x[i] = end
-				s.tryOnce()
+				s.tryFor(asked)
 			}
 		}
 		if v.Curved || v.Bends && s.bent[asked/2] {
 			for _, share := range interior {
 				s.x[i] = v.Low + share*(v.High-v.Low)
-				s.tryOnce()
+				s.tryFor(asked)
 			}
 			if inside := s.best[asked].at[i]; inside > v.Low && inside < v.High {
 				copy(s.x, s.best[asked].at)
@@ -396,9 +423,8 @@ func (s *search) across(point []float64, asked, pivot int) {
 	}
 	copy(s.x, point)
 	s.x[pivot] = far
-	s.try()
-	j, sense := asked/2, float64(2*(asked%2)-1)
-	best := sense * s.y[j]
+	sense := float64(2*(asked%2) - 1)
+	best := sense * s.tryFor(asked)
 	for _, i := range s.free {
 		if !moved[i] || i == pivot {
 			continue
@@ -409,8 +435,7 @@ func (s *search) across(point []float64, asked, pivot int) {
 				continue
 			}
 			s.x[i] = end
-			s.try()
-			if v := sense * s.y[j]; v > best {
+			if v := sense * s.tryFor(asked); v > best {
 				best, here = v, end
 			}
 		}
@@ -423,11 +448,10 @@ func (s *search) across(point []float64, asked, pivot int) {
 // are updated through try.
 func (s *search) refine(i, asked int) {
 	v := s.box[i]
-	j, sense := asked/2, float64(2*(asked%2)-1)
+	sense := float64(2*(asked%2) - 1)
 	at := func(x float64) float64 {
 		s.x[i] = x
-		s.try()
-		return sense * s.y[j]
+		return sense * s.tryFor(asked)
 	}
 	middle := s.best[asked].at[i]
 	width := (v.High - v.Low) / 3

@@ -91,7 +91,7 @@ const bentSlack = 5e-3
 
 // extremes searches the box for every output and every contest.
 func (m *model) extremes() []numeric.Extreme {
-	var hints numeric.Hints
+	hints := numeric.Hints{One: m.one}
 	for j, o := range m.outputs {
 		if o.bent {
 			hints.Bent = append(hints.Bent, j)
@@ -142,6 +142,15 @@ func (m *model) function(x, y []float64) {
 	for k := range m.contests {
 		y[len(m.outputs)+k] = m.contests[k].ratio()
 	}
+}
+
+// one feeds the search with one output.
+func (m *model) one(x []float64, j int) float64 {
+	m.evaluate(x)
+	if j < len(m.outputs) {
+		return m.outputs[j].of()
+	}
+	return m.contests[j-len(m.outputs)].ratio()
 }
 
 // decide turns the worst point of a contest into a comparison.
