@@ -1,6 +1,9 @@
 package network
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 // Solver solves a compiled network for the Values it is given. It is not safe
 // for use by several goroutines at once.
@@ -20,6 +23,7 @@ type Solver struct {
 	solution []float64
 	shift    []float64 // offset of each node in volt
 	diodes   []diodeState
+	solved   []float64 // Values of the last consistent solution; empty where there is none
 }
 
 // diodeState is the shape of one diode and the segment it is on.
@@ -57,6 +61,9 @@ func (s *Solver) allocate() {
 func (s *Solver) SetDiode(b Branch, slope, breakdown, breakdownSlope float64) {
 	for i := range s.diodes {
 		if d := &s.diodes[i]; d.branch == b {
+			if d.slope != slope || d.breakdown != breakdown || d.breakdownSlope != breakdownSlope {
+				s.solved = s.solved[:0]
+			}
 			d.slope, d.breakdown, d.breakdownSlope = slope, breakdown, breakdownSlope
 		}
 	}
@@ -66,8 +73,13 @@ func (s *Solver) SetDiode(b Branch, slope, breakdown, breakdownSlope float64) {
 func (s *Solver) IsFixed(n Node) bool { return s.row[n] < 0 }
 
 // Solve factorises the network for the present Values and solves it. It reports
-// whether the diodes came to rest in a consistent state.
+// whether the diodes came to rest in a consistent state. Values that have not
+// changed since are not solved anew.
 func (s *Solver) Solve() bool {
+	if len(s.solved) > 0 && slices.Equal(s.solved, s.Values) {
+		return true
+	}
+	s.solved = s.solved[:0]
 	s.shifts()
 	for range 4 + 8*len(s.diodes) {
 		s.assemble()
@@ -75,6 +87,7 @@ func (s *Solver) Solve() bool {
 		copy(s.solution, s.rhs)
 		s.substitute(s.solution)
 		if !s.flip() {
+			s.solved = append(s.solved, s.Values...)
 			return true
 		}
 	}
