@@ -47,8 +47,10 @@ type Comparison struct {
 	LimitName    string // figure or rating that is the limit: "peak_current_required"
 	Bound        Bound
 	Unit         string
-	Corner       Corner
-	Working      string
+	// Corner, Working and Assumed are filled where the limit is broken or nearly so,
+	// and where rules draw lines of their own beside it.
+	Corner  Corner
+	Working string
 	// Certain is false where the verdict rests on a memory value, an assumed
 	// rating or a derating: a doubt at most. Because says which, in words.
 	Certain bool

@@ -31,6 +31,8 @@ type contest struct {
 	name, limitName, unit string
 	bound                 Bound
 	value, limit          func() float64
+	// habit says that rules draw lines of their own beside the limit.
+	habit bool
 	// limitMark is the trust in the limit; because says what else makes the
 	// verdict a doubt at most.
 	limitMark part.Mark
@@ -165,8 +167,10 @@ func (m *model) decide(k int, e numeric.Extreme) (Comparison, bool) {
 	}
 	m.evaluate(at)
 	result := Comparison{Name: c.name, Value: c.value(), Limit: c.limit(), LimitName: c.limitName,
-		Bound: c.bound, Unit: c.unit, Corner: m.corner(at, e.Moves), Working: c.working(), Certain: true,
-		Assumed: m.assumptions(e.Moves)}
+		Bound: c.bound, Unit: c.unit, Certain: true}
+	if c.habit || result.Fails() || result.Tight() { // nobody asks how a limit was kept with ease
+		result.Corner, result.Working, result.Assumed = m.corner(at, e.Moves), c.working(), m.assumptions(e.Moves)
+	}
 	if result.Fails() {
 		result.Certain, result.Because = m.certainty(k, at)
 	}

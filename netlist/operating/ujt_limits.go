@@ -34,7 +34,7 @@ func (m *ujtModel) windowLimits() {
 			value: func() float64 { return s.atValley }, limit: func() float64 { return s.iv * m.valleyDerating() },
 			because: "the derating of I_V for heat and for a large base-two resistor is from memory", working: m.valleyWorking})
 	}
-	m.compare(contest{name: "timing_capacitance", limitName: "habit", unit: "F", bound: Min,
+	m.compare(contest{name: "timing_capacitance", limitName: "habit", unit: "F", bound: Min, habit: true,
 		value: func() float64 { return s.c }, limit: func() float64 { return 100e-12 },
 		working: func() string { return "least capacitance at the emitter" }})
 }
@@ -133,7 +133,7 @@ func (m *ujtModel) barLimits() {
 	if v, mark, ok := m.ratings.Limit("vbb_min"); ok {
 		low, lowName, lowMark = v, "vbb_min", mark
 	}
-	m.compare(contest{name: "interbase_voltage_low", limitName: lowName, unit: "V", bound: Min, value: m.interbase,
+	m.compare(contest{name: "interbase_voltage_low", limitName: lowName, unit: "V", bound: Min, habit: true, value: m.interbase,
 		limit: func() float64 { return low }, limitMark: lowMark, working: working})
 	if _, mark, ok := m.ratings.Limit("pd"); ok {
 		m.compare(contest{name: "interbase_power", limitName: "interbase_power_allowed", unit: "W", bound: Max,

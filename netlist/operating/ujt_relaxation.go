@@ -320,7 +320,7 @@ func (m *ujtModel) currents(x []float64) {
 	if m.v.ip >= 0 {
 		s.ip = x[m.v.ip]
 		if at := m.sheet.ipVBB; vbb < at && vbb > 0 {
-			s.ip *= math.Pow(at/vbb, 1.3)
+			s.ip *= math.Exp(1.3 * math.Log(at/vbb))
 		}
 	}
 	if m.v.iv >= 0 {
