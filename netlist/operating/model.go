@@ -24,6 +24,8 @@ type output struct {
 	of         func() float64
 	working    func() string // at the last evaluated point
 	bent       bool          // its extremes may lie between the ends of a variable
+	guide      bool          // others depend on it beyond a threshold
+	guided     bool          // it depends on a guide in that way
 }
 
 // contest is one comparison to be.
@@ -31,6 +33,7 @@ type contest struct {
 	name, limitName, unit string
 	bound                 Bound
 	value, limit          func() float64
+	guided                bool // the worst point depends on a guide beyond a threshold
 	// habit says that rules draw lines of their own beside the limit.
 	habit bool
 	// limitMark is the trust in the limit; because says what else makes the
@@ -54,6 +57,9 @@ func (c *contest) ratio() float64 {
 func (m *model) figure(name, unit string, of func() float64, working func() string) {
 	m.outputs = append(m.outputs, output{name: name, unit: unit, of: of, working: working})
 }
+
+// last returns the output appended last.
+func (m *model) last() *output { return &m.outputs[len(m.outputs)-1] }
 
 // compare appends a contest.
 func (m *model) compare(c contest) { m.contests = append(m.contests, c) }
@@ -98,21 +104,16 @@ func (m *model) extremes() []numeric.Extreme {
 		if o.bent {
 			hints.Bent = append(hints.Bent, j)
 		}
-		// The sheet's currents change with the bar voltage below the test voltage
-		// only; a pulse has a width only where its current is enough.
-		if o.name == "interbase_voltage" || o.name == "gate_pulse_current" {
+		if o.guide {
 			hints.Guides = append(hints.Guides, j)
 		}
-		switch o.name {
-		case "peak_current_required", "valley_current_available", "timing_resistance_min", "timing_resistance_max",
-			"gate_pulse_width":
+		if o.guided {
 			hints.Guided = append(hints.Guided, j)
 		}
 	}
 	for k, c := range m.contests {
 		j := len(m.outputs) + k
-		if c.limitName == "peak_current_required" || c.limitName == "valley_current_available" ||
-			c.name == "gate_pulse_width" {
+		if c.guided {
 			hints.Guided = append(hints.Guided, j)
 		}
 		if c.bent {

@@ -20,6 +20,7 @@ func (m *ujtModel) figures() {
 	m.figure("interbase_voltage", "V", m.interbase, func() string {
 		return fmt.Sprintf("across the bar of R_BB = %s between base two and base one", show(s.rbb, "ohm"))
 	})
+	m.last().guide = true // below the test voltage the sheet's currents change with it, above they do not
 	m.figure("peak_voltage", "V", func() float64 { return s.vp }, func() string {
 		return fmt.Sprintf("V_P = V_D + V_B1 + eta V_BB = %s + %s + %.3g * %s",
 			show(s.vd, "V"), show(s.b1-s.lower, "V"), s.eta, show(s.b2-s.b1, "V"))
@@ -44,12 +45,14 @@ func (m *ujtModel) windowFigures() {
 	m.figure("peak_current_required", "A", func() float64 { return s.ip }, func() string {
 		return "I_P of the sheet" + m.carried("ip_vbb", "(%s / V_BB)^1.3")
 	})
+	m.last().guided = true
 	m.figure("charging_current_at_valley", "A", func() float64 { return s.atValley }, func() string {
 		return fmt.Sprintf("(V_th - V_V)/R_th = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vv, "V"), show(s.rth, "ohm"))
 	})
 	m.figure("valley_current_available", "A", func() float64 { return s.iv }, func() string {
 		return "I_V of the sheet" + m.carried("iv_vbb", "V_BB / %s")
 	})
+	m.last().guided = true
 	if m.hasResistance() {
 		m.figure("timing_resistance", "ohm", func() float64 { return s.rth }, func() string {
 			return "resistance of the charging network as the capacitor sees it"
@@ -57,10 +60,12 @@ func (m *ujtModel) windowFigures() {
 		m.figure("timing_resistance_min", "ohm", func() float64 { return (s.vth - s.lower - s.vv) / s.iv }, func() string {
 			return fmt.Sprintf("(V_th - V_V)/I_V = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vv, "V"), show(s.iv, "A"))
 		})
+		m.last().guided = true
 		m.figure("timing_resistance_max", "ohm", func() float64 { return max(s.vth-s.lower-s.vp, 0) / s.ip }, func() string {
 			return fmt.Sprintf("(V_th - V_P)/I_P = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vp, "V"), show(s.ip, "A"))
 		})
-		m.outputs[len(m.outputs)-1].bent = true // a higher bar voltage raises the peak and lowers the peak current
+		m.last().guided = true
+		m.last().bent = true // a higher bar voltage raises the peak and lowers the peak current
 	}
 	m.figure("timing_capacitance", "F", func() float64 { return s.c }, func() string {
 		return "all capacitors from the emitter to the rails"
@@ -136,11 +141,11 @@ func (m *ujtModel) loadFigures() {
 	m.figure("emitter_current_rms", "A", m.rms, func() string {
 		return "I_pk sqrt(tau/(2 T)) of the exponential pulse"
 	})
-	m.outputs[len(m.outputs)-1].bent = true // a higher peak makes a larger pulse, and a rarer one
+	m.last().bent = true // a higher peak makes a larger pulse, and a rarer one
 	m.figure("interbase_power", "W", m.barPower, func() string {
 		return fmt.Sprintf("V_BB^2/R_BB + C V_P^2 f/2 = %s^2/%s + the emitter's share", show(m.interbase(), "V"), show(s.rbb, "ohm"))
 	})
-	m.outputs[len(m.outputs)-1].bent = true // a higher peak stores more energy and comes less often
+	m.last().bent = true // a higher peak stores more energy and comes less often
 	if _, _, ok := m.ratings.Limit("pd"); ok {
 		m.figure("interbase_power_allowed", "W", m.powerAllowed, func() string {
 			return "rated power less its derating above 25 deg C"

@@ -19,18 +19,18 @@ func (m *ujtModel) limits() {
 func (m *ujtModel) windowLimits() {
 	s := &m.s
 	if m.v.ip >= 0 {
-		m.compare(contest{name: "charging_current_at_peak", limitName: "peak_current_required", unit: "A", bound: Min, bent: true,
+		m.compare(contest{name: "charging_current_at_peak", limitName: "peak_current_required", unit: "A", bound: Min, guided: true, bent: true,
 			value: func() float64 { return s.atPeak }, limit: func() float64 { return s.ip }, working: m.peakWorking})
 		if m.caps.leaks() {
-			m.compare(contest{name: "charging_current_after_leakage", limitName: "peak_current_required", unit: "A", bound: Min, bent: true,
+			m.compare(contest{name: "charging_current_after_leakage", limitName: "peak_current_required", unit: "A", bound: Min, guided: true, bent: true,
 				value: func() float64 { return s.atPeak - s.leak }, limit: func() float64 { return s.ip },
 				working: func() string { return m.peakWorking() + ", less a leakage of " + show(s.leak, "A") }})
 		}
 	}
 	if m.v.iv >= 0 {
-		m.compare(contest{name: "charging_current_at_valley", limitName: "valley_current_available", unit: "A", bound: Max,
+		m.compare(contest{name: "charging_current_at_valley", limitName: "valley_current_available", unit: "A", bound: Max, guided: true,
 			value: func() float64 { return s.atValley }, limit: func() float64 { return s.iv }, working: m.valleyWorking})
-		m.compare(contest{name: "charging_current_at_valley_derated", limitName: "valley_current_available", unit: "A", bound: Max,
+		m.compare(contest{name: "charging_current_at_valley_derated", limitName: "valley_current_available", unit: "A", bound: Max, guided: true,
 			value: func() float64 { return s.atValley }, limit: func() float64 { return s.iv * m.valleyDerating() },
 			because: "the derating of I_V for heat and for a large base-two resistor is from memory", working: m.valleyWorking})
 	}
