@@ -229,10 +229,11 @@ func (s *search) corners(fixed int, value float64) {
 		s.x[i] = v.High
 		s.try()
 		for j := range s.y {
-			if s.y[j] != lowY[j] || fixed < 0 && s.y[j] != s.nominal[j] {
+			if differ(s.y[j], lowY[j]) || fixed < 0 && differ(s.y[j], s.nominal[j]) {
 				s.moves[j*len(s.box)+i] = true
 			}
 			switch {
+			case !differ(s.y[j], lowY[j]):
 			case s.y[j] > lowY[j]:
 				sign[k*s.n+j] = 1
 			case s.y[j] < lowY[j]:
@@ -267,12 +268,17 @@ func (s *search) influences(base []float64, at, away func(Variable) float64) {
 		s.x[i] = away(v)
 		s.try()
 		for j := range s.y {
-			if s.y[j] != base[j] {
+			if differ(s.y[j], base[j]) {
 				s.moves[j*len(s.box)+i] = true
 			}
 		}
 		s.x[i] = at(v)
 	}
+}
+
+// differ reports whether two values of an output differ by more than rounding.
+func differ(a, b float64) bool {
+	return a != b && !(math.Abs(a-b) <= 1e-11*math.Min(math.Abs(a), math.Abs(b)))
 }
 
 // corner tries the corner at which output j should be greatest (direction 1)
