@@ -121,7 +121,7 @@ func (a *Account) gate(w *circuit.Wiring, s *stage.Stage) {
 	a.Unchecked = append(a.Unchecked, m.unchecked()...)
 	m.evaluate(m.nominal())
 	a.Facts["gate-return-missing"] = m.g.shunt > noPath
-	a.Facts["gate-polarity"] = m.g.open < noPulse*m.s.vp
+	a.Facts["gate-polarity"] = m.g.open < noPulse*m.cycle.vp
 }
 
 // noPulse is the share of the peak voltage below which no pulse arrives at all.

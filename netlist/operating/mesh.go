@@ -18,6 +18,7 @@ type mesh struct {
 	branches []meshBranch
 	crest    bool    // sine sources stand at their crest
 	polarity float64 // +1 or -1: which crest
+	bends    bool    // diodes stand in it: straight only in pieces
 	there    []float64
 	back     []float64
 }
@@ -168,6 +169,7 @@ func (m *mesh) diode(e *circuit.Element, mb meshBranch) error {
 	}
 	mb.slot, mb.drift = s, diodeDrift
 	mb.branch = m.net.Diode(m.node(anode), m.node(cathode))
+	m.bends = true
 	if e.Ratings != nil {
 		if v, _, ok := e.Ratings.Spread("bv"); ok {
 			mb.zener = m.breakdown(e, v)

@@ -34,7 +34,7 @@ func (m *scrGate) gateFigures() {
 	})
 	m.figure("gate_pulse_voltage", "V", func() float64 { return g.open * g.scale }, func() string {
 		return fmt.Sprintf("pulse at the open gate: V_P = %s through R_on = %s into the gate network",
-			show(m.s.vp, "V"), show(m.s.on, "ohm"))
+			show(m.cycle.vp, "V"), show(m.cycle.on, "ohm"))
 	})
 	m.figure("gate_peak_current", "A", func() float64 { return g.short }, func() string {
 		return "current into the gate taken as a short"
@@ -54,8 +54,8 @@ func (m *scrGate) requiredWorking() string {
 }
 
 func (m *scrGate) pulseWorking() string {
-	return fmt.Sprintf("capacitor at V_P = %s through R_on = %s, gate held at V_GT = %s", show(m.s.vp, "V"),
-		show(m.s.on, "ohm"), show(m.need.volts, "V"))
+	return fmt.Sprintf("capacitor at V_P = %s through R_on = %s, gate held at V_GT = %s", show(m.cycle.vp, "V"),
+		show(m.cycle.on, "ohm"), show(m.need.volts, "V"))
 }
 
 func (m *scrGate) widthWorking() string {
@@ -104,8 +104,8 @@ func (m *scrGate) smallNote(because string) string {
 	for i, v := range m.box {
 		least[i] = v.Low
 	}
-	if m.caps.farads(least) < m.sheet.farads {
-		return join(because, "the guaranteed pulse holds for "+show(m.sheet.farads, "F")+" and more; below that it is estimated")
+	if m.caps.farads(least) < m.pulseFarads {
+		return join(because, "the guaranteed pulse holds for "+show(m.pulseFarads, "F")+" and more; below that it is estimated")
 	}
 	return because
 }
@@ -146,9 +146,7 @@ func (m *scrGate) quietLimits() {
 	if v, mark, ok := m.scr.Limit("vgd"); ok {
 		m.compare(contest{name: "gate_standby_voltage", limitName: "gate_nontrigger_voltage", unit: "V", bound: Max,
 			value: func() float64 { return m.g.standby }, limit: func() float64 { return v }, limitMark: mark,
-			working: func() string {
-				return fmt.Sprintf("bar of %s from a rail of %s", show(m.s.rbb, "ohm"), show(m.s.upper-m.s.lower, "V"))
-			}})
+			working: m.quietWorking})
 	}
 	if v, mark, ok := m.scr.Limit("rgk"); ok {
 		// The nominal board counts: the sheet's 1 kohm is a resistor of the usual tolerance too.
@@ -190,7 +188,7 @@ func (m *scrGate) overdriveLimits() {
 // nominalOn returns the emitter's on-resistance of the nominal board.
 func (m *scrGate) nominalOn() float64 {
 	m.evaluate(m.nominal())
-	return m.s.on
+	return m.cycle.on
 }
 
 // boardResistance returns what resistors stand between base one and gate.
@@ -199,7 +197,7 @@ func (m *scrGate) boardResistance() float64 {
 	if m.g.short <= 0 {
 		return math.Inf(1)
 	}
-	return max(m.s.vp/m.g.short-m.s.on, 0)
+	return max(m.cycle.vp/m.g.short-m.cycle.on, 0)
 }
 
 // unchecked lists the rules that a missing rating keeps from being judged.

@@ -11,18 +11,19 @@ import (
 	"standoff/netlist/stage"
 )
 
-// scrGate is a thyristor's gate fired by a unijunction oscillator.
+// scrGate is a thyristor's gate fired by a relaxation oscillator.
 //
 // Model. At the end of the ramp the timing capacitor, charged to V_P, discharges
-// through the on-resistance of the emitter into everything that hangs on base
-// one. The gate is held against its must-trigger point: it is taken as a clamp at
+// through the on-resistance of the device into everything that hangs on base
+// its outlet (base one, cathode). The gate is held against its must-trigger point: it is taken as a clamp at
 // the greatest trigger voltage of the coldest ambient, and the current that the
 // network then drives into it counts (load line through the corner of the
 // must-trigger box; Teccor AN1008, Dynex AN4840). While the clamp holds, the
 // network is linear and all currents fall with one time constant. Diodes in the
 // gate lead are piecewise linear. Units SI.
 type scrGate struct {
-	*ujtModel
+	*relaxation
+	oscillate func(x []float64)
 	gateStage *stage.Stage
 	scr       *part.Ratings
 	drive     *mesh
@@ -40,7 +41,7 @@ type scrGate struct {
 
 // gateNodes are the solvers' nodes, looked up once: in the drive network, and
 // (quiet) in the standing one.
-type gateNodes struct{ gate, cathode, lower, base1, quietGate, quietCathode network.Node }
+type gateNodes struct{ gate, cathode, lower, outlet, quietGate, quietCathode network.Node }
 
 // trigger is what the gate asks for at the coldest ambient.
 type trigger struct {
@@ -79,14 +80,14 @@ func newSCRGate(w *circuit.Wiring, s *stage.Stage, driver *stage.Stage) (*scrGat
 	if s.Anchor.Ratings == nil {
 		return nil, fmt.Errorf("nothing is known of the part %s", partName(s.Anchor))
 	}
-	u, err := newUJT(w, driver)
+	u, err := newDriver(w, driver)
 	if err != nil {
 		return nil, fmt.Errorf("its driver %s cannot be computed: %w", driver.Anchor.Designator, err)
 	}
 	u.outputs, u.contests = nil, nil
-	m := &scrGate{ujtModel: u, gateStage: s, scr: s.Anchor.Ratings}
+	m := &scrGate{relaxation: u, oscillate: u.evaluate, gateStage: s, scr: s.Anchor.Ratings}
 	m.evaluate = m.gateAt
-	m.box[m.v.on].Pivot = true // a high on-resistance makes a small, long pulse, and the stop at the valley decides
+	m.box[m.share].Pivot = true // a high on-resistance makes a small, long pulse, and the stop at the valley decides
 	if len(s.Parts[stage.GateCoupling]) > 0 {
 		return nil, fmt.Errorf("a capacitor couples its gate; coupled gates are not computed yet")
 	}
@@ -102,17 +103,16 @@ func newSCRGate(w *circuit.Wiring, s *stage.Stage, driver *stage.Stage) (*scrGat
 // driveNetwork readies the network of the discharge.
 func (m *scrGate) driveNetwork() error {
 	n, g := m.stage.Nodes, m.gateStage.Nodes
-	keepOff := append(append([]*circuit.Element{}, m.stage.Parts[stage.TimingResistor]...), m.stage.Parts[stage.BaseTwo]...)
 	var err error
-	m.drive, err = newMesh(m.bench, []circuit.NodeID{n["base1"], n["lower"], g["gate"], g["cathode"]},
-		func(e *circuit.Element) bool { return contains(keepOff, e) })
+	m.drive, err = newMesh(m.bench, []circuit.NodeID{m.outlet, n["lower"], g["gate"], g["cathode"]},
+		func(e *circuit.Element) bool { return contains(m.keepOff, e) })
 	if err != nil {
 		return err
 	}
 	net := &m.drive.net
 	charged := net.Node()
 	m.source = net.Voltage(charged, m.drive.node(n["lower"]))
-	m.on = net.Resistor(charged, m.drive.node(n["base1"]))
+	m.on = net.Resistor(charged, m.drive.node(m.outlet))
 	m.gate = net.Diode(m.drive.node(g["gate"]), m.drive.node(g["cathode"]))
 	m.neighbours()
 	if err := m.drive.compile(); err != nil {
@@ -132,7 +132,7 @@ func (m *scrGate) driveNetwork() error {
 		}
 	}
 	m.n = gateNodes{gate: m.drive.node(g["gate"]), cathode: m.drive.node(g["cathode"]), lower: m.drive.node(n["lower"]),
-		base1: m.drive.node(n["base1"]), quietGate: m.standing.node(g["gate"]), quietCathode: m.standing.node(g["cathode"])}
+		outlet: m.drive.node(m.outlet), quietGate: m.standing.node(g["gate"]), quietCathode: m.standing.node(g["cathode"])}
 	m.turnOn, _, _ = m.scr.Limit("tgt")
 	return nil
 }
@@ -178,17 +178,17 @@ func (m *scrGate) neighbours() {
 
 // gateAt works oscillator and gate out at one point.
 func (m *scrGate) gateAt(x []float64) {
-	m.at(x)
+	m.oscillate(x)
 	g := &m.g
 	m.drive.load(x)
 	v := m.drive.solver.Values
-	v[m.on] = m.s.on + m.s.re + 1e-6
+	v[m.on] = m.cycle.on + m.cycle.re + 1e-6
 	for _, o := range m.others {
 		v[o.branch] = x[o.volts]
 	}
 	g.scale = m.smallCapacitor()
-	g.open, _, _ = m.pulseAt(m.s.vp, never)
-	_, g.short, _ = m.pulseAt(m.s.vp, 0)
+	g.open, _, _ = m.pulseAt(m.cycle.vp, never)
+	_, g.short, _ = m.pulseAt(m.cycle.vp, 0)
 	shunt := 0.0
 	if m.shunt != nil {
 		m.shunt.load(x)
@@ -206,11 +206,12 @@ func (m *scrGate) gateAt(x []float64) {
 // clamped: voltage across the gate, current into it, current out of the capacitor.
 func (m *scrGate) pulseAt(volts, clamp float64) (across, into, out float64) {
 	s := m.drive.solver
+	volts -= m.cycle.drop
 	s.Values[m.source], s.Values[m.gate] = volts, clamp
 	s.Solve()
 	across = s.Voltage(m.n.gate) - s.Voltage(m.n.cathode)
 	into = max(across-clamp, 0) / gateSlope
-	out = (volts + s.Voltage(m.n.lower) - s.Voltage(m.n.base1)) / s.Values[m.on]
+	out = (volts + s.Voltage(m.n.lower) - s.Voltage(m.n.outlet)) / s.Values[m.on]
 	return across, into, out
 }
 
@@ -220,8 +221,11 @@ func (m *scrGate) pulseAt(volts, clamp float64) (across, into, out float64) {
 // us with C in uF (GE Transistor Manual, from memory), so that the current goes
 // as C/(2 + 5 C).
 func (m *scrGate) smallCapacitor() float64 {
+	if m.pulseFarads == 0 {
+		return 1
+	}
 	per := func(c float64) float64 { return c * 1e6 / (2 + 5*c*1e6) }
-	return min(1, per(m.s.c)/per(m.sheet.farads))
+	return min(1, per(m.cycle.c)/per(m.pulseFarads))
 }
 
 // against works out the pulse against a trigger point. Current and time follow
@@ -229,7 +233,7 @@ func (m *scrGate) smallCapacitor() float64 {
 func (m *scrGate) against(amperes, volts, shunt float64) drive {
 	g := &m.g
 	d := drive{required: amperes + volts*shunt}
-	_, into, out := m.pulseAt(m.s.vp, volts)
+	_, into, out := m.pulseAt(m.cycle.vp, volts)
 	if into <= 0 {
 		d.current = max(g.open, 0) * shunt * g.scale
 		return d
@@ -241,18 +245,18 @@ func (m *scrGate) against(amperes, volts, shunt float64) drive {
 		}
 		return d
 	}
-	second := m.s.vp * 0.98
+	second := m.cycle.vp * 0.98
 	_, into2, out2 := m.pulseAt(second, volts)
-	slopeInto, slopeOut := (into-into2)/(m.s.vp-second), (out-out2)/(m.s.vp-second)
+	slopeInto, slopeOut := (into-into2)/(m.cycle.vp-second), (out-out2)/(m.cycle.vp-second)
 	if slopeInto <= 0 || slopeOut <= 0 || d.current < d.required {
 		return d
 	}
-	last := max(m.s.vp-(into-amperes/g.scale)/slopeInto, m.s.vv)
-	end := out - slopeOut*(m.s.vp-last)
+	last := max(m.cycle.vp-(into-amperes/g.scale)/slopeInto, m.cycle.vv)
+	end := out - slopeOut*(m.cycle.vp-last)
 	if end <= 0 {
 		return d
 	}
-	d.width = max(m.s.c/slopeOut*math.Log(out/end), 0)
+	d.width = max(m.cycle.c/slopeOut*math.Log(out/end), 0)
 	return d
 }
 
@@ -264,11 +268,11 @@ const sharedSteps = 24
 // other gates take their share until they let go: the fall of the capacitor is
 // cut into steps, and in each the network is taken as straight.
 func (m *scrGate) shared(amperes, volts float64) float64 {
-	step := (m.s.vp - m.s.vv) / sharedSteps
-	_, into, out := m.pulseAt(m.s.vp, volts)
+	step := (m.cycle.vp - m.cycle.vv) / sharedSteps
+	_, into, out := m.pulseAt(m.cycle.vp, volts)
 	width := 0.0
 	for k := 1; k <= sharedSteps; k++ {
-		_, next, nextOut := m.pulseAt(m.s.vp-float64(k)*step, volts)
+		_, next, nextOut := m.pulseAt(m.cycle.vp-float64(k)*step, volts)
 		share := 1.0
 		if next < amperes {
 			share = (into - amperes) / (into - next)
@@ -278,9 +282,9 @@ func (m *scrGate) shared(amperes, volts float64) float64 {
 			return width
 		}
 		if fall := out - nextOut; fall > 1e-9*out {
-			width += m.s.c * share * step * math.Log(out/nextOut) / fall
+			width += m.cycle.c * share * step * math.Log(out/nextOut) / fall
 		} else {
-			width += m.s.c * share * step / out
+			width += m.cycle.c * share * step / out
 		}
 		if next < amperes {
 			return width

@@ -95,32 +95,9 @@ func (m *ujtModel) timeFigures() {
 			show(s.charge, "s"), show(s.discharge, "s"))
 	})
 	m.figure("frequency", "Hz", m.frequency, func() string { return "1/T" })
-	m.figure("ramp_nonlinearity", "", m.nonlinearity, func() string {
-		return "largest departure of the exponential from the straight line between its ends, over the swing"
+	m.figure("ramp_nonlinearity", "", func() float64 { return s.ramp }, func() string {
+		return "largest departure of the ramp from the straight line between its ends, over the swing"
 	})
-}
-
-func (m *ujtModel) frequency() float64 { return 1 / m.s.period }
-
-// nonlinearity returns the largest departure of the charging curve from the
-// straight line between its ends, relative to the swing. With L = ln of the
-// ratio of charging currents at the two ends the curve is
-// (1 - e^(-L t))/(1 - e^(-L)) for t from 0 to 1; the departure is greatest where
-// its slope is 1. For small L it is L/8 (series, D).
-func (m *ujtModel) nonlinearity() float64 {
-	s := &m.s
-	if !s.fires {
-		return 1 // the curve that only just reaches the peak departs by the whole swing
-	}
-	return rampDeparture(s.ramp)
-}
-
-func rampDeparture(l float64) float64 {
-	if l < 1e-3 {
-		return max(l, 0) / 8
-	}
-	whole := -math.Expm1(-l)
-	return (1-whole/l)/whole - math.Log(l/whole)/l
 }
 
 // loadFigures are what the parts have to stand.

@@ -48,23 +48,18 @@ var (
 // running) and the emitter leakage before firing, which only helps to charge.
 // Units SI, temperatures deg C.
 type ujtModel struct {
-	model
-	stage    *stage.Stage
-	ratings  *part.Ratings
-	standing *mesh // emitter open, bar in place
-	pulse    *mesh // what hangs on base one, bar left out
-	bar      network.Branch
-	caps     *capacitorNet
-	v        ujtVariables
-	s        ujtState
-	transfer []float64
-	spread   []float64
-	at0      ujtNodes
-	sheet    ujtSheet
+	relaxation       // standing: emitter open, bar in place
+	pulse      *mesh // what hangs on base one, bar left out
+	bar        network.Branch
+	v          ujtVariables
+	s          ujtState
+	spread     []float64
+	at0        ujtNodes
+	sheet      ujtSheet
 }
 
 // ujtNodes are the solver's nodes, looked up once.
-type ujtNodes struct{ node, base1, base2, upper, lower, pulse network.Node }
+type ujtNodes struct{ base1, base2, upper, lower, pulse network.Node }
 
 // ujtSheet are the test conditions of the sheet, looked up once; 0 where a
 // current holds as it stands.
@@ -78,21 +73,12 @@ type ujtVariables struct {
 
 // ujtState is the stage worked out at one point.
 type ujtState struct {
-	heat                      float64 // ambient over 25 deg C
-	eta, rbb, vd              float64
-	c                         float64 // timing capacitance
-	vth, rth                  float64
-	lower, upper              float64 // rails
-	b1, b2                    float64 // bases when it fires
-	standby                   float64 // base one over the lower rail, emitter open
-	vp, vv                    float64 // emitter when it fires, and when it stops, over the lower rail
-	atPeak, atValley          float64 // charging current
-	ip, iv                    float64
-	on, r1, re                float64 // discharge path
-	charge, discharge, period float64
-	ramp                      float64 // ln of the charging currents at valley and peak
-	leak                      float64
-	fires                     bool
+	cycle
+	heat         float64 // ambient over 25 deg C
+	eta, rbb, vd float64
+	b1, b2       float64 // bases when it fires
+	standby      float64 // base one over the lower rail, emitter open
+	ip, iv       float64
 }
 
 // newUJT builds the model of a recognised oscillator. An error says why it
@@ -102,8 +88,12 @@ func newUJT(w *circuit.Wiring, s *stage.Stage) (*ujtModel, error) {
 	if r == nil {
 		return nil, fmt.Errorf("nothing is known of the part %s", partName(s.Anchor))
 	}
-	m := &ujtModel{stage: s, ratings: r, model: model{bench: newBench(w)}}
+	m := &ujtModel{relaxation: newRelaxation(w, s)}
+	m.cycle = &m.s.cycle
 	m.evaluate = m.at
+	m.quietWorking = func() string {
+		return fmt.Sprintf("bar of %s from a rail of %s", show(m.s.rbb, "ohm"), show(m.s.upper-m.s.lower, "V"))
+	}
 	if err := m.device(); err != nil {
 		return nil, err
 	}
@@ -222,7 +212,7 @@ func (m *ujtModel) networks() error {
 		return err
 	}
 	m.bar = m.standing.resistor(m.standing.node(n["base2"]), m.standing.node(n["base1"]))
-	if err = m.standing.compile(); err != nil {
+	if err = m.readyToCharge(n["capacitor"]); err != nil {
 		return err
 	}
 	if m.pulse, err = newPulseMesh(m, n); err != nil {
@@ -231,18 +221,23 @@ func (m *ujtModel) networks() error {
 	for _, e := range series {
 		m.element(e)
 	}
-	m.at0 = ujtNodes{node: m.standing.node(n["capacitor"]), base1: m.standing.node(n["base1"]), base2: m.standing.node(n["base2"]),
+	m.pulseFarads, m.share, m.outlet, m.keepOff = m.sheet.farads, m.v.on, n["base1"], m.awayFromBaseOne()
+	m.at0 = ujtNodes{base1: m.standing.node(n["base1"]), base2: m.standing.node(n["base2"]),
 		upper: m.standing.node(n["upper"]), lower: m.standing.node(n["lower"]), pulse: m.pulse.node(n["base1"])}
-	m.caps, err = newCapacitorNet(m.bench, m.stage.Parts[stage.TimingCapacitor], n["capacitor"])
-	m.transfer = make([]float64, m.standing.solver.Nodes())
 	m.spread = make([]float64, m.pulse.solver.Nodes())
-	return err
+	return m.capacitors(n["capacitor"])
+}
+
+// awayFromBaseOne lists what the pulse does not flow through although a rail
+// leads there.
+func (m *ujtModel) awayFromBaseOne() []*circuit.Element {
+	return append(append([]*circuit.Element{}, m.stage.Parts[stage.TimingResistor]...), m.stage.Parts[stage.BaseTwo]...)
 }
 
 // newPulseMesh takes in what hangs on base one: the network that the discharge
 // flows into.
 func newPulseMesh(m *ujtModel, n map[string]circuit.NodeID) (*mesh, error) {
-	keepOff := append(append([]*circuit.Element{}, m.stage.Parts[stage.TimingResistor]...), m.stage.Parts[stage.BaseTwo]...)
+	keepOff := m.awayFromBaseOne()
 	p, err := newMesh(m.bench, []circuit.NodeID{n["base1"], n["lower"]}, func(e *circuit.Element) bool {
 		return contains(keepOff, e)
 	})
@@ -281,30 +276,34 @@ func (m *ujtModel) at(x []float64) {
 
 // solveStanding reduces the charging network and finds the peak voltage. With
 // an emitter current j out of the network into the capacitor every potential is
-// linear in j, so that the firing condition is one linear equation, also where
-// the supply is soft and the charging current moves the bases.
+// linear in j as long as the diodes stay on their segments, so that the firing
+// condition is one linear equation, also where the supply is soft and the
+// charging current moves the bases. Where diodes or transistors charge, that is
+// repeated from the current found until it stays.
 func (m *ujtModel) solveStanding(x []float64) {
 	s, n := &m.s, &m.at0
 	mesh := m.standing
 	mesh.load(x)
 	mesh.solver.Values[m.bar] = s.rbb
-	mesh.solver.Solve()
-	node, one, two := n.node, n.base1, n.base2
-	mesh.solver.Transfer(node, m.transfer)
-	s.vth, s.rth = mesh.solver.Voltage(node), m.transfer[node]
+	m.charging.draw(0)
 	s.lower, s.upper = mesh.solver.Voltage(n.lower), mesh.solver.Voltage(n.upper)
-	b1, b2 := mesh.solver.Voltage(one), mesh.solver.Voltage(two)
-	s.standby = b1 - s.lower
-	pull := ((1-s.eta)*m.transfer[one] + s.eta*m.transfer[two]) / s.rth
-	peak := (s.vd + (1-s.eta)*b1 + s.eta*b2 - pull*s.vth) / (1 - pull)
-	j := (peak - s.vth) / s.rth
-	s.b1, s.b2 = b1+m.transfer[one]*j, b2+m.transfer[two]*j
+	s.standby = mesh.solver.Voltage(n.base1) - s.lower
+	peak := m.charging.meet(func() (float64, float64) {
+		t := m.charging.transfer
+		b1, b2 := m.charging.idle(n.base1), m.charging.idle(n.base2)
+		s.vth, s.rth = m.charging.thevenin()
+		pull := ((1-s.eta)*t[n.base1] + s.eta*t[n.base2]) / s.rth
+		peak := (s.vd + (1-s.eta)*b1 + s.eta*b2 - pull*s.vth) / (1 - pull)
+		j := (s.vth - peak) / s.rth
+		s.b1, s.b2 = b1-t[n.base1]*j, b2-t[n.base2]*j
+		return peak, j
+	})
 	s.vp = peak - s.lower
 	// A valley above nine tenths of the peak is no valley: the assumed figure
 	// then is too high for this supply.
 	s.vv = min(x[m.v.vv], 0.9*s.vp)
 	s.atPeak = (s.vth - peak) / s.rth
-	s.atValley = (s.vth - s.lower - s.vv) / s.rth
+	s.atValley = m.charging.current(s.lower + s.vv)
 	s.fires = s.atPeak > 0
 }
 
@@ -359,11 +358,5 @@ const noPath = 1e9
 func (m *ujtModel) times() {
 	s := &m.s
 	s.discharge = (s.on + s.r1 + s.re) * s.c * math.Log(s.vp/s.vv)
-	if !s.fires {
-		s.charge, s.period = math.Inf(1), math.Inf(1)
-		return
-	}
-	s.ramp = math.Log1p((s.vp - s.vv) / (s.rth * s.atPeak))
-	s.charge = s.rth * s.c * s.ramp
-	s.period = s.charge + s.discharge
+	m.fill()
 }

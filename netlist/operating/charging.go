@@ -1,0 +1,190 @@
+package operating
+
+import (
+	"math"
+
+	"standoff/netlist/circuit"
+	"standoff/netlist/network"
+)
+
+// charging is the network that fills the timing capacitor, as the capacitor sees
+// it. Between two changes of state of diodes and transistors the current into
+// the capacitor falls straight with its voltage:
+//
+//	i = (vth - v)/rth
+//
+// and the time from v1 to v2 is rth C ln((vth - v1)/(vth - v2)). Where states
+// change on the way, the straight pieces are joined where they cross. Exact for
+// the piecewise-linear network; units SI.
+type charging struct {
+	mesh     *mesh
+	node     network.Node
+	probe    network.Branch // the current into the capacitor
+	transfer []float64      // rise of every node for 1 A into the capacitor's net
+	bends    bool           // diodes or transistors stand in the network
+}
+
+// newCharging adds the probe to a mesh that is not compiled yet.
+func newCharging(m *mesh, capacitor circuit.NodeID) *charging {
+	c := &charging{mesh: m, node: m.node(capacitor), bends: m.bends}
+	c.probe = m.net.Current(c.node, 0)
+	return c
+}
+
+// draw solves the network with a current flowing into the capacitor.
+func (c *charging) draw(amperes float64) {
+	c.mesh.solver.Values[c.probe] = amperes
+	c.mesh.solver.Solve()
+	c.mesh.solver.Transfer(c.node, c.transfer)
+}
+
+// thevenin returns the straight piece of the last solution: the voltage at which
+// it would deliver nothing, and its resistance.
+func (c *charging) thevenin() (volts, ohms float64) {
+	return c.idle(c.node), c.transfer[c.node]
+}
+
+// idle returns the potential that a node would have on the straight piece of the
+// last solution with nothing drawn.
+func (c *charging) idle(n network.Node) float64 {
+	return c.mesh.solver.Voltage(n) + c.transfer[n]*c.mesh.solver.Values[c.probe]
+}
+
+// maxPieces bounds the search for the straight piece on which a condition holds.
+const maxPieces = 40
+
+// meet looks for the capacitor voltage at which a condition holds that is linear
+// on a straight piece: condition reads the last solution and returns voltage and
+// current where it would hold on that piece. The network is left solved there.
+func (c *charging) meet(condition func() (volts, amperes float64)) float64 {
+	volts, amperes := condition()
+	if !c.bends {
+		return volts
+	}
+	drawn := c.mesh.solver.Values[c.probe]
+	for range maxPieces {
+		if math.Abs(amperes-drawn) <= 1e-9*math.Abs(amperes)+1e-15 {
+			break
+		}
+		drawn = amperes
+		c.draw(drawn)
+		volts, amperes = condition()
+	}
+	return volts
+}
+
+// tangent returns the straight piece at a capacitor voltage.
+func (c *charging) tangent(volts float64) piece {
+	c.meet(func() (float64, float64) {
+		vth, rth := c.thevenin()
+		return volts, (vth - volts) / rth
+	})
+	vth, rth := c.thevenin()
+	return piece{vth, rth}
+}
+
+// current returns the charging current at a capacitor voltage.
+func (c *charging) current(volts float64) float64 { return c.tangent(volts).current(volts) }
+
+// piece is a straight piece of the charging current.
+type piece struct{ vth, rth float64 }
+
+func (p piece) current(volts float64) float64 { return (p.vth - volts) / p.rth }
+
+// crossing returns the voltage at which two pieces carry the same current.
+func (p piece) crossing(q piece) float64 {
+	return (p.vth*q.rth - q.vth*p.rth) / (q.rth - p.rth)
+}
+
+// time returns how long the capacitor takes from the valley to the peak and how
+// far, relative to the swing, its voltage departs from the straight line between
+// them. The current at the peak must be positive.
+func (c *charging) time(s *cycle) (seconds, departure float64) {
+	from, to := s.lower+s.vv, s.lower+s.vp
+	last := piece{s.vth, s.rth}
+	if !c.bends {
+		l := math.Log1p((to - from) / (s.rth * s.atPeak))
+		return s.rth * s.c * l, rampDeparture(l)
+	}
+	r := ramp{charging: c, farads: s.c, at: []moment{{0, from}}}
+	r.climb(c.tangent(from), last, from, to, maxDepth)
+	return r.seconds, r.departure()
+}
+
+// maxDepth bounds how often a stretch of the ramp is split: 2^12 pieces are far
+// more than diodes on a board.
+const maxDepth = 12
+
+// ramp is the capacitor voltage over time.
+type ramp struct {
+	charging *charging
+	farads   float64
+	seconds  float64
+	at       []moment // ends of the straight pieces of current
+	pieces   []piece
+}
+
+type moment struct{ seconds, volts float64 }
+
+// climb adds the way from one voltage to the next, given the straight pieces at
+// both ends.
+func (r *ramp) climb(p, q piece, from, to float64, depth int) {
+	near := math.Abs(p.current(to)-q.current(to)) <= 1e-6*math.Abs(q.current(to))
+	if near || depth == 0 {
+		r.add(p, from, to)
+		return
+	}
+	middle := p.crossing(q)
+	if !(middle > from && middle < to) {
+		middle = (from + to) / 2
+	}
+	between := r.charging.tangent(middle)
+	if math.Abs(between.current(middle)-p.current(middle)) <= 1e-6*math.Abs(p.current(middle)) &&
+		math.Abs(p.current(middle)-q.current(middle)) <= 1e-6*math.Abs(p.current(middle)) {
+		r.add(p, from, middle)
+		r.add(q, middle, to)
+		return
+	}
+	r.climb(p, between, from, middle, depth-1)
+	r.climb(between, q, middle, to, depth-1)
+}
+
+// add appends a straight piece.
+func (r *ramp) add(p piece, from, to float64) {
+	r.seconds += r.farads * p.rth * math.Log1p((to-from)/(p.rth*p.current(to)))
+	r.at = append(r.at, moment{r.seconds, to})
+	r.pieces = append(r.pieces, p)
+}
+
+// departure returns the largest distance from the straight line between the ends
+// of the ramp, relative to the swing: at an end of a piece, or inside one where
+// its slope is that of the line.
+func (r *ramp) departure() float64 {
+	first, last := r.at[0], r.at[len(r.at)-1]
+	slope := (last.volts - first.volts) / (last.seconds - first.seconds)
+	most := 0.0
+	off := func(seconds, volts float64) {
+		most = max(most, math.Abs(volts-first.volts-slope*seconds))
+	}
+	for i, p := range r.pieces {
+		a, b := r.at[i], r.at[i+1]
+		off(b.seconds, b.volts)
+		if v := p.vth - slope*r.farads*p.rth; v > a.volts && v < b.volts {
+			off(a.seconds+r.farads*p.rth*math.Log((p.vth-a.volts)/(p.vth-v)), v)
+		}
+	}
+	return most / (last.volts - first.volts)
+}
+
+// rampDeparture returns the largest departure of an exponential charging curve
+// from the straight line between its ends, relative to the swing. With L = ln of
+// the ratio of charging currents at the two ends the curve is
+// (1 - e^(-L t))/(1 - e^(-L)) for t from 0 to 1; the departure is greatest where
+// its slope is 1. For small L it is L/8 (series, derived).
+func rampDeparture(l float64) float64 {
+	if l < 1e-3 {
+		return max(l, 0) / 8
+	}
+	whole := -math.Expm1(-l)
+	return (1-whole/l)/whole - math.Log(l/whole)/l
+}

@@ -1,0 +1,92 @@
+package operating
+
+import (
+	"math"
+
+	"standoff/netlist/circuit"
+	"standoff/netlist/part"
+	"standoff/netlist/stage"
+)
+
+// relaxation is what all oscillators have in common that fill a capacitor
+// through a network and empty it into a device: UJT, PUT and breakover device
+// each add how the device fires and what it asks for. A gate stage sees its
+// driver as a relaxation, whatever the device.
+type relaxation struct {
+	model
+	stage    *stage.Stage
+	ratings  *part.Ratings
+	standing *mesh // what charges, the device off
+	charging *charging
+	caps     *capacitorNet
+	cycle    *cycle // the result at the last evaluated point
+
+	// What a gate stage wants to know of its driver.
+	outlet       circuit.NodeID     // where the pulse comes out
+	keepOff      []*circuit.Element // what the pulse does not flow through
+	share        int                // variable of the on-resistance
+	pulseFarads  float64            // least capacitor with which the maker specifies the pulse; 0 for any
+	quietWorking func() string      // where the voltage before the pulse comes from
+}
+
+// cycle is one period at one point. Voltages V over the lower rail but for vth
+// and the rails themselves, which count from the reference; currents A, times s.
+type cycle struct {
+	c                         float64 // timing capacitance
+	vth, rth                  float64 // charging network at the peak, as the capacitor sees it
+	lower, upper              float64 // rails
+	vp, vv                    float64 // capacitor when the device fires, and when it stops
+	atPeak, atValley          float64 // charging current
+	drop, on, r1, re          float64 // discharge path: constant drop, device, what hangs on the outlet, lead
+	charge, discharge, period float64
+	ramp                      float64 // nonlinearity of the ramp
+	leak                      float64
+	fires                     bool
+}
+
+// newRelaxation starts a model.
+func newRelaxation(w *circuit.Wiring, s *stage.Stage) relaxation {
+	return relaxation{stage: s, ratings: s.Anchor.Ratings, model: model{bench: newBench(w)}, share: -1}
+}
+
+// newDriver builds the model of whatever fires a gate.
+func newDriver(w *circuit.Wiring, s *stage.Stage) (*relaxation, error) {
+	m, err := newUJT(w, s)
+	if err != nil {
+		return nil, err
+	}
+	return &m.relaxation, nil
+}
+
+// readyToCharge compiles the standing mesh with the capacitor's net as the place
+// where current is drawn.
+func (m *relaxation) readyToCharge(capacitor circuit.NodeID) error {
+	m.charging = newCharging(m.standing, capacitor)
+	if err := m.standing.compile(); err != nil {
+		return err
+	}
+	m.charging.transfer = make([]float64, m.standing.solver.Nodes())
+	return nil
+}
+
+// capacitors readies the capacitor network at its net.
+func (m *relaxation) capacitors(at circuit.NodeID) error {
+	var err error
+	m.caps, err = newCapacitorNet(m.bench, m.stage.Parts[stage.TimingCapacitor], at)
+	return err
+}
+
+// fill works out charge time, period and nonlinearity from the peak and valley
+// of the cycle and its discharge time. A stage that never fires has an infinite
+// period.
+func (m *relaxation) fill() {
+	s := m.cycle
+	if !s.fires {
+		s.charge, s.period, s.ramp = math.Inf(1), math.Inf(1), 1
+		return
+	}
+	s.charge, s.ramp = m.charging.time(s)
+	s.period = s.charge + s.discharge
+}
+
+func (m *relaxation) frequency() float64 { return 1 / m.cycle.period }
