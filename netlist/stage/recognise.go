@@ -6,32 +6,44 @@ import (
 	"standoff/netlist/circuit"
 )
 
+// topology is one row of what can be recognised: the part that a stage stands
+// around, its terminals in the order in which the builder takes their nets, and
+// the builder.
+type topology struct {
+	part  circuit.Kind
+	kind  Kind
+	roles []string
+	build func(r *recogniser, anchor *circuit.Element, nets []circuit.NodeID) *Stage
+}
+
+// topologies lists the timing stages first: a gate stage asks for its driver.
+var topologies = [...]topology{
+	{circuit.UJT, UJTOscillator, []string{"emitter", "base1", "base2"}, (*recogniser).ujt},
+	{circuit.SCR, SCRGate, []string{"anode", "gate", "cathode"}, (*recogniser).scr},
+}
+
 // Recognise returns the stages of a circuit: the timing stages first, then the
-// gate stages, each in the order of their anchors' cards. Links are followed:
-// a timing stage lists the gate stages that it drives.
+// gate stages, those of one kind in the order of their anchors' cards. Links are
+// followed: a timing stage lists the gate stages that it drives.
 func Recognise(c *circuit.Circuit) []*Stage {
 	if !slices.ContainsFunc(c.Elements, isAnchor) {
 		return nil
 	}
 	r := &recogniser{w: circuit.NewWiring(c)}
-	for _, e := range c.Elements {
-		if e.Kind == circuit.UJT {
-			r.stages = append(r.stages, r.ordered(e, r.ujt))
+	for i := range topologies {
+		for _, e := range c.Elements {
+			if e.Kind == topologies[i].part {
+				r.stages = append(r.stages, r.ordered(e, &topologies[i]))
+			}
 		}
 	}
-	timing := slices.Clone(r.stages)
-	for _, e := range c.Elements {
-		if e.Kind == circuit.SCR {
-			r.stages = append(r.stages, r.ordered(e, r.scr))
-		}
-	}
-	link(timing, r.stages[len(timing):])
+	r.link()
 	return r.stages
 }
 
 // isAnchor reports whether a stage can stand around this element.
 func isAnchor(e *circuit.Element) bool {
-	return e.Kind == circuit.UJT || e.Kind == circuit.SCR
+	return slices.ContainsFunc(topologies[:], func(t topology) bool { return t.part == e.Kind })
 }
 
 // recogniser is the state of one call of Recognise.
@@ -41,10 +53,10 @@ type recogniser struct {
 }
 
 // link notes which timing stage fires which gate stage.
-func link(timing, gates []*Stage) {
-	for _, t := range timing {
-		for _, g := range gates {
-			if slices.Contains(g.Parts[Driver], t.Anchor) {
+func (r *recogniser) link() {
+	for _, t := range r.stages {
+		for _, g := range r.stages {
+			if g != t && slices.Contains(g.Parts[Driver], t.Anchor) {
 				t.Drives = append(t.Drives, g)
 				g.DrivenBy = t
 			}
@@ -52,9 +64,15 @@ func link(timing, gates []*Stage) {
 	}
 }
 
-// builder recognises one topology around an anchor whose terminals lie on the
-// given nets, in the order of its roles. What is missing stands in Gap.
-type builder func(anchor *circuit.Element, nets [3]circuit.NodeID) *Stage
+// outletAt returns the oscillator whose pulse comes out at a net.
+func (r *recogniser) outletAt(n circuit.NodeID) *Stage {
+	for _, s := range r.stages {
+		if outlet, ok := s.Nodes["outlet"]; ok && s.Gap == "" && outlet == n {
+			return s
+		}
+	}
+	return nil
+}
 
 // OrderNote says that wiring and terminal order do not agree.
 type OrderNote struct {
@@ -66,13 +84,12 @@ type OrderNote struct {
 // ordered builds a stage in the terminal order that was taken. Where that makes
 // no working stage and exactly one other order does, the stage says so; an
 // order that nobody wrote down then gives way to the wiring.
-func (r *recogniser) ordered(e *circuit.Element, build builder) *Stage {
+func (r *recogniser) ordered(e *circuit.Element, t *topology) *Stage {
 	roles := e.Roles
-	if len(e.Nodes) != 3 || len(roles) != 3 {
-		return &Stage{Anchor: e, Kind: kindOf(e), Gap: "its terminals are not known"}
+	if len(e.Nodes) != len(t.roles) || len(roles) != len(t.roles) {
+		return &Stage{Anchor: e, Kind: t.kind, Gap: "its terminals are not known"}
 	}
-	canonical := canonicalRoles(e.Kind)
-	taken := build(e, netsOf(r.w, e, roles, canonical))
+	taken := t.build(r, e, netsOf(r.w, e, roles, t.roles))
 	if taken.Gap == "" {
 		return taken
 	}
@@ -82,7 +99,7 @@ func (r *recogniser) ordered(e *circuit.Element, build builder) *Stage {
 		if slices.Equal(candidate, roles) {
 			continue
 		}
-		if s := build(e, netsOf(r.w, e, candidate, canonical)); s.Gap == "" {
+		if s := t.build(r, e, netsOf(r.w, e, candidate, t.roles)); s.Gap == "" {
 			if other != nil {
 				return taken // two ways to read it: no verdict from wiring
 			}
@@ -102,22 +119,8 @@ func (r *recogniser) ordered(e *circuit.Element, build builder) *Stage {
 	return taken
 }
 
-func kindOf(e *circuit.Element) Kind {
-	if e.Kind == circuit.UJT {
-		return UJTOscillator
-	}
-	return SCRGate
-}
-
-// canonicalRoles returns the roles in the order in which a builder takes nets.
-func canonicalRoles(k circuit.Kind) []string {
-	if k == circuit.UJT {
-		return []string{"emitter", "base1", "base2"}
-	}
-	return []string{"anode", "gate", "cathode"}
-}
-
-func netsOf(w *circuit.Wiring, e *circuit.Element, roles, canonical []string) (nets [3]circuit.NodeID) {
+func netsOf(w *circuit.Wiring, e *circuit.Element, roles, canonical []string) []circuit.NodeID {
+	nets := make([]circuit.NodeID, len(canonical))
 	for i, want := range canonical {
 		if at := slices.Index(roles, want); at >= 0 {
 			nets[i] = w.Net(e.Nodes[at])
@@ -126,9 +129,19 @@ func netsOf(w *circuit.Wiring, e *circuit.Element, roles, canonical []string) (n
 	return nets
 }
 
-func permutations(r []string) [][]string {
-	return [][]string{{r[0], r[1], r[2]}, {r[0], r[2], r[1]}, {r[1], r[0], r[2]},
-		{r[1], r[2], r[0]}, {r[2], r[0], r[1]}, {r[2], r[1], r[0]}}
+// permutations returns every order of the roles.
+func permutations(roles []string) [][]string {
+	if len(roles) < 2 {
+		return [][]string{roles}
+	}
+	var list [][]string
+	for i := range roles {
+		rest := append(slices.Clone(roles[:i]), roles[i+1:]...)
+		for _, p := range permutations(rest) {
+			list = append(list, append([]string{roles[i]}, p...))
+		}
+	}
+	return list
 }
 
 // newStage returns an empty stage.

@@ -10,7 +10,7 @@ import (
 // anode circuit. It makes a working stage where the anode reaches a supply
 // through a load (or the cathode does) and, if a unijunction transistor fires
 // it, the cathode lies on the rail to which the pulse is referred.
-func (r *recogniser) scr(anchor *circuit.Element, nets [3]circuit.NodeID) *Stage {
+func (r *recogniser) scr(anchor *circuit.Element, nets []circuit.NodeID) *Stage {
 	g := &gateReading{r: r, w: r.w, stage: newStage(SCRGate, anchor), anode: nets[0], gate: nets[1], cathode: nets[2]}
 	s := g.stage
 	s.Nodes["anode"], s.Nodes["gate"], s.Nodes["cathode"] = g.anode, g.gate, g.cathode
@@ -41,11 +41,11 @@ func passesPulse(e *circuit.Element) bool {
 // gateSide walks from the gate to whatever drives it.
 func (g *gateReading) gateSide() {
 	stop := func(n circuit.NodeID) bool {
-		return g.w.IsFixed(n) || n == g.cathode || n == g.anode || g.driverAt(n) != nil
+		return g.w.IsFixed(n) || n == g.cathode || n == g.anode || g.r.outletAt(n) != nil
 	}
 	area := g.w.Walk([]circuit.NodeID{g.gate}, passesPulse, stop)
 	for _, n := range area.Nets {
-		if d := g.driverAt(n); d != nil && g.driver == nil {
+		if d := g.r.outletAt(n); d != nil && g.driver == nil {
 			g.driver = d
 			g.stage.add(Driver, d.Anchor)
 			g.stage.Nodes["drive"] = n
@@ -66,16 +66,6 @@ func (g *gateReading) gateSide() {
 	if g.driver != nil && drive == g.gate {
 		g.stage.add(GateShunt, g.driver.Parts[BaseOne]...)
 	}
-}
-
-// driverAt returns the oscillator whose base one lies on the net.
-func (g *gateReading) driverAt(n circuit.NodeID) *Stage {
-	for _, s := range g.r.stages {
-		if s.Kind == UJTOscillator && s.Gap == "" && s.Nodes["base1"] == n {
-			return s
-		}
-	}
-	return nil
 }
 
 // leadParts returns the elements of the gate network that lie on a way from the

@@ -62,7 +62,8 @@ type Stage struct {
 	// DrivenBy is the stage that fires this one; nil where none was recognised.
 	DrivenBy *Stage
 	// Nodes holds the nodes that matter, by name: "emitter", "capacitor",
-	// "base1", "base2", "upper", "lower", "anode", "gate", "cathode".
+	// "base1", "base2", "upper", "lower", "anode", "gate", "cathode", and of a
+	// timing stage "outlet": where its pulse comes out.
 	Nodes map[string]circuit.NodeID
 	// Gap says why the stage could not be recognised in full; "" where it was.
 	Gap string

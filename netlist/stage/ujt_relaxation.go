@@ -10,10 +10,11 @@ import (
 // a capacitor at the emitter (or behind a resistor at the emitter), charged
 // from a supply through any network, base two at the upper rail and base one
 // at the lower one, each directly or through resistors.
-func (r *recogniser) ujt(anchor *circuit.Element, nets [3]circuit.NodeID) *Stage {
+func (r *recogniser) ujt(anchor *circuit.Element, nets []circuit.NodeID) *Stage {
 	u := &ujtReading{w: r.w, stage: newStage(UJTOscillator, anchor),
 		emitter: nets[0], base1: nets[1], base2: nets[2]}
 	s := u.stage
+	s.Nodes["outlet"] = u.base1
 	s.Nodes["emitter"], s.Nodes["base1"], s.Nodes["base2"] = u.emitter, u.base1, u.base2
 	for _, step := range []func() string{u.distinct, u.capacitorNode, u.rails, u.capacitors, u.charging, u.bases} {
 		if s.Gap = step(); s.Gap != "" {
