@@ -67,6 +67,12 @@ func (a *Account) cannot(err error) {
 	a.Unchecked = append(a.Unchecked, Unchecked{Because: err.Error()})
 }
 
+// take works out the comparisons of a model and keeps it for the figures.
+func (a *Account) take(m *model) {
+	a.model, a.uses = m, m.slots
+	a.Comparisons = m.allComparisons()
+}
+
 // oscillator fills the account of a unijunction oscillator.
 func (a *Account) oscillator(w *circuit.Wiring, s *stage.Stage) {
 	m, err := newUJT(w, s)
@@ -74,23 +80,22 @@ func (a *Account) oscillator(w *circuit.Wiring, s *stage.Stage) {
 		a.cannot(err)
 		return
 	}
-	a.uses = m.slots
-	a.Figures, a.Comparisons = m.solve()
-	a.drift(drifting{&m.model, m.frequency}, s)
+	a.take(&m.model)
+	a.drift(&drifting{&m.model, m.frequency}, s)
 	a.baseTwo(m)
 	a.Unchecked = append(a.Unchecked, m.unchecked()...)
 	a.Facts["base-one-missing"] = len(s.Parts[stage.BaseOne]) == 0 && !w.IsFixed(s.Nodes["base1"])
 }
 
-// drift adds the drift over the ambient range and what it is held against.
-func (a *Account) drift(d drifting, s *stage.Stage) {
+// drift adds what the drift over the ambient range is held against, and keeps
+// what the figure needs.
+func (a *Account) drift(d *drifting, s *stage.Stage) {
 	if d.span() == 0 {
 		return
 	}
-	drift := d.figure()
-	a.Figures = append(a.Figures, drift)
+	a.drifting = d
 	t := s.Anchor.Intent
-	a.Comparisons = append(a.Comparisons, d.comparisons(drift, frequencyTarget(t.Frequency, t.Period))...)
+	a.Comparisons = append(a.Comparisons, d.comparisons(frequencyTarget(t.Frequency, t.Period))...)
 }
 
 // gate fills the account of a gate stage.
@@ -115,8 +120,7 @@ func (a *Account) gate(w *circuit.Wiring, s *stage.Stage) {
 				Because: "it empties a capacitor, and the current of that is not worked out yet"})
 		}
 	}
-	a.uses = m.slots
-	a.Figures, a.Comparisons = m.solve()
+	a.take(&m.model)
 	a.Comparisons = severest(a.Comparisons)
 	a.Unchecked = append(a.Unchecked, m.unchecked()...)
 	m.evaluate(m.nominal())

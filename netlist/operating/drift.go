@@ -89,8 +89,12 @@ func (d drifting) figure() Figure {
 	}, numeric.Hints{})[0]
 	return Figure{Name: "frequency_drift", Low: e.Low, Nominal: e.Nominal, High: e.High,
 		LowAt: d.corner(e.LowAt, e.Moves), HighAt: d.corner(e.HighAt, e.Moves), Assumed: d.assumptions(e.Moves),
-		Mark: d.mark(e.Moves), Working: fmt.Sprintf("(greatest - least frequency)/frequency over %s .. %s, all else unchanged",
-			show(d.box[d.ambient].Low, "deg C"), show(d.box[d.ambient].High, "deg C"))}
+		Mark: d.mark(e.Moves), Working: d.working()}
+}
+
+func (d drifting) working() string {
+	return fmt.Sprintf("(greatest - least frequency)/frequency over %s .. %s, all else unchanged",
+		show(d.box[d.ambient].Low, "deg C"), show(d.box[d.ambient].High, "deg C"))
 }
 
 // driftHabit is the drift per 10 K above which a timing stage is called
@@ -99,10 +103,11 @@ const driftHabit = 0.01
 
 // comparisons returns what the drift is held against: the habit, and the
 // declared target with temperature alone moving the nominal board.
-func (d drifting) comparisons(drift Figure, target *quantity.Spread) []Comparison {
-	list := []Comparison{{Name: "frequency_drift_per_10k", Value: drift.Nominal * 10 / d.span(), Limit: driftHabit,
-		LimitName: "habit", Bound: Max, Working: drift.Working + " (nominal board)", Assumed: drift.Assumed,
-		Because: "1 % per 10 K is a habit, not a rating"}}
+func (d drifting) comparisons(target *quantity.Spread) []Comparison {
+	nominal := Comparison{Working: d.working() + " (nominal board)"}
+	list := []Comparison{nominal}
+	list[0].Name, list[0].Value, list[0].Limit = "frequency_drift_per_10k", d.relative(d.nominal())*10/d.span(), driftHabit
+	list[0].LimitName, list[0].Bound, list[0].Because = "habit", Max, "1 % per 10 K is a habit, not a rating"
 	if target == nil {
 		return list
 	}
@@ -110,7 +115,7 @@ func (d drifting) comparisons(drift Figure, target *quantity.Spread) []Compariso
 	low, high := d.over(x)
 	add := func(name string, bound Bound, value, limit float64) {
 		list = append(list, Comparison{Name: name, Value: value, Limit: limit, LimitName: "target", Bound: bound,
-			Unit: "Hz", Working: drift.Working + " (nominal board)", Certain: true})
+			Unit: "Hz", Working: nominal.Working, Certain: true})
 	}
 	add("frequency_drift_lowest", Min, low, target.Low)
 	add("frequency_drift_highest", Max, high, target.High)

@@ -4,6 +4,8 @@
 package operating
 
 import (
+	"math"
+
 	"standoff/netlist/circuit"
 	"standoff/netlist/part"
 	"standoff/netlist/stage"
@@ -81,19 +83,44 @@ type Unchecked struct {
 	Because string
 }
 
-// Account is everything worked out of one stage.
+// Account is everything worked out of one stage. It is not safe for use by
+// several goroutines at once.
 type Account struct {
 	Stage       *stage.Stage
-	Figures     []Figure // in the order of the worksheet
 	Comparisons []Comparison
 	Facts       map[string]bool // yes/no findings of the physics, by name
 	Unchecked   []Unchecked
 	uses        map[*circuit.Element]slot // what entered; nil where nothing was worked out
+	model       *model                    // nil where nothing was worked out
+	drifting    *drifting                 // nil where nothing drifts
+	figures     []Figure                  // once they were asked for
+}
+
+// Figures returns what a worksheet shows, in its order. The bounds are searched
+// for when they are asked for first: a verdict needs the comparisons only.
+func (a *Account) Figures() []Figure {
+	if a.figures != nil || a.model == nil {
+		return a.figures
+	}
+	a.figures = a.model.allFigures()
+	if a.drifting != nil {
+		a.figures = append(a.figures, a.drifting.figure())
+	}
+	return a.figures
+}
+
+// Nominal returns a figure on the nominal board; NaN where there is none of that
+// name.
+func (a *Account) Nominal(name string) float64 {
+	if a.model == nil {
+		return math.NaN()
+	}
+	return a.model.nominalOf(name)
 }
 
 // Figure returns the figure of that name.
 func (a *Account) Figure(name string) (Figure, bool) {
-	for _, f := range a.Figures {
+	for _, f := range a.Figures() {
 		if f.Name == name {
 			return f, true
 		}

@@ -64,16 +64,11 @@ func (m *model) last() *output { return &m.outputs[len(m.outputs)-1] }
 // compare appends a contest.
 func (m *model) compare(c contest) { m.contests = append(m.contests, c) }
 
-// solve works out every output and contest over the box.
-func (m *model) solve() ([]Figure, []Comparison) {
-	n := len(m.outputs)
-	extremes := m.extremes()
-	nominal := make([]float64, len(m.box))
-	for i, v := range m.box {
-		nominal[i] = v.Nominal
-	}
-	m.evaluate(nominal)
-	figures := make([]Figure, 0, n)
+// allFigures works out every output over the box.
+func (m *model) allFigures() []Figure {
+	extremes := m.search(m.figuresSought())
+	m.evaluate(m.nominal())
+	figures := make([]Figure, 0, len(m.outputs))
 	for j, o := range m.outputs {
 		e := extremes[j]
 		if math.IsNaN(e.Nominal) {
@@ -83,13 +78,66 @@ func (m *model) solve() ([]Figure, []Comparison) {
 			LowAt: m.corner(e.LowAt, e.Moves), HighAt: m.corner(e.HighAt, e.Moves),
 			Working: o.working(), Assumed: m.assumptions(e.Moves), Mark: m.mark(e.Moves)})
 	}
+	return figures
+}
+
+// allComparisons works out the worst point of every contest.
+func (m *model) allComparisons() []Comparison {
+	sought := m.contestsSought()
+	extremes := m.search(sought)
 	var comparisons []Comparison
 	for k := range m.contests {
-		if c, ok := m.decide(k, extremes[n+k]); ok {
+		if c, ok := m.decide(k, extremes[k]); ok {
 			comparisons = append(comparisons, c)
 		}
 	}
-	return figures, comparisons
+	return comparisons
+}
+
+// nominalOf returns an output at the nominal point, NaN where there is none of
+// that name.
+func (m *model) nominalOf(name string) float64 {
+	for _, o := range m.outputs {
+		if o.name == name {
+			m.evaluate(m.nominal())
+			return o.of()
+		}
+	}
+	return math.NaN()
+}
+
+// sought is one function of the board whose extremes are looked for.
+type sought struct {
+	of                  func() float64
+	bent, guide, guided bool
+	lowOnly, highOnly   bool
+}
+
+// figuresSought lists the outputs.
+func (m *model) figuresSought() []sought {
+	list := make([]sought, len(m.outputs))
+	for j, o := range m.outputs {
+		list[j] = sought{of: o.of, bent: o.bent, guide: o.guide, guided: o.guided}
+	}
+	return list
+}
+
+// contestsSought lists the contests, and behind them the outputs that guide
+// some.
+func (m *model) contestsSought() []sought {
+	list := make([]sought, len(m.contests), len(m.contests)+2)
+	guided := false
+	for k := range m.contests {
+		c := &m.contests[k]
+		guided = guided || c.guided
+		list[k] = sought{of: c.ratio, bent: c.bent, guided: c.guided, lowOnly: c.bound == Min, highOnly: c.bound == Max}
+	}
+	for _, o := range m.outputs {
+		if o.guide && guided {
+			list = append(list, sought{of: o.of, guide: true, lowOnly: true, highOnly: true})
+		}
+	}
+	return list
 }
 
 // bentSlack is by how much, relatively, the bounds of a bent output are moved
@@ -97,63 +145,39 @@ func (m *model) solve() ([]Figure, []Comparison) {
 // grid only.
 const bentSlack = 5e-3
 
-// extremes searches the box for every output and every contest.
-func (m *model) extremes() []numeric.Extreme {
-	hints := numeric.Hints{One: m.one}
-	for j, o := range m.outputs {
-		if o.bent {
-			hints.Bent = append(hints.Bent, j)
-		}
-		if o.guide {
-			hints.Guides = append(hints.Guides, j)
-		}
-		if o.guided {
-			hints.Guided = append(hints.Guided, j)
+// search looks for the extremes over the box.
+func (m *model) search(list []sought) []numeric.Extreme {
+	hints := numeric.Hints{One: func(x []float64, j int) float64 {
+		m.evaluate(x)
+		return list[j].of()
+	}}
+	mark := func(to *[]int, j int, yes bool) {
+		if yes {
+			*to = append(*to, j)
 		}
 	}
-	for k, c := range m.contests {
-		j := len(m.outputs) + k
-		if c.guided {
-			hints.Guided = append(hints.Guided, j)
-		}
-		if c.bent {
-			hints.Bent = append(hints.Bent, j)
-		}
-		if c.bound == Min {
-			hints.LowOnly = append(hints.LowOnly, j)
-		} else {
-			hints.HighOnly = append(hints.HighOnly, j)
-		}
+	for j, s := range list {
+		mark(&hints.Bent, j, s.bent)
+		mark(&hints.Guides, j, s.guide)
+		mark(&hints.Guided, j, s.guided)
+		mark(&hints.LowOnly, j, s.lowOnly)
+		mark(&hints.HighOnly, j, s.highOnly)
 	}
-	list := numeric.Extremes(m.box, len(m.outputs)+len(m.contests), m.function, hints)
+	extremes := numeric.Extremes(m.box, len(list), func(x, y []float64) {
+		m.evaluate(x)
+		for j := range list {
+			y[j] = list[j].of()
+		}
+	}, hints)
 	for _, j := range hints.Bent {
-		if list[j].Low == list[j].High {
+		e := &extremes[j]
+		if e.Low == e.High {
 			continue // nothing moves it
 		}
-		list[j].Low -= bentSlack * math.Abs(list[j].Low)
-		list[j].High += bentSlack * math.Abs(list[j].High)
+		e.Low -= bentSlack * math.Abs(e.Low)
+		e.High += bentSlack * math.Abs(e.High)
 	}
-	return list
-}
-
-// function feeds the search.
-func (m *model) function(x, y []float64) {
-	m.evaluate(x)
-	for j := range m.outputs {
-		y[j] = m.outputs[j].of()
-	}
-	for k := range m.contests {
-		y[len(m.outputs)+k] = m.contests[k].ratio()
-	}
-}
-
-// one feeds the search with one output.
-func (m *model) one(x []float64, j int) float64 {
-	m.evaluate(x)
-	if j < len(m.outputs) {
-		return m.outputs[j].of()
-	}
-	return m.contests[j-len(m.outputs)].ratio()
+	return extremes
 }
 
 // decide turns the worst point of a contest into a comparison.

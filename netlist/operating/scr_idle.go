@@ -44,7 +44,8 @@ func (a *Account) idleGate(w *circuit.Wiring, s *stage.Stage) {
 				working: func() string { return "everything connected from gate to cathode" }})
 		}
 	}
-	a.Figures, a.Comparisons = m.solve()
+	a.take(m)
+	a.uses = nil
 	if gate != nil {
 		m.evaluate(m.nominal())
 		a.Facts["gate-return-missing"] = ohms() > noPath

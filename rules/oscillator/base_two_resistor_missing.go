@@ -1,6 +1,8 @@
 package oscillator
 
 import (
+	"math"
+
 	"fmt"
 
 	"standoff/netlist/operating"
@@ -61,9 +63,9 @@ R3 b1 0 22
 // serving names the preferred resistor that would compensate a typical part, ""
 // where none does.
 func serving(a *operating.Account) string {
-	advised, ok := a.Figure("base_two_resistance_advised")
-	if !ok {
+	advised := a.Nominal("base_two_resistance_advised")
+	if math.IsNaN(advised) {
 		return ""
 	}
-	return "; " + quantity.Short(quantity.Nearest(advised.Nominal, 12)) + " would compensate a typical part"
+	return "; " + quantity.Short(quantity.Nearest(advised, 12)) + " would compensate a typical part"
 }

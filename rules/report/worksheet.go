@@ -54,10 +54,10 @@ func (t Terminal) stage(w io.Writer, a *operating.Account) {
 	for _, g := range s.Drives {
 		fmt.Fprintf(w, "    %-20s %s\n", "drives", source.Visible(g.Anchor.Designator))
 	}
-	if len(a.Figures) > 0 {
+	if len(a.Figures()) > 0 {
 		fmt.Fprintf(w, "\n    %-32s %12s %12s %12s\n", "", "low", "nominal", "high")
 	}
-	for _, f := range a.Figures {
+	for _, f := range a.Figures() {
 		show := func(v float64) string { return quantity.Format(v, f.Unit) }
 		fmt.Fprintf(w, "    %-32s %12s %12s %12s\n", f.Name, show(f.Low), show(f.Nominal), show(f.High))
 		for _, line := range wrap(source.Visible(f.Working), t.columns()-8) {
@@ -79,7 +79,7 @@ func (t Terminal) stage(w io.Writer, a *operating.Account) {
 func notes(a *operating.Account) []string {
 	var list []string
 	seen := map[string]bool{}
-	for _, f := range a.Figures {
+	for _, f := range a.Figures() {
 		for _, n := range f.Assumed {
 			if !seen[n] {
 				seen[n] = true

@@ -71,7 +71,7 @@ func stageOf(a *operating.Account) stageDoc {
 	for _, g := range s.Drives {
 		d.Drives = append(d.Drives, g.Anchor.Designator)
 	}
-	for _, f := range a.Figures {
+	for _, f := range a.Figures() {
 		d.Figures[f.Name] = spreadDoc{number(f.Low), number(f.Nominal), number(f.High), f.Unit, f.Working,
 			f.Assumed}
 	}
