@@ -90,3 +90,71 @@ func (m *relaxation) fill() {
 }
 
 func (m *relaxation) frequency() float64 { return 1 / m.cycle.period }
+
+// timeFigures are period, frequency, the shape of the ramp and the time to the
+// first pulse. law is the formula of the period in the symbols of the trade.
+func (m *relaxation) timeFigures(law string) {
+	s := m.cycle
+	m.figure("period", "s", func() float64 { return s.period }, func() string {
+		return law + " = " + show(s.charge, "s") + " + " + show(s.discharge, "s")
+	})
+	m.figure("frequency", "Hz", m.frequency, func() string { return "1/T" })
+	m.figure("first_pulse", "s", m.firstPulse, func() string {
+		return "time from an empty capacitor to the first pulse"
+	})
+	m.figure("ramp_nonlinearity", "", func() float64 { return s.ramp }, func() string {
+		return "largest departure of the ramp from the straight line between its ends, over the swing"
+	})
+}
+
+// firstPulse returns the time from an empty capacitor to the first pulse.
+func (m *relaxation) firstPulse() float64 {
+	if !m.cycle.fires {
+		return math.Inf(1)
+	}
+	empty := *m.cycle
+	empty.vv = 0
+	seconds, _ := m.charging.time(&empty)
+	return seconds
+}
+
+// isOneShot reports whether the stage need not run on after its first pulse: it
+// is declared latch=ok itself, or every thyristor that it fires is.
+func (m *relaxation) isOneShot() bool {
+	if m.stage.Anchor.Intent.LatchOK {
+		return true
+	}
+	for _, g := range m.stage.Drives {
+		if !g.Anchor.Intent.LatchOK {
+			return false
+		}
+	}
+	return len(m.stage.Drives) > 0
+}
+
+// targetLimits hold the period or frequency against what was declared. What a
+// one-shot stage is asked for is the time to its first pulse.
+func (m *relaxation) targetLimits() {
+	t := m.stage.Anchor.Intent
+	period := func() float64 { return m.cycle.period }
+	if m.isOneShot() {
+		period = m.firstPulse
+	}
+	frequency := func() float64 { return 1 / period() }
+	working := func() string { return "T = " + show(period(), "s") + ", f = " + show(frequency(), "Hz") }
+	add := func(name, unit string, bound Bound, value func() float64, limit float64) {
+		m.compare(contest{name: name, limitName: "target", unit: unit, bound: bound, value: value,
+			limit: func() float64 { return limit }, working: working})
+	}
+	if t.Frequency != nil {
+		add("frequency_lowest", "Hz", Min, frequency, t.Frequency.Low)
+		add("frequency_highest", "Hz", Max, frequency, t.Frequency.High)
+	}
+	if t.Period != nil {
+		add("period_shortest", "s", Min, period, t.Period.Low)
+		add("period_longest", "s", Max, period, t.Period.High)
+	}
+}
+
+// oneShotNote is said in place of a verdict on whether the stage runs on.
+const oneShotNote = "declared latch=ok: it may stay on after its first pulse"

@@ -29,7 +29,7 @@ func (m *ujtModel) figures() {
 		return "emitter voltage at which the discharge ends"
 	})
 	m.windowFigures()
-	m.timeFigures()
+	m.timeFigures("T = R_th C ln((V_th - V_V)/(V_th - V_P)) + (R_on + R_B1 + R_E) C ln(V_P/V_V)")
 	m.loadFigures()
 }
 
@@ -85,19 +85,6 @@ func (m *ujtModel) carried(symbol, law string) string {
 		return fmt.Sprintf(" as it stands (V_BB %s is not below its %s)", show(m.interbase(), "V"), show(at, "V"))
 	}
 	return fmt.Sprintf(" * "+law+" with V_BB = %s", show(at, "V"), show(m.interbase(), "V"))
-}
-
-// timeFigures are period, frequency and the shape of the ramp.
-func (m *ujtModel) timeFigures() {
-	s := &m.s
-	m.figure("period", "s", func() float64 { return s.period }, func() string {
-		return fmt.Sprintf("T = R_th C ln((V_th - V_V)/(V_th - V_P)) + (R_on + R_B1 + R_E) C ln(V_P/V_V) = %s + %s",
-			show(s.charge, "s"), show(s.discharge, "s"))
-	})
-	m.figure("frequency", "Hz", m.frequency, func() string { return "1/T" })
-	m.figure("ramp_nonlinearity", "", func() float64 { return s.ramp }, func() string {
-		return "largest departure of the ramp from the straight line between its ends, over the swing"
-	})
 }
 
 // loadFigures are what the parts have to stand.

@@ -27,7 +27,7 @@ func (m *ujtModel) windowLimits() {
 				working: func() string { return m.peakWorking() + ", less a leakage of " + show(s.leak, "A") }})
 		}
 	}
-	if m.v.iv >= 0 {
+	if m.v.iv >= 0 && !m.isOneShot() {
 		m.compare(contest{name: "charging_current_at_valley", limitName: "valley_current_available", unit: "A", bound: Max, guided: true,
 			value: func() float64 { return s.atValley }, limit: func() float64 { return s.iv }, working: m.valleyWorking})
 		m.compare(contest{name: "charging_current_at_valley_derated", limitName: "valley_current_available", unit: "A", bound: Max, guided: true,
@@ -143,25 +143,6 @@ func (m *ujtModel) barLimits() {
 	}
 }
 
-// targetLimits hold the period or frequency against what was declared.
-func (m *ujtModel) targetLimits() {
-	t := m.stage.Anchor.Intent
-	working := func() string { return "T = " + show(m.s.period, "s") + ", f = " + show(m.frequency(), "Hz") }
-	add := func(name, unit string, bound Bound, value func() float64, limit float64) {
-		m.compare(contest{name: name, limitName: "target", unit: unit, bound: bound, value: value,
-			limit: func() float64 { return limit }, working: working})
-	}
-	if t.Frequency != nil {
-		add("frequency_lowest", "Hz", Min, m.frequency, t.Frequency.Low)
-		add("frequency_highest", "Hz", Max, m.frequency, t.Frequency.High)
-	}
-	period := func() float64 { return m.s.period }
-	if t.Period != nil {
-		add("period_shortest", "s", Min, period, t.Period.Low)
-		add("period_longest", "s", Max, period, t.Period.High)
-	}
-}
-
 // unchecked lists the rules that a missing rating keeps from being judged.
 func (m *ujtModel) unchecked() []Unchecked {
 	var list []Unchecked
@@ -177,6 +158,9 @@ func (m *ujtModel) unchecked() []Unchecked {
 		if _, _, ok := m.ratings.Limit(need.symbol); !ok {
 			list = append(list, Unchecked{need.rule, missing(need.what, m.ratings)})
 		}
+	}
+	if m.isOneShot() {
+		list = append(list, Unchecked{"timing-current-above-valley", oneShotNote})
 	}
 	if m.v.tc < 0 {
 		list = append(list, Unchecked{"base-two-resistor-off", missing("temperature coefficient of the bar", m.ratings)})
