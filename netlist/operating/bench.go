@@ -2,6 +2,7 @@ package operating
 
 import (
 	"fmt"
+	"math"
 
 	"standoff/netlist/circuit"
 	"standoff/netlist/numeric"
@@ -35,6 +36,7 @@ type bench struct {
 type slot struct {
 	index  int
 	tempco int // index of the temperature coefficient in 1/K; -1 for none
+	class  int // index of a change that does not go straight with temperature; 0 for none
 }
 
 // newBench starts a bench with the ambient temperature of the board.
@@ -68,19 +70,25 @@ func (b *bench) element(e *circuit.Element) slot {
 		t.note = "spread of " + e.Designator + ": default"
 	}
 	s := slot{index: b.add(t, e.Value), tempco: -1}
-	if drift := e.Intent.Tempco; drift != nil && *drift != 0 {
-		s.tempco = b.add(trait{name: e.Designator + ".tempco", unit: "1/K"}, quantity.Exact(*drift))
-	}
+	b.drifts(e, &s)
 	b.slots[e] = s
 	return s
 }
 
 // value returns an element's value at a point, at that point's temperature.
 func (b *bench) value(s slot, x []float64) float64 {
-	if s.tempco < 0 || b.ignoreTempco {
+	if s.tempco < 0 && s.class == 0 || b.ignoreTempco {
 		return x[s.index]
 	}
-	return x[s.index] * (1 + x[s.tempco]*(x[b.ambient]-25))
+	heat := x[b.ambient] - 25
+	v := x[s.index]
+	if s.tempco >= 0 {
+		v *= 1 + x[s.tempco]*heat
+	}
+	if s.class > 0 {
+		v *= 1 + x[s.class]*min(math.Abs(heat)/classReach, 1)
+	}
+	return v
 }
 
 // rating adds a figure of a part as a variable and reports whether it is known.
