@@ -218,22 +218,16 @@ func (h *hunt) window() string {
 		quantity.Format(low.High, "ohm"), quantity.Format(high.Low, "ohm"))
 }
 
-// spreads tells where a target is missed by spreads alone, whatever the values.
+// spreads tells what besides other values would meet a target.
 func (h *hunt) spreads() string {
-	period, ok := h.account().Figure("period")
-	if h.findings[0].Rule != "frequency-off-target" || !ok || period.Low <= 0 {
+	if h.findings[0].Rule != "frequency-off-target" {
 		return ""
 	}
-	target := h.account().Stage.Anchor.Intent.Period
-	if target == nil {
-		target = h.account().Stage.Anchor.Intent.Frequency
-	}
-	if target == nil || target.Low <= 0 || period.High/period.Low <= target.High/target.Low {
+	budget, ok := h.account().Budget()
+	if !ok {
 		return ""
 	}
-	return fmt.Sprintf("the spreads alone make the period vary %.3g-fold and the target allows %.3g-fold: "+
-		"closer tolerances, "+
-		"a steadier supply or a trimmer are needed", period.High/period.Low, target.High/target.Low)
+	return remedy(budget)
 }
 
 // Words writes a change as a netlist would: "R1 = 680k with C1 = 100n".

@@ -81,6 +81,7 @@ func (a *Account) oscillator(w *circuit.Wiring, s *stage.Stage) {
 		return
 	}
 	a.take(&m.model)
+	a.timing = &m.relaxation
 	a.drift(&drifting{&m.model, m.frequency}, s)
 	a.baseTwo(m)
 	a.Unchecked = append(a.Unchecked, m.unchecked()...)

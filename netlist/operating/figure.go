@@ -93,6 +93,7 @@ type Account struct {
 	uses        map[*circuit.Element]slot // what entered; nil where nothing was worked out
 	model       *model                    // nil where nothing was worked out
 	drifting    *drifting                 // nil where nothing drifts
+	timing      *relaxation               // nil where the stage makes no time
 	figures     []Figure                  // once they were asked for
 }
 

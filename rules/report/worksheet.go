@@ -64,6 +64,7 @@ func (t Terminal) stage(w io.Writer, a *operating.Account) {
 			fmt.Fprintf(w, "        %s\n", line)
 		}
 	}
+	t.budget(w, a)
 	rests := gathered(notes(a))
 	t.list(w, "  rests on", len(rests), func(i int) string { return rests[i] })
 	t.list(w, "  not worked out", len(a.Unchecked), func(i int) string {
@@ -73,6 +74,26 @@ func (t Terminal) stage(w io.Writer, a *operating.Account) {
 		}
 		return u.Because
 	})
+}
+
+// budget writes where the spread of a declared period comes from.
+func (t Terminal) budget(w io.Writer, a *operating.Account) {
+	b, ok := a.Budget()
+	if !ok {
+		return
+	}
+	fmt.Fprintf(w, "\n    %s %s .. %s, wanted %s .. %s\n", b.Figure, quantity.Format(b.Low, "s"), quantity.Format(b.High, "s"),
+		quantity.Format(b.Target.Low, "s"), quantity.Format(b.Target.High, "s"))
+	fmt.Fprintln(w, "    where its spread comes from")
+	for _, s := range b.Shares {
+		fmt.Fprintf(w, "      %-24s %12s .. %-12s %6.1f %%\n", source.Visible(s.Name), quantity.Format(s.Low, s.Unit),
+			quantity.Format(s.High, s.Unit), s.Part*100)
+	}
+	for _, text := range rules.Remedies(b) {
+		for i, line := range wrap(text, t.columns()-6) {
+			fmt.Fprintf(w, "    %s %s\n", map[bool]string{true: "-", false: " "}[i == 0], line)
+		}
+	}
 }
 
 // notes gathers the assumptions of all figures, each once.

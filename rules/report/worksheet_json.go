@@ -28,7 +28,25 @@ type (
 		Roles     map[string][]string  `json:"roles"`
 		Drives    []string             `json:"drives"`
 		Figures   map[string]spreadDoc `json:"figures"`
+		Budget    *budgetDoc           `json:"budget,omitempty"`
 		Unchecked []uncheckedDoc       `json:"unchecked,omitempty"`
+	}
+	// budgetDoc is where the spread of a declared period comes from: parts add to 1.
+	budgetDoc struct {
+		Figure     string     `json:"figure"`
+		Low        number     `json:"low"`
+		High       number     `json:"high"`
+		TargetLow  number     `json:"target_low"`
+		TargetHigh number     `json:"target_high"`
+		Shares     []shareDoc `json:"shares"`
+		Remedies   []string   `json:"remedies"`
+	}
+	shareDoc struct {
+		Name string `json:"name"`
+		Low  number `json:"low"`
+		High number `json:"high"`
+		Unit string `json:"unit"`
+		Part number `json:"part"`
 	}
 	spreadDoc struct {
 		Low     number   `json:"low"`
@@ -75,6 +93,9 @@ func stageOf(a *operating.Account) stageDoc {
 		d.Figures[f.Name] = spreadDoc{number(f.Low), number(f.Nominal), number(f.High), f.Unit, f.Working,
 			f.Assumed}
 	}
+	if b, ok := a.Budget(); ok {
+		d.Budget = budgetOf(b)
+	}
 	for _, u := range a.Unchecked {
 		d.Unchecked = append(d.Unchecked, uncheckedDoc{u.Rule, s.Anchor.Designator, u.Because})
 	}
@@ -87,4 +108,13 @@ func order(a *operating.Account) ([]string, string) {
 		return o.Wiring, "wiring"
 	}
 	return a.Stage.Anchor.Roles, string(a.Stage.Anchor.Order)
+}
+
+func budgetOf(b *operating.Budget) *budgetDoc {
+	d := &budgetDoc{Figure: b.Figure, Low: number(b.Low), High: number(b.High), TargetLow: number(b.Target.Low),
+		TargetHigh: number(b.Target.High), Shares: []shareDoc{}, Remedies: orNone(rules.Remedies(b))}
+	for _, s := range b.Shares {
+		d.Shares = append(d.Shares, shareDoc{s.Name, number(s.Low), number(s.High), s.Unit, number(s.Part)})
+	}
+	return d
 }
