@@ -124,7 +124,7 @@ func TestCautions(t *testing.T) {
 
 func TestWhatIsNotCheckedIsTold(t *testing.T) {
 	for card, want := range map[string]string{
-		"XQ9 b1 vcc 0 2N6027": "programmable",
+		"XQ9 b1 vcc 0 2N6027": "no capacitor stands at the anode",
 		"XT1 vcc b1 0 BTA16":  "",
 		"X9 vcc b1 0 ZZ99":    "nothing is known of the part ZZ99",
 	} {

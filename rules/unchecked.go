@@ -53,10 +53,8 @@ func Unstaged(b *netlist.Board) []Unchecked {
 // where the element could not.
 func noStage(e *circuit.Element) string {
 	switch e.Kind {
-	case circuit.UJT, circuit.SCR:
+	case circuit.UJT, circuit.PUT, circuit.SCR:
 		return "no stage was recognised around it"
-	case circuit.PUT:
-		return "stages around a programmable unijunction transistor are not worked out yet"
 	case circuit.Triac:
 		return "gate stages of triacs are not worked out yet"
 	case circuit.Diac:

@@ -1,6 +1,7 @@
 package operating
 
 import (
+	"fmt"
 	"math"
 
 	"standoff/netlist/circuit"
@@ -21,6 +22,9 @@ type relaxation struct {
 	caps     *capacitorNet
 	cycle    *cycle // the result at the last evaluated point
 
+	terminal string // where the device takes the charge in, in words
+	leaks    bool   // the device leaks besides the capacitors
+
 	// What a gate stage wants to know of its driver.
 	outlet       circuit.NodeID     // where the pulse comes out
 	keepOff      []*circuit.Element // what the pulse does not flow through
@@ -37,6 +41,7 @@ type cycle struct {
 	lower, upper              float64 // rails
 	vp, vv                    float64 // capacitor when the device fires, and when it stops
 	atPeak, atValley          float64 // charging current
+	ip, iv                    float64 // what the device asks for at the peak, and lets go below; NaN where unknown
 	drop, on, r1, re          float64 // discharge path: constant drop, device, what hangs on the outlet, lead
 	charge, discharge, period float64
 	ramp                      float64 // nonlinearity of the ramp
@@ -90,6 +95,74 @@ func (m *relaxation) fill() {
 }
 
 func (m *relaxation) frequency() float64 { return 1 / m.cycle.period }
+
+// windowFigures are the currents between which the stage runs, and the timing
+// resistance and capacitance; the workings say where the device's currents come
+// from.
+func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
+	s := m.cycle
+	m.figure("charging_current_at_peak", "A", func() float64 { return s.atPeak }, m.peakWorking)
+	m.figure("peak_current_required", "A", func() float64 { return s.ip }, peakWorking)
+	m.last().guided = true
+	m.figure("charging_current_at_valley", "A", func() float64 { return s.atValley }, m.valleyWorking)
+	m.figure("valley_current_available", "A", func() float64 { return s.iv }, valleyWorking)
+	m.last().guided = true
+	if len(m.stage.Parts[stage.TimingResistor]) > 0 {
+		m.figure("timing_resistance", "ohm", func() float64 { return s.rth }, func() string {
+			return "resistance of the charging network as the capacitor sees it"
+		})
+		m.figure("timing_resistance_min", "ohm", func() float64 { return (s.vth - s.lower - s.vv) / s.iv }, func() string {
+			return fmt.Sprintf("(V_th - V_V)/I_V = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vv, "V"), show(s.iv, "A"))
+		})
+		m.last().guided = true
+		m.figure("timing_resistance_max", "ohm", func() float64 { return max(s.vth-s.lower-s.vp, 0) / s.ip }, func() string {
+			return fmt.Sprintf("(V_th - V_P)/I_P = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vp, "V"), show(s.ip, "A"))
+		})
+		m.last().guided = true
+		m.last().bent = true // a higher peak voltage may come with a lower peak current
+	}
+	m.figure("timing_capacitance", "F", func() float64 { return s.c }, func() string {
+		return "all capacitors from the " + m.terminal + " to the rails"
+	})
+}
+
+func (m *relaxation) peakWorking() string {
+	s := m.cycle
+	return fmt.Sprintf("(V_th - V_P)/R_th = (%s - %s)/%s = %s", show(s.vth-s.lower, "V"), show(s.vp, "V"),
+		show(s.rth, "ohm"), show(s.atPeak, "A"))
+}
+
+func (m *relaxation) valleyWorking() string {
+	s := m.cycle
+	if m.charging.bends {
+		return show(s.atValley, "A") + " from the charging network at V_V = " + show(s.vv, "V")
+	}
+	return fmt.Sprintf("(V_th - V_V)/R_th = (%s - %s)/%s = %s", show(s.vth-s.lower, "V"), show(s.vv, "V"),
+		show(s.rth, "ohm"), show(s.atValley, "A"))
+}
+
+// windowLimits hold the charging current against what the device asks for at the
+// peak and lets go below; because says why neither can be more than a doubt.
+func (m *relaxation) windowLimits(peakBecause, valleyBecause string) {
+	s := m.cycle
+	required := func() float64 { return s.ip }
+	if !math.IsNaN(s.ip) {
+		m.compare(contest{name: "charging_current_at_peak", limitName: "peak_current_required", unit: "A", bound: Min, guided: true, bent: true,
+			value: func() float64 { return s.atPeak }, limit: required, because: peakBecause, working: m.peakWorking})
+		if m.caps.leaks() || m.leaks {
+			m.compare(contest{name: "charging_current_after_leakage", limitName: "peak_current_required", unit: "A", bound: Min, guided: true, bent: true,
+				value: func() float64 { return s.atPeak - s.leak }, limit: required, because: peakBecause,
+				working: func() string { return m.peakWorking() + ", less a leakage of " + show(s.leak, "A") }})
+		}
+	}
+	if !math.IsNaN(s.iv) && !m.isOneShot() {
+		m.compare(contest{name: "charging_current_at_valley", limitName: "valley_current_available", unit: "A", bound: Max, guided: true,
+			value: func() float64 { return s.atValley }, limit: func() float64 { return s.iv }, because: valleyBecause, working: m.valleyWorking})
+	}
+	m.compare(contest{name: "timing_capacitance", limitName: "habit", unit: "F", bound: Min, habit: true,
+		value: func() float64 { return s.c }, limit: func() float64 { return 100e-12 },
+		working: func() string { return "least capacitance at the " + m.terminal }})
+}
 
 // timeFigures are period, frequency, the shape of the ramp and the time to the
 // first pulse. law is the formula of the period in the symbols of the trade.
@@ -158,3 +231,9 @@ func (m *relaxation) targetLimits() {
 
 // oneShotNote is said in place of a verdict on whether the stage runs on.
 const oneShotNote = "declared latch=ok: it may stay on after its first pulse"
+
+// rated returns a limit of the sheet as a contest part.
+func (m *relaxation) rated(symbol string) (limit func() float64, mark part.Mark, ok bool) {
+	v, mark, ok := m.ratings.Limit(symbol)
+	return func() float64 { return v }, mark, ok
+}

@@ -5,7 +5,6 @@ import (
 	"math"
 
 	"standoff/netlist/quantity"
-	"standoff/netlist/stage"
 )
 
 // show writes a value with its unit for a working.
@@ -28,52 +27,14 @@ func (m *ujtModel) figures() {
 	m.figure("valley_voltage", "V", func() float64 { return s.vv }, func() string {
 		return "emitter voltage at which the discharge ends"
 	})
-	m.windowFigures()
+	m.windowFigures(func() string { return "I_P of the sheet" + m.carried("ip_vbb", "(%s / V_BB)^1.3") },
+		func() string { return "I_V of the sheet" + m.carried("iv_vbb", "V_BB / %s") })
 	m.timeFigures("T = R_th C ln((V_th - V_V)/(V_th - V_P)) + (R_on + R_B1 + R_E) C ln(V_P/V_V)")
 	m.loadFigures()
 }
 
 // interbase returns the voltage across the bar with the emitter open.
 func (m *ujtModel) interbase() float64 { return m.s.b2 - m.s.b1 }
-
-// windowFigures are the currents between which the stage runs.
-func (m *ujtModel) windowFigures() {
-	s := &m.s
-	m.figure("charging_current_at_peak", "A", func() float64 { return s.atPeak }, func() string {
-		return fmt.Sprintf("(V_th - V_P)/R_th = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vp, "V"), show(s.rth, "ohm"))
-	})
-	m.figure("peak_current_required", "A", func() float64 { return s.ip }, func() string {
-		return "I_P of the sheet" + m.carried("ip_vbb", "(%s / V_BB)^1.3")
-	})
-	m.last().guided = true
-	m.figure("charging_current_at_valley", "A", func() float64 { return s.atValley }, func() string {
-		return fmt.Sprintf("(V_th - V_V)/R_th = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vv, "V"), show(s.rth, "ohm"))
-	})
-	m.figure("valley_current_available", "A", func() float64 { return s.iv }, func() string {
-		return "I_V of the sheet" + m.carried("iv_vbb", "V_BB / %s")
-	})
-	m.last().guided = true
-	if m.hasResistance() {
-		m.figure("timing_resistance", "ohm", func() float64 { return s.rth }, func() string {
-			return "resistance of the charging network as the capacitor sees it"
-		})
-		m.figure("timing_resistance_min", "ohm", func() float64 { return (s.vth - s.lower - s.vv) / s.iv }, func() string {
-			return fmt.Sprintf("(V_th - V_V)/I_V = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vv, "V"), show(s.iv, "A"))
-		})
-		m.last().guided = true
-		m.figure("timing_resistance_max", "ohm", func() float64 { return max(s.vth-s.lower-s.vp, 0) / s.ip }, func() string {
-			return fmt.Sprintf("(V_th - V_P)/I_P = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vp, "V"), show(s.ip, "A"))
-		})
-		m.last().guided = true
-		m.last().bent = true // a higher bar voltage raises the peak and lowers the peak current
-	}
-	m.figure("timing_capacitance", "F", func() float64 { return s.c }, func() string {
-		return "all capacitors from the emitter to the rails"
-	})
-}
-
-// hasResistance reports whether anything but current sources charges.
-func (m *ujtModel) hasResistance() bool { return len(m.stage.Parts[stage.TimingResistor]) > 0 }
 
 // carried describes how a current was carried over to this bar voltage.
 func (m *ujtModel) carried(symbol, law string) string {

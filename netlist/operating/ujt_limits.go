@@ -9,34 +9,22 @@ import (
 
 // limits lists the comparisons of the oscillator.
 func (m *ujtModel) limits() {
-	m.windowLimits()
+	m.evaluate(m.nominal()) // tells which currents are known
+	m.windowLimits("", "")
+	m.derated()
 	m.emitterLimits()
 	m.barLimits()
 	m.targetLimits()
 }
 
-// windowLimits hold the charging current against the peak and valley currents.
-func (m *ujtModel) windowLimits() {
+// derated holds the valley current against its derating as well.
+func (m *ujtModel) derated() {
 	s := &m.s
-	if m.v.ip >= 0 {
-		m.compare(contest{name: "charging_current_at_peak", limitName: "peak_current_required", unit: "A", bound: Min, guided: true, bent: true,
-			value: func() float64 { return s.atPeak }, limit: func() float64 { return s.ip }, working: m.peakWorking})
-		if m.caps.leaks() {
-			m.compare(contest{name: "charging_current_after_leakage", limitName: "peak_current_required", unit: "A", bound: Min, guided: true, bent: true,
-				value: func() float64 { return s.atPeak - s.leak }, limit: func() float64 { return s.ip },
-				working: func() string { return m.peakWorking() + ", less a leakage of " + show(s.leak, "A") }})
-		}
-	}
 	if m.v.iv >= 0 && !m.isOneShot() {
-		m.compare(contest{name: "charging_current_at_valley", limitName: "valley_current_available", unit: "A", bound: Max, guided: true,
-			value: func() float64 { return s.atValley }, limit: func() float64 { return s.iv }, working: m.valleyWorking})
 		m.compare(contest{name: "charging_current_at_valley_derated", limitName: "valley_current_available", unit: "A", bound: Max, guided: true,
 			value: func() float64 { return s.atValley }, limit: func() float64 { return s.iv * m.valleyDerating() },
 			because: "the derating of I_V for heat and for a large base-two resistor is from memory", working: m.valleyWorking})
 	}
-	m.compare(contest{name: "timing_capacitance", limitName: "habit", unit: "F", bound: Min, habit: true,
-		value: func() float64 { return s.c }, limit: func() float64 { return 100e-12 },
-		working: func() string { return "least capacitance at the emitter" }})
 }
 
 // valleyDerating returns the share of the valley current left when hot: 0.6 at
@@ -58,24 +46,6 @@ func (m *ujtModel) baseTwo() float64 {
 		return 0
 	}
 	return (m.s.upper - m.s.b2) / amperes
-}
-
-func (m *ujtModel) peakWorking() string {
-	s := &m.s
-	return fmt.Sprintf("(V_th - V_P)/R_th = (%s - %s)/%s = %s", show(s.vth-s.lower, "V"), show(s.vp, "V"),
-		show(s.rth, "ohm"), show(s.atPeak, "A"))
-}
-
-func (m *ujtModel) valleyWorking() string {
-	s := &m.s
-	return fmt.Sprintf("(V_th - V_V)/R_th = (%s - %s)/%s = %s", show(s.vth-s.lower, "V"), show(s.vv, "V"),
-		show(s.rth, "ohm"), show(s.atValley, "A"))
-}
-
-// rated returns a limit of the sheet as a contest part.
-func (m *ujtModel) rated(symbol string) (limit func() float64, mark part.Mark, ok bool) {
-	v, mark, ok := m.ratings.Limit(symbol)
-	return func() float64 { return v }, mark, ok
 }
 
 // emitterLimits hold the discharge against the emitter's ratings.

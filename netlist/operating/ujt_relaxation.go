@@ -78,7 +78,6 @@ type ujtState struct {
 	eta, rbb, vd float64
 	b1, b2       float64 // bases when it fires
 	standby      float64 // base one over the lower rail, emitter open
-	ip, iv       float64
 }
 
 // newUJT builds the model of a recognised oscillator. An error says why it
@@ -89,7 +88,7 @@ func newUJT(w *circuit.Wiring, s *stage.Stage) (*ujtModel, error) {
 		return nil, fmt.Errorf("nothing is known of the part %s", partName(s.Anchor))
 	}
 	m := &ujtModel{relaxation: newRelaxation(w, s)}
-	m.cycle = &m.s.cycle
+	m.cycle, m.terminal = &m.s.cycle, "emitter"
 	m.evaluate = m.at
 	m.quietWorking = func() string {
 		return fmt.Sprintf("bar of %s from a rail of %s", show(m.s.rbb, "ohm"), show(m.s.upper-m.s.lower, "V"))

@@ -19,6 +19,7 @@ type topology struct {
 // topologies lists the timing stages first: a gate stage asks for its driver.
 var topologies = [...]topology{
 	{circuit.UJT, UJTOscillator, []string{"emitter", "base1", "base2"}, (*recogniser).ujt},
+	{circuit.PUT, PUTOscillator, []string{"anode", "gate", "cathode"}, (*recogniser).put},
 	{circuit.SCR, SCRGate, []string{"anode", "gate", "cathode"}, (*recogniser).scr},
 }
 

@@ -1,0 +1,45 @@
+package stage
+
+import "standoff/netlist/circuit"
+
+// put recognises the relaxation oscillator around a programmable unijunction: a
+// capacitor at the anode (or behind a resistor there), the gate on a divider of
+// any shape that reaches the upper rail, the cathode at the lower rail directly
+// or through resistors.
+func (r *recogniser) put(anchor *circuit.Element, nets []circuit.NodeID) *Stage {
+	u := &rampReading{w: r.w, stage: newStage(PUTOscillator, anchor),
+		terminal: nets[0], outlet: nets[2], control: nets[1],
+		terminalWords: "anode", outletWords: "the cathode", controlWords: "the gate"}
+	s := u.stage
+	s.Nodes["outlet"] = u.outlet
+	s.Nodes["anode"], s.Nodes["gate"], s.Nodes["cathode"] = u.terminal, u.control, u.outlet
+	s.Gap = steps(u.distinct, u.capacitorNode, u.rails, u.capacitors, u.charging, u.divider)
+	if s.Gap == "" {
+		u.lead()
+		u.supplies()
+		u.beside()
+	}
+	return s
+}
+
+// divider collects what sets the gate's voltage: everything that carries dc from
+// the gate to the rails or to the cathode.
+func (u *rampReading) divider() string {
+	quiet := func(n circuit.NodeID) bool { return u.isRail(n) || n == u.node || n == u.terminal || n == u.outlet }
+	area := u.w.Walk([]circuit.NodeID{u.control}, carriesDC, quiet)
+	list := prune(u.w, area.Elements, func(n circuit.NodeID) bool { return n == u.control || quiet(n) })
+	if len(list) == 0 && !u.w.IsFixed(u.control) {
+		return "nothing sets the voltage of its gate"
+	}
+	u.stage.add(GateDivider, list...)
+	return ""
+}
+
+// lead collects the resistors from the outlet to the lower rail.
+func (u *rampReading) lead() {
+	area := u.w.Walk([]circuit.NodeID{u.outlet}, isDirect, func(n circuit.NodeID) bool {
+		return u.isRail(n) || n == u.node || n == u.terminal || n == u.control || u.isGate(n)
+	})
+	own := without(without(area.Elements, u.stage.Parts[GateDivider]), u.stage.Parts[TimingResistor])
+	u.stage.add(BaseOne, prune(u.w, own, func(n circuit.NodeID) bool { return n == u.outlet || u.isRail(n) })...)
+}
