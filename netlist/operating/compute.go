@@ -56,6 +56,8 @@ func account(w *circuit.Wiring, s *stage.Stage) *Account {
 	switch s.Kind {
 	case stage.UJTOscillator:
 		a.oscillator(w, s)
+	case stage.PUTOscillator:
+		a.programmable(w, s)
 	case stage.SCRGate:
 		a.gate(w, s)
 	}
@@ -80,12 +82,28 @@ func (a *Account) oscillator(w *circuit.Wiring, s *stage.Stage) {
 		a.cannot(err)
 		return
 	}
-	a.take(&m.model)
-	a.timing = &m.relaxation
-	a.drift(&drifting{&m.model, m.frequency}, s)
+	a.times(&m.relaxation)
 	a.baseTwo(m)
 	a.Unchecked = append(a.Unchecked, m.unchecked()...)
 	a.Facts["base-one-missing"] = len(s.Parts[stage.BaseOne]) == 0 && !w.IsFixed(s.Nodes["base1"])
+}
+
+// programmable fills the account of a PUT oscillator.
+func (a *Account) programmable(w *circuit.Wiring, s *stage.Stage) {
+	m, err := newPUT(w, s)
+	if err != nil {
+		a.cannot(err)
+		return
+	}
+	a.times(&m.relaxation)
+	a.Unchecked = append(a.Unchecked, m.unchecked()...)
+}
+
+// times takes over what all oscillators have.
+func (a *Account) times(m *relaxation) {
+	a.take(&m.model)
+	a.timing = m
+	a.drift(&drifting{&m.model, m.frequency}, a.Stage)
 }
 
 // drift adds what the drift over the ambient range is held against, and keeps

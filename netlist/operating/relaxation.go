@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"standoff/netlist/circuit"
+	"standoff/netlist/network"
 	"standoff/netlist/part"
 	"standoff/netlist/stage"
 )
@@ -20,7 +21,10 @@ type relaxation struct {
 	standing *mesh // what charges, the device off
 	charging *charging
 	caps     *capacitorNet
-	cycle    *cycle // the result at the last evaluated point
+	pulse    *mesh // what the discharge flows into
+	spread   []float64
+	mouth    network.Node // the outlet in pulse
+	cycle    *cycle       // the result at the last evaluated point
 
 	terminal string // where the device takes the charge in, in words
 	leaks    bool   // the device leaks besides the capacitors
@@ -56,11 +60,21 @@ func newRelaxation(w *circuit.Wiring, s *stage.Stage) relaxation {
 
 // newDriver builds the model of whatever fires a gate.
 func newDriver(w *circuit.Wiring, s *stage.Stage) (*relaxation, error) {
-	m, err := newUJT(w, s)
-	if err != nil {
-		return nil, err
+	switch s.Kind {
+	case stage.UJTOscillator:
+		m, err := newUJT(w, s)
+		if err != nil {
+			return nil, err
+		}
+		return &m.relaxation, nil
+	case stage.PUTOscillator:
+		m, err := newPUT(w, s)
+		if err != nil {
+			return nil, err
+		}
+		return &m.relaxation, nil
 	}
-	return &m.relaxation, nil
+	return nil, fmt.Errorf("a %s as a driver is not worked out", s.Kind)
 }
 
 // readyToCharge compiles the standing mesh with the capacitor's net as the place
@@ -79,6 +93,42 @@ func (m *relaxation) capacitors(at circuit.NodeID) error {
 	var err error
 	m.caps, err = newCapacitorNet(m.bench, m.stage.Parts[stage.TimingCapacitor], at)
 	return err
+}
+
+// readyToEmpty readies what the discharge flows into and the resistors in the
+// lead of the device; outlet and keepOff are set.
+func (m *relaxation) readyToEmpty() error {
+	var err error
+	m.pulse, err = newMesh(m.bench, []circuit.NodeID{m.outlet, m.stage.Nodes["lower"]}, func(e *circuit.Element) bool {
+		return contains(m.keepOff, e)
+	})
+	if err != nil {
+		return err
+	}
+	if err := m.pulse.compile(); err != nil {
+		return err
+	}
+	m.spread, m.mouth = make([]float64, m.pulse.solver.Nodes()), m.pulse.node(m.outlet)
+	for _, e := range m.stage.Parts[stage.EmitterSeries] {
+		m.element(e)
+	}
+	return nil
+}
+
+// outside works out the resistance of the discharge outside the device.
+func (m *relaxation) outside(x []float64) {
+	s := m.cycle
+	m.pulse.load(x)
+	m.pulse.solver.Solve()
+	m.pulse.solver.Transfer(m.mouth, m.spread)
+	s.r1 = m.spread[m.mouth]
+	if s.r1 > noPath {
+		s.r1 = 0 // the outlet hangs on a gate alone: the gate carries the pulse
+	}
+	s.re = 0
+	for _, e := range m.stage.Parts[stage.EmitterSeries] {
+		s.re += m.value(m.slots[e], x)
+	}
 }
 
 // fill works out charge time, period and nonlinearity from the peak and valley

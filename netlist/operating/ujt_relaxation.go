@@ -48,18 +48,16 @@ var (
 // running) and the emitter leakage before firing, which only helps to charge.
 // Units SI, temperatures deg C.
 type ujtModel struct {
-	relaxation       // standing: emitter open, bar in place
-	pulse      *mesh // what hangs on base one, bar left out
+	relaxation // standing: emitter open, bar in place
 	bar        network.Branch
 	v          ujtVariables
 	s          ujtState
-	spread     []float64
 	at0        ujtNodes
 	sheet      ujtSheet
 }
 
 // ujtNodes are the solver's nodes, looked up once.
-type ujtNodes struct{ base1, base2, upper, lower, pulse network.Node }
+type ujtNodes struct{ base1, base2, upper, lower network.Node }
 
 // ujtSheet are the test conditions of the sheet, looked up once; 0 where a
 // current holds as it stands.
@@ -214,16 +212,12 @@ func (m *ujtModel) networks() error {
 	if err = m.readyToCharge(n["capacitor"]); err != nil {
 		return err
 	}
-	if m.pulse, err = newPulseMesh(m, n); err != nil {
+	m.pulseFarads, m.share, m.outlet, m.keepOff = m.sheet.farads, m.v.on, n["base1"], m.awayFromBaseOne()
+	if err := m.readyToEmpty(); err != nil {
 		return err
 	}
-	for _, e := range series {
-		m.element(e)
-	}
-	m.pulseFarads, m.share, m.outlet, m.keepOff = m.sheet.farads, m.v.on, n["base1"], m.awayFromBaseOne()
 	m.at0 = ujtNodes{base1: m.standing.node(n["base1"]), base2: m.standing.node(n["base2"]),
-		upper: m.standing.node(n["upper"]), lower: m.standing.node(n["lower"]), pulse: m.pulse.node(n["base1"])}
-	m.spread = make([]float64, m.pulse.solver.Nodes())
+		upper: m.standing.node(n["upper"]), lower: m.standing.node(n["lower"])}
 	return m.capacitors(n["capacitor"])
 }
 
@@ -231,19 +225,6 @@ func (m *ujtModel) networks() error {
 // leads there.
 func (m *ujtModel) awayFromBaseOne() []*circuit.Element {
 	return append(append([]*circuit.Element{}, m.stage.Parts[stage.TimingResistor]...), m.stage.Parts[stage.BaseTwo]...)
-}
-
-// newPulseMesh takes in what hangs on base one: the network that the discharge
-// flows into.
-func newPulseMesh(m *ujtModel, n map[string]circuit.NodeID) (*mesh, error) {
-	keepOff := m.awayFromBaseOne()
-	p, err := newMesh(m.bench, []circuit.NodeID{n["base1"], n["lower"]}, func(e *circuit.Element) bool {
-		return contains(keepOff, e)
-	})
-	if err != nil {
-		return nil, err
-	}
-	return p, p.compile()
 }
 
 func contains(list []*circuit.Element, e *circuit.Element) bool {
@@ -336,18 +317,7 @@ func (m *ujtModel) path(x []float64) {
 	if m.v.vob1 >= 0 {
 		s.on *= m.sheet.rb1 * max(m.testPeak(s.eta)/x[m.v.vob1]-1, 0)
 	}
-	m.pulse.load(x)
-	m.pulse.solver.Solve()
-	node := m.at0.pulse
-	m.pulse.solver.Transfer(node, m.spread)
-	s.r1 = m.spread[node]
-	if s.r1 > noPath {
-		s.r1 = 0 // base one hangs on a gate alone: the gate carries the pulse
-	}
-	s.re = 0
-	for _, e := range m.stage.Parts[stage.EmitterSeries] {
-		s.re += m.value(m.slots[e], x)
-	}
+	m.outside(x)
 }
 
 // noPath is a resistance in ohm above which no dc path is said to exist.

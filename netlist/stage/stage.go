@@ -19,6 +19,12 @@ const (
 	ClippedSupply       Kind = "clipped-supply"
 )
 
+// IsTiming reports whether stages of the kind fill a capacitor and empty it into
+// a device.
+func (k Kind) IsTiming() bool {
+	return k == UJTOscillator || k == PUTOscillator || k == BreakoverOscillator
+}
+
 // Role names what a part does in a stage.
 type Role string
 

@@ -9,7 +9,8 @@ var emitterSurge = &rule.Rule{
 	Title: "The discharge drives more current through the emitter than it is rated for.",
 	Why: "At the end of each ramp the capacitor empties through the emitter; only the on-resistance of the " +
 		"transistor and the resistors in the emitter and base-one leads limit the current. Beyond the " +
-		"rated peak the junction is damaged a little at every pulse.",
+		"rated peak the junction is damaged a little at every pulse. The same goes for the repetitive peak " +
+		"current of a programmable unijunction or a breakover device.",
 	Formula: "V_P/(R_on + R_B1 + R_E) < I_E(pulse), unless the maker " +
 		"allows the capacitor without a resistor",
 	Source: "peak emitter current of the sheet; R_on from the guaranteed base-one pulse",
@@ -37,7 +38,7 @@ R3 b1 0 47
 `,
 	Check: each(rule.Case{
 		Comparison: "discharge_peak_current", Place: discharge, Mend: discharge,
-		Fails: "every discharge may damage the emitter",
-		Value: "the peak emitter current", Limit: "the emitter is rated for",
+		Fails: "every discharge may damage the {device}",
+		Value: "the peak {terminal} current", Limit: "the {terminal} is rated for",
 	}),
 }

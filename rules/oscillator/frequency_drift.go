@@ -36,7 +36,7 @@ R3 b1 0 22
 .end
 `,
 	Check: func(p *rule.Pass) {
-		p.Each(stage.UJTOscillator, func(a *operating.Account) {
+		p.Timing(func(a *operating.Account) {
 			for _, name := range []string{"frequency_drift_lowest", "frequency_drift_highest"} {
 				if k, ok := a.Comparison(name); ok && k.Fails() {
 					p.Judge(a, driftOutOfTarget(name))

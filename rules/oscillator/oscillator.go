@@ -15,6 +15,7 @@ func Rules() []*rule.Rule {
 		currentBelowPeak, currentAboveValley, capacitorSmall, capacitorLarge, capacitorLeak,
 		emitterSurge, emitterRMS, emitterReverse, baseTwoMissing, baseTwoOff, baseOneMissing,
 		frequencyOffTarget, frequencyDrift, interbaseHigh, interbaseLow, interbaseDissipation,
+		putGateDivider, putGateVoltage,
 	}
 }
 
@@ -26,10 +27,10 @@ var (
 	discharge = []stage.Role{stage.EmitterSeries, stage.BaseOne}
 )
 
-// each judges the cases for every unijunction oscillator.
+// each judges the cases for every timing stage.
 func each(cases ...rule.Case) func(*rule.Pass) {
 	return func(p *rule.Pass) {
-		p.Each(stage.UJTOscillator, func(a *operating.Account) {
+		p.Timing(func(a *operating.Account) {
 			for _, c := range cases {
 				p.Judge(a, c)
 			}

@@ -36,7 +36,7 @@ R3 b1 0 22
 .end
 `,
 	Check: func(p *rule.Pass) {
-		p.Each(stage.UJTOscillator, func(a *operating.Account) {
+		p.Timing(func(a *operating.Account) {
 			if k, ok := a.Comparison("charging_current_at_peak"); ok && (k.Fails() || k.Tight()) {
 				return // too little current without any leakage
 			}
@@ -44,7 +44,7 @@ R3 b1 0 22
 				Comparison: "charging_current_after_leakage",
 				Place:      []stage.Role{stage.TimingCapacitor}, Mend: []stage.Role{stage.TimingResistor},
 				Fails: "the capacitor's leakage may keep the stage from firing",
-				Value: "the charging current at the peak less the leakage", Limit: "the transistor needs",
+				Value: "the charging current at the peak less the leakage", Limit: "the {device} needs",
 			})
 		})
 	},

@@ -36,7 +36,7 @@ R3 b1 0 22
 .end
 `,
 	Check: func(p *rule.Pass) {
-		p.Each(stage.UJTOscillator, func(a *operating.Account) {
+		p.Timing(func(a *operating.Account) {
 			k, ok := a.Comparison("timing_capacitance")
 			if !ok || k.Value >= looseCapacitor {
 				return
@@ -45,9 +45,9 @@ R3 b1 0 22
 			f, text := rule.Finding{Grade: rule.Hold}, "the stage may not switch"
 			if !k.Fails() {
 				k.Limit = looseCapacitor
-				f.Grade, text = rule.Doubt, "strays and the emitter's own charge set part of the rate"
+				f.Grade, text = rule.Doubt, "strays and the {terminal}'s own charge set part of the rate"
 			}
-			f.Message = fmt.Sprintf("%s: the timing capacitor is %s, below %s", text,
+			f.Message = fmt.Sprintf("%s: the timing capacitor is %s, below %s", rule.Words(a, text),
 				quantity.Format(k.Value, k.Unit), quantity.Format(k.Limit, k.Unit))
 			p.Report(f.For(a, k, rule.Case{Place: place, Mend: place}))
 		})

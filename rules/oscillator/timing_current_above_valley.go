@@ -36,11 +36,11 @@ R3 b1 0 22
 .end
 `,
 	Check: func(p *rule.Pass) {
-		p.Each(stage.UJTOscillator, func(a *operating.Account) {
+		p.Timing(func(a *operating.Account) {
 			c := rule.Case{
 				Comparison: "charging_current_at_valley", Place: timing, Mend: []stage.Role{stage.TimingResistor},
 				Fails: "the stage may fire once and stay on",
-				Value: "the charging current at the valley", Limit: "the transistor lets go below",
+				Value: "the charging current at the valley", Limit: "the {device} lets go below",
 			}
 			if k, ok := a.Comparison(c.Comparison); ok && !k.Fails() && !k.Tight() {
 				c.Comparison, c.FailsOnly = "charging_current_at_valley_derated", true

@@ -36,6 +36,6 @@ R3 b1 0 22
 	Check: each(rule.Case{
 		Comparison: "charging_current_at_peak", Place: timing, Mend: []stage.Role{stage.TimingResistor},
 		Fails: "the stage may never fire",
-		Value: "the charging current at the peak", Limit: "the transistor needs",
+		Value: "the charging current at the peak", Limit: "the {device} needs",
 	}),
 }

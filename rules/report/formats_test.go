@@ -102,7 +102,7 @@ func TestLintJSONHasTheShapeThatIsPromised(t *testing.T) {
 }
 
 func TestWorksheetJSONHasTheShapeThatIsPromised(t *testing.T) {
-	b := check(t, "stage.cir", stage+"XQ9 a b c 2N6027\n").Board
+	b := check(t, "stage.cir", stage+"XQ9 a b c ZZ99\n").Board
 	doc := decoded(t, func(out *bytes.Buffer) error { return report.WorksheetJSON(out, []*netlist.Board{b}) })
 	for _, row := range []struct {
 		path []any

@@ -25,6 +25,28 @@ func (p *Pass) Each(kind stage.Kind, f func(*operating.Account)) {
 	}
 }
 
+// Timing calls f for every timing stage that was worked out.
+func (p *Pass) Timing(f func(*operating.Account)) {
+	for _, a := range p.Accounts {
+		if a.Stage.Kind.IsTiming() && a.Stage.Gap == "" {
+			f(a)
+		}
+	}
+}
+
+// Words puts the device of a stage into a text: {device} and {terminal}, where the
+// charge goes in.
+func Words(a *operating.Account, text string) string {
+	device, terminal := "transistor", "emitter"
+	switch a.Stage.Kind {
+	case stage.PUTOscillator:
+		device, terminal = "programmable unijunction", "anode"
+	case stage.BreakoverOscillator:
+		device, terminal = "breakover device", "breakover device"
+	}
+	return strings.NewReplacer("{device}", device, "{terminal}", terminal).Replace(text)
+}
+
 // Case says how one comparison is judged and told. A role that a gate stage does
 // not have is looked for in the stage that fires it.
 type Case struct {
@@ -46,7 +68,7 @@ func (p *Pass) Judge(a *operating.Account, c Case) {
 	if !ok || !k.Fails() && (c.FailsOnly || !k.Tight()) {
 		return
 	}
-	p.Report(Finding{Grade: c.grade(k), Message: c.message(k)}.For(a, k, c))
+	p.Report(Finding{Grade: c.grade(k), Message: Words(a, c.message(k))}.For(a, k, c))
 }
 
 // parts returns the elements of a role: the stage's own, else those of the stage

@@ -1,0 +1,287 @@
+package operating
+
+import (
+	"fmt"
+	"math"
+
+	"standoff/netlist/circuit"
+	"standoff/netlist/network"
+	"standoff/netlist/part"
+	"standoff/netlist/quantity"
+	"standoff/netlist/stage"
+)
+
+// putModel is the relaxation oscillator around a programmable unijunction.
+//
+// Model. Charging network and gate divider are one network, reduced with the
+// device off: to vth behind rth as the capacitor sees it, and to V_S behind R_G as
+// the gate sees it. The device fires when the anode stands V_T above the gate:
+//
+//	v_P = V_S + V_T(R_G)
+//
+// with V_S as it is while the charging current flows (a soft supply sags for
+// both). V_T, I_P and I_V of the sheet hold for gate resistances of its own; in
+// between V_T goes straight and the currents go straight in logarithms over
+// log R_G (ON Semiconductor 2N6027 data sheet, figures 8..10 are such lines). The
+// period is
+//
+//	T = rth C ln((vth - v_V)/(vth - v_P)) + (R_on + R_K + R_A) C ln(v_P/v_V)
+//
+// Neglected: the gate current before firing (below I_P), and the charging current
+// during the discharge. Units SI, temperatures deg C.
+type putModel struct {
+	relaxation
+	vt     points // offset voltage
+	ip, iv points
+	vv, on int     // valley voltage, on-resistance
+	igao   int     // gate to anode leakage, -1 where unknown
+	valley float64 // the valley voltage before it is bounded by the peak
+	gateOf []float64
+	at0    putNodes
+	s      putState
+}
+
+type putNodes struct{ gate, cathode, upper, lower network.Node }
+
+type putState struct {
+	cycle
+	heat    float64
+	gate    float64 // V_S over the lower rail, nothing drawn by the capacitor
+	ohms    float64 // R_G
+	vt      float64
+	standby float64
+	idle    float64 // vth over the lower rail with nothing drawn
+}
+
+// points are a figure of the sheet at one to three gate resistances, rising.
+type points struct {
+	ohms []float64
+	at   []int // variables
+	// log says that the figure goes straight in logarithms.
+	log bool
+}
+
+// offsetDrift is the drift of the offset voltage V_T in V/K, that of a silicon
+// junction (from memory).
+const offsetDrift = -2e-3
+
+// What stands in where the maker publishes nothing.
+var (
+	// assumedOffset is V_T of the 2N6027 at 10 kohm (its sheet: 0.2 .. 0.6 V).
+	assumedOffset = quantity.Spread{Low: 0.2, Nominal: 0.35, High: 0.6}
+	// assumedPUTOn is the resistance of a conducting PUT.
+	assumedPUTOn = quantity.Spread{Low: 1, Nominal: 5, High: 45}
+)
+
+// leastOn is the least resistance that a conducting device is taken to have.
+const leastOn = 0.5
+
+// newPUT builds the model of a recognised oscillator. An error says why it
+// cannot be computed.
+func newPUT(w *circuit.Wiring, s *stage.Stage) (*putModel, error) {
+	if s.Anchor.Ratings == nil {
+		return nil, fmt.Errorf("nothing is known of the part %s", partName(s.Anchor))
+	}
+	m := &putModel{relaxation: newRelaxation(w, s)}
+	m.cycle, m.terminal = &m.s.cycle, "anode"
+	m.evaluate = m.at
+	m.quietWorking = func() string { return "what flows through the divider to the cathode's resistor" }
+	m.device()
+	if err := m.networks(); err != nil {
+		return nil, err
+	}
+	m.evaluate(m.nominal())
+	m.figures()
+	m.limits()
+	return m, nil
+}
+
+// device adds the figures of the device.
+func (m *putModel) device() {
+	r := m.ratings
+	m.vt = m.points("vt", "V", "10k", "1meg")
+	m.ip = m.points("ip", "A", "10k", "100k", "1meg")
+	m.ip.log = true
+	m.iv = m.points("iv", "A", "200", "10k", "100k", "1meg")
+	m.iv.log = true
+	if len(m.vt.at) == 0 {
+		m.vt = points{[]float64{10e3}, []int{m.assumed("vt", "V", assumedOffset, "offset voltage not published, assumed")}, false}
+	}
+	var ok bool
+	if m.igao, ok = m.rating(r, "igao", "A"); !ok {
+		m.igao = -1
+	}
+	m.leaks = ok
+	forward := 1.5
+	if v, _, ok := r.Limit("vf"); ok {
+		forward = v
+	}
+	if m.vv, ok = m.rating(r, "vv", "V"); !ok {
+		m.vv = m.assumed("vv", "V", quantity.Spread{Low: 0.5, Nominal: min(0.8, forward), High: forward},
+			"valley voltage not published, assumed from 0.5 V to V_F")
+	}
+	m.onResistance()
+	for i := range m.box {
+		m.box[i].Bends = true
+	}
+}
+
+// points adds a figure at those gate resistances at which the sheet guarantees
+// it.
+func (m *putModel) points(symbol, unit string, suffixes ...string) points {
+	var p points
+	for _, suffix := range suffixes {
+		name := symbol + "_" + suffix
+		if _, _, guaranteed := m.ratings.Limit(name); !guaranteed {
+			continue
+		}
+		if i, ok := m.rating(m.ratings, name, unit); ok {
+			p.ohms, p.at = append(p.ohms, sheetResistance(suffix)), append(p.at, i)
+		}
+	}
+	return p
+}
+
+// sheetResistance returns the gate resistance in ohm that a symbol's suffix means.
+func sheetResistance(suffix string) float64 {
+	switch suffix {
+	case "10k":
+		return 10e3
+	case "100k":
+		return 100e3
+	case "1meg":
+		return 1e6
+	}
+	return 200
+}
+
+// onResistance adds the resistance of the conducting device, read from the output
+// voltage V_O of the sheet (0.2 uF on 20 V into 20 ohm) as R (V/V_O - 1). The
+// capacitor of that circuit holds no more than the supply, whatever its divider:
+// the least V_O gives the greatest resistance. The typical one is read with 13 V
+// on the capacitor (divider of 27 and 16 kohm; from memory).
+func (m *putModel) onResistance() {
+	const volts, load, typical = 20, 20, 13
+	least, mark, ok := m.ratings.Limit("vo")
+	if !ok {
+		m.on = m.assumed("ron", "ohm", assumedPUTOn, "on-resistance not published, assumed")
+		return
+	}
+	t := trait{name: "ron", unit: "ohm", doubtLow: true, note: "least on-resistance assumed"}
+	if mark >= part.Memory {
+		t.memory, t.note = true, fmt.Sprintf("vo of %s is from memory", m.ratings.Name)
+	}
+	s := quantity.Spread{Low: leastOn, High: max(load*(volts/least-1), leastOn)}
+	s.Nominal = s.High / 2
+	if v, _, ok := m.ratings.Spread("vo"); ok && v.Nominal > least && v.Nominal < typical {
+		s.Nominal = max(load*(typical/v.Nominal-1), leastOn)
+	}
+	m.on = m.add(t, s)
+}
+
+// networks readies the standing mesh, what hangs on the cathode, and the
+// capacitors.
+func (m *putModel) networks() error {
+	n := m.stage.Nodes
+	series := m.stage.Parts[stage.EmitterSeries]
+	var err error
+	anchors := []circuit.NodeID{n["capacitor"], n["gate"], n["cathode"], n["upper"], n["lower"]}
+	m.standing, err = newMesh(m.bench, anchors, func(e *circuit.Element) bool { return contains(series, e) })
+	if err != nil {
+		return err
+	}
+	if err := m.readyToCharge(n["capacitor"]); err != nil {
+		return err
+	}
+	m.outlet, m.share, m.pulseFarads = n["cathode"], m.on, 0
+	m.keepOff = append(append([]*circuit.Element{}, m.stage.Parts[stage.TimingResistor]...), m.stage.Parts[stage.GateDivider]...)
+	if err := m.readyToEmpty(); err != nil {
+		return err
+	}
+	at := m.standing.node
+	m.at0 = putNodes{gate: at(n["gate"]), cathode: at(n["cathode"]), upper: at(n["upper"]), lower: at(n["lower"])}
+	m.gateOf = make([]float64, m.standing.solver.Nodes())
+	return m.capacitors(n["capacitor"])
+}
+
+// value returns the figure at a gate resistance. Beyond the sheet's points the
+// last line is carried on, but never to the side that suits: greatest says that a
+// greater value is the worse one.
+func (p *points) value(x []float64, ohms float64, greatest bool) float64 {
+	k := len(p.ohms)
+	if k == 0 {
+		return math.NaN()
+	}
+	if k == 1 || !(ohms > 0) || math.IsInf(ohms, 0) {
+		return x[p.at[0]]
+	}
+	i := 1
+	for i < k-1 && ohms > p.ohms[i] {
+		i++
+	}
+	a, b := x[p.at[i-1]], x[p.at[i]]
+	share := math.Log(ohms/p.ohms[i-1]) / math.Log(p.ohms[i]/p.ohms[i-1])
+	v := a + share*(b-a)
+	if p.log && a > 0 && b > 0 {
+		v = a * math.Pow(b/a, share)
+	}
+	switch near := map[bool]float64{true: a, false: b}[share < 0]; {
+	case share >= 0 && share <= 1:
+		return v
+	case greatest:
+		return max(v, near)
+	default:
+		return min(v, near)
+	}
+}
+
+// beyond reports whether a gate resistance lies outside the sheet's points, a
+// tenth allowed; of a single point, whether it is another one.
+func (p *points) beyond(ohms float64) bool {
+	k := len(p.ohms)
+	return k > 0 && (ohms < p.ohms[0]/1.1 || ohms > p.ohms[k-1]*1.1)
+}
+
+// at works the oscillator out at one point of the box.
+func (m *putModel) at(x []float64) {
+	s, n, mesh := &m.s, &m.at0, m.standing
+	s.heat = x[m.ambient] - 25
+	mesh.load(x)
+	m.charging.draw(0)
+	s.lower, s.upper = mesh.solver.Voltage(n.lower), mesh.solver.Voltage(n.upper)
+	s.idle = mesh.solver.Voltage(m.charging.node) - s.lower
+	s.gate = mesh.solver.Voltage(n.gate) - s.lower
+	s.standby = mesh.solver.Voltage(n.cathode) - s.lower
+	mesh.solver.Transfer(n.gate, m.gateOf)
+	s.ohms = m.gateOf[n.gate]
+	s.vt = max(m.vt.value(x, s.ohms, true)+offsetDrift*s.heat, 0)
+	peak := m.charging.meet(func() (float64, float64) {
+		s.vth, s.rth = m.charging.thevenin()
+		pull := m.charging.transfer[n.gate] / s.rth
+		peak := (m.charging.idle(n.gate) + s.vt - pull*s.vth) / (1 - pull)
+		return peak, (s.vth - peak) / s.rth
+	})
+	s.vp = peak - s.lower
+	m.valley = x[m.vv]
+	s.vv = min(m.valley, 0.9*s.vp) // a valley above the peak is no valley
+	s.atPeak = (s.vth - peak) / s.rth
+	s.atValley = m.charging.current(s.lower + s.vv)
+	s.fires = s.atPeak > 0 && s.vp > 0
+	s.ip, s.iv = m.ip.value(x, s.ohms, true), m.iv.value(x, s.ohms, false)
+	s.c = m.caps.farads(x)
+	m.path(x)
+	s.leak = m.caps.leakage(x, s.vp)
+	if m.igao >= 0 {
+		s.leak += x[m.igao] * math.Exp2(s.heat/10)
+	}
+	m.fill()
+}
+
+// path works out the discharge: the drop of the conducting device, taken as the
+// valley voltage, and the resistances.
+func (m *putModel) path(x []float64) {
+	s := &m.s
+	s.on, s.drop = x[m.on], s.vv
+	m.outside(x)
+	s.discharge = (s.on + s.r1 + s.re) * s.c * math.Log(s.vp/s.vv)
+}
