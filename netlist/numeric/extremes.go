@@ -45,6 +45,14 @@ type Hints struct {
 	Guides []int
 	// Guided lists the outputs that depend on a guide in that way.
 	Guided []int
+	// Gated lists outputs that are 0, infinite or undefined unless output Gate is
+	// great enough. Where they are so at the nominal point, nothing seems to move
+	// them: then what moves the gate is taken to move them too.
+	Gated []int
+	Gate  int
+	// Kinked lists outputs whose best point has to be looked around for variables
+	// that move them only there.
+	Kinked []int
 	// LowOnly and HighOnly list outputs of which one extreme is of no interest; it
 	// is then no more than the best that was met by the way.
 	LowOnly, HighOnly []int
@@ -74,6 +82,10 @@ func Extremes(box []Variable, n int, f Function, hints Hints) []Extreme {
 	for _, j := range hints.Bent {
 		s.bent[j] = true
 	}
+	for _, j := range hints.Kinked {
+		s.kinked[j] = true
+	}
+	s.gated, s.gate = hints.Gated, hints.Gate
 	for _, j := range hints.LowOnly {
 		s.best[2*j+1].idle = true
 	}
@@ -95,6 +107,37 @@ const maxRounds = 24
 // interior lists where a curved variable is looked at between its ends.
 var interior = [...]float64{1. / 3, 2. / 3}
 
+// wide is the ratio of its ends from which a variable is looked at on a
+// logarithmic grid as well.
+const wide = 8
+
+// look calls f for every place inside a variable where it is looked at.
+func (v Variable) look(f func(x float64)) {
+	for _, share := range interior {
+		f(v.Low + share*(v.High-v.Low))
+	}
+	if v.Low > 0 && v.High > wide*v.Low {
+		for k := 1.0; k < 5; k++ {
+			f(v.Low * math.Pow(v.High/v.Low, k/5))
+		}
+	}
+}
+
+// beside returns the neighbours of a place among those where a variable is looked
+// at.
+func (v Variable) beside(x float64) (below, above float64) {
+	below, above = v.Low, v.High
+	v.look(func(y float64) {
+		if y < x && y > below {
+			below = y
+		}
+		if y > x && y < above {
+			above = y
+		}
+	})
+	return below, above
+}
+
 // search is the state of one call of Extremes.
 type search struct {
 	box     []Variable
@@ -109,6 +152,9 @@ type search struct {
 	one     func(x []float64, j int) float64
 	alone   bool // the present exploration serves one output only
 	guided  []bool
+	kinked  []bool
+	gated   []int
+	gate    int
 	tried   map[uint64]bool // hashes of corners that were tried
 	best    []best          // 2n: low of output j at 2j, high at 2j+1
 }
@@ -122,7 +168,7 @@ type best struct {
 }
 
 func newSearch(box []Variable, n int, f Function) *search {
-	s := &search{box: box, n: n, f: f, tried: make(map[uint64]bool, 1024), bent: make([]bool, n), guided: make([]bool, n)}
+	s := &search{box: box, n: n, f: f, tried: make(map[uint64]bool, 1024), bent: make([]bool, n), guided: make([]bool, n), kinked: make([]bool, n)}
 	s.x, s.y = make([]float64, len(box)), make([]float64, n)
 	s.best = make([]best, 2*n)
 	s.moves = make([]bool, n*len(box))
@@ -174,6 +220,12 @@ func (s *search) tryFor(asked int) float64 {
 	return v
 }
 
+// tryAlone is tryFor of one output alone.
+func (s *search) tryAlone(asked int) float64 {
+	s.alone = true
+	return s.tryFor(asked)
+}
+
 // set stores a better point. A gain within rounding does not ask for another
 // exploration.
 func (b *best) set(v float64, x []float64) {
@@ -194,6 +246,7 @@ func (s *search) start() {
 	}
 	s.try()
 	s.nominal = append([]float64(nil), s.y...)
+	shut := s.shut()
 	base := make([]float64, s.n)
 	s.influences(base, func(v Variable) float64 { return v.Low }, func(v Variable) float64 { return v.High })
 	s.influences(base, func(v Variable) float64 { return v.High }, func(v Variable) float64 { return v.Low })
@@ -203,6 +256,56 @@ func (s *search) start() {
 			s.corners(i, s.box[i].Low)
 			s.corners(i, s.box[i].High)
 		}
+	}
+	for _, j := range shut {
+		own, gate := s.movesOf(2*j), s.movesOf(2*s.gate)
+		for i, m := range gate {
+			own[i] = own[i] || m
+		}
+	}
+	for j := range s.n {
+		if s.kinked[j] || slices.Contains(shut, j) {
+			s.opened(2 * j)
+			s.opened(2*j + 1)
+		}
+	}
+}
+
+// shut lists the gated outputs that are degenerate at the nominal point, and has
+// them follow the gate.
+func (s *search) shut() []int {
+	var list []int
+	for _, j := range s.gated {
+		if v := s.nominal[j]; v == 0 || v != v || math.IsInf(v, 0) {
+			list = append(list, j)
+			s.guided[j] = true
+		}
+	}
+	if len(list) > 0 && !slices.Contains(s.guides, s.gate) {
+		s.guides = append(slices.Clone(s.guides), s.gate)
+	}
+	return list
+}
+
+// opened notes what moves an output around its best point, where a gate is open or
+// a threshold passed.
+func (s *search) opened(b int) {
+	if s.best[b].idle {
+		return
+	}
+	at := slices.Clone(s.best[b].at)
+	moved := s.movesOf(b)
+	copy(s.x, at)
+	here := s.tryAlone(b)
+	for _, i := range s.free {
+		if moved[i] {
+			continue
+		}
+		for _, end := range [2]float64{s.box[i].Low, s.box[i].High} {
+			s.x[i] = end
+			moved[i] = moved[i] || differ(s.tryAlone(b), here)
+		}
+		s.x[i] = at[i]
 	}
 }
 
@@ -399,10 +502,10 @@ func (s *search) explore(point []float64, asked int) {
 			}
 		}
 		if v.Curved || v.Bends && s.bent[asked/2] {
-			for _, share := range interior {
-				s.x[i] = v.Low + share*(v.High-v.Low)
+			v.look(func(x float64) {
+				s.x[i] = x
 				s.tryFor(asked)
-			}
+			})
 			if inside := s.best[asked].at[i]; inside > v.Low && inside < v.High {
 				copy(s.x, s.best[asked].at)
 				s.refine(i, asked)
@@ -460,8 +563,8 @@ func (s *search) refine(i, asked int) {
 		return sense * s.tryFor(asked)
 	}
 	middle := s.best[asked].at[i]
-	width := (v.High - v.Low) / 3
-	low, high := math.Max(v.Low, middle-width), math.Min(v.High, middle+width)
+	low, high := v.beside(middle)
+	width := high - low
 	fl, fm, fh := at(low), at(middle), at(high)
 	for range parabolas {
 		x := vertex([3]float64{low, middle, high}, [3]float64{fl, fm, fh})

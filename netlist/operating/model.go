@@ -26,6 +26,9 @@ type output struct {
 	bent       bool          // its extremes may lie between the ends of a variable
 	guide      bool          // others depend on it beyond a threshold
 	guided     bool          // it depends on a guide in that way
+	gate       bool          // others (gated) are degenerate unless it is positive
+	gated      bool
+	kinked     bool // some variables move it only far from the nominal board
 }
 
 // contest is one comparison to be.
@@ -34,6 +37,8 @@ type contest struct {
 	bound                 Bound
 	value, limit          func() float64
 	guided                bool // the worst point depends on a guide beyond a threshold
+	gated                 bool // degenerate unless the gate is positive
+	kinked                bool // some variables move it only far from the nominal board
 	// habit says that rules draw lines of their own beside the limit.
 	habit bool
 	// limitMark is the trust in the limit; because says what else makes the
@@ -110,6 +115,7 @@ func (m *model) nominalOf(name string) float64 {
 type sought struct {
 	of                  func() float64
 	bent, guide, guided bool
+	gate, gated, kinked bool
 	lowOnly, highOnly   bool
 }
 
@@ -117,7 +123,7 @@ type sought struct {
 func (m *model) figuresSought() []sought {
 	list := make([]sought, len(m.outputs))
 	for j, o := range m.outputs {
-		list[j] = sought{of: o.of, bent: o.bent, guide: o.guide, guided: o.guided}
+		list[j] = sought{of: o.of, bent: o.bent, guide: o.guide, guided: o.guided, gate: o.gate, gated: o.gated, kinked: o.kinked}
 	}
 	return list
 }
@@ -126,24 +132,31 @@ func (m *model) figuresSought() []sought {
 // some.
 func (m *model) contestsSought() []sought {
 	list := make([]sought, len(m.contests), len(m.contests)+2)
-	guided := false
+	guided, gated := false, false
 	for k := range m.contests {
 		c := &m.contests[k]
-		guided = guided || c.guided
-		list[k] = sought{of: c.ratio, bent: c.bent, guided: c.guided, lowOnly: c.bound == Min, highOnly: c.bound == Max}
+		guided, gated = guided || c.guided, gated || c.gated
+		list[k] = sought{of: c.ratio, bent: c.bent, guided: c.guided, gated: c.gated, kinked: c.kinked,
+			lowOnly: c.bound == Min, highOnly: c.bound == Max}
 	}
 	for _, o := range m.outputs {
-		if o.guide && guided {
-			list = append(list, sought{of: o.of, guide: true, lowOnly: true, highOnly: true})
+		if o.guide && guided || o.gate && gated {
+			list = append(list, sought{of: o.of, guide: o.guide && guided, gate: o.gate, lowOnly: true, highOnly: true})
 		}
 	}
 	return list
 }
 
-// bentSlack is by how much, relatively, the bounds of a bent output are moved
-// outwards: its extreme is looked for between the ends of variables on a coarse
-// grid only.
-const bentSlack = 5e-3
+// slackOf is by how much, relatively, the bounds of an output are moved outwards.
+// The extreme of a bent one is looked for between the ends of variables on a coarse
+// grid only. Of the others, parts that are coupled through a rail by less than a
+// millionth may turn round together.
+func slackOf(bent bool) float64 {
+	if bent {
+		return 5e-3
+	}
+	return 1e-6
+}
 
 // search looks for the extremes over the box.
 func (m *model) search(list []sought) []numeric.Extreme {
@@ -160,6 +173,11 @@ func (m *model) search(list []sought) []numeric.Extreme {
 		mark(&hints.Bent, j, s.bent)
 		mark(&hints.Guides, j, s.guide)
 		mark(&hints.Guided, j, s.guided)
+		mark(&hints.Gated, j, s.gated)
+		mark(&hints.Kinked, j, s.kinked)
+		if s.gate {
+			hints.Gate = j
+		}
 		mark(&hints.LowOnly, j, s.lowOnly)
 		mark(&hints.HighOnly, j, s.highOnly)
 	}
@@ -169,13 +187,13 @@ func (m *model) search(list []sought) []numeric.Extreme {
 			y[j] = list[j].of()
 		}
 	}, hints)
-	for _, j := range hints.Bent {
-		e := &extremes[j]
+	for j := range extremes {
+		e, slack := &extremes[j], slackOf(list[j].bent)
 		if e.Low == e.High {
 			continue // nothing moves it
 		}
-		e.Low -= bentSlack * math.Abs(e.Low)
-		e.High += bentSlack * math.Abs(e.High)
+		e.Low -= slack * math.Abs(e.Low)
+		e.High += slack * math.Abs(e.High)
 	}
 	return extremes
 }

@@ -36,7 +36,7 @@ func (m *putModel) figures() {
 	})
 	m.figure("discharge_peak_current", "A", m.surge, m.surgeWorking)
 	m.figure("capacitor_energy", "J", m.energy, func() string { return "C V_P^2/2" })
-	m.figure("device_power", "W", m.power, func() string { return "C V_P^2 f/2, an upper bound" })
+	m.figure("device_power", "W", m.power, func() string { return "C (V_P^2 - V_V^2) f/2, an upper bound: part of it goes into resistors" })
 	m.last().bent = true // a higher peak stores more energy and comes less often
 }
 
@@ -72,7 +72,11 @@ func (m *putModel) surgeWorking() string {
 
 func (m *putModel) energy() float64 { return 0.5 * m.s.c * m.s.vp * m.s.vp }
 
-func (m *putModel) power() float64 { return m.energy() / m.s.period }
+// power returns what the capacitor gives off, all of it counted for the device.
+func (m *putModel) power() float64 {
+	s := &m.s
+	return 0.5 * s.c * (s.vp*s.vp - s.vv*s.vv) / s.period
+}
 
 // limits lists the comparisons. The nominal board was evaluated last.
 func (m *putModel) limits() {

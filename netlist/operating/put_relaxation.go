@@ -83,17 +83,40 @@ func newPUT(w *circuit.Wiring, s *stage.Stage) (*putModel, error) {
 		return nil, fmt.Errorf("nothing is known of the part %s", partName(s.Anchor))
 	}
 	m := &putModel{relaxation: newRelaxation(w, s)}
-	m.cycle, m.terminal = &m.s.cycle, "anode"
+	m.cycle, m.terminal, m.bentWindow = &m.s.cycle, "anode", true
 	m.evaluate = m.at
 	m.quietWorking = func() string { return "what flows through the divider to the cathode's resistor" }
 	m.device()
 	if err := m.networks(); err != nil {
 		return nil, err
 	}
+	// More resistance in the divider raises the peak and lowers the currents: what
+	// hangs on both turns round inside.
+	for _, e := range s.Parts[stage.GateDivider] {
+		if slot, known := m.slots[e]; known {
+			m.box[slot.index].Bends = true
+		}
+	}
 	m.evaluate(m.nominal())
 	m.figures()
 	m.limits()
+	m.guideByGate()
 	return m, nil
+}
+
+// guideByGate has everything guided by the peak voltage and by R_G: where the
+// valley would lie above the peak it follows it, and beyond the sheet's points a
+// current stays where it is; only there, far from the nominal board, some
+// variables count.
+func (m *putModel) guideByGate() {
+	for i := range m.outputs {
+		o := &m.outputs[i]
+		o.guide = o.name == "peak_voltage" || o.name == "gate_source_resistance"
+		o.guided, o.kinked = !o.guide, !o.guide
+	}
+	for i := range m.contests {
+		m.contests[i].guided, m.contests[i].kinked = true, true
+	}
 }
 
 // device adds the figures of the device.

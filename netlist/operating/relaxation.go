@@ -28,6 +28,8 @@ type relaxation struct {
 
 	terminal string // where the device takes the charge in, in words
 	leaks    bool   // the device leaks besides the capacitors
+	// bentWindow says that the valley side of the window bends too.
+	bentWindow bool
 
 	// What a gate stage wants to know of its driver.
 	outlet       circuit.NodeID     // where the pulse comes out
@@ -152,6 +154,7 @@ func (m *relaxation) frequency() float64 { return 1 / m.cycle.period }
 func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 	s := m.cycle
 	m.figure("charging_current_at_peak", "A", func() float64 { return s.atPeak }, m.peakWorking)
+	m.last().gate = true // a stage that does not fire has no rate that could rise or fall
 	m.figure("peak_current_required", "A", func() float64 { return s.ip }, peakWorking)
 	m.last().guided = true
 	m.figure("charging_current_at_valley", "A", func() float64 { return s.atValley }, m.valleyWorking)
@@ -165,6 +168,7 @@ func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 			return fmt.Sprintf("(V_th - V_V)/I_V = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vv, "V"), show(s.iv, "A"))
 		})
 		m.last().guided = true
+		m.last().bent = m.bentWindow
 		m.figure("timing_resistance_max", "ohm", func() float64 { return max(s.vth-s.lower-s.vp, 0) / s.ip }, func() string {
 			return fmt.Sprintf("(V_th - V_P)/I_P = (%s - %s)/%s", show(s.vth-s.lower, "V"), show(s.vp, "V"), show(s.ip, "A"))
 		})
@@ -207,7 +211,7 @@ func (m *relaxation) windowLimits(peakBecause, valleyBecause string) {
 	}
 	if !math.IsNaN(s.iv) && !m.isOneShot() {
 		m.compare(contest{name: "charging_current_at_valley", limitName: "valley_current_available", unit: "A", bound: Max, guided: true,
-			value: func() float64 { return s.atValley }, limit: func() float64 { return s.iv }, because: valleyBecause, working: m.valleyWorking})
+			value: func() float64 { return s.atValley }, limit: func() float64 { return s.iv }, bent: m.bentWindow, because: valleyBecause, working: m.valleyWorking})
 	}
 	m.compare(contest{name: "timing_capacitance", limitName: "habit", unit: "F", bound: Min, habit: true,
 		value: func() float64 { return s.c }, limit: func() float64 { return 100e-12 },
@@ -218,14 +222,18 @@ func (m *relaxation) windowLimits(peakBecause, valleyBecause string) {
 // first pulse. law is the formula of the period in the symbols of the trade.
 func (m *relaxation) timeFigures(law string) {
 	s := m.cycle
-	m.figure("period", "s", func() float64 { return s.period }, func() string {
+	rate := func(name, unit string, of func() float64, working func() string) {
+		m.figure(name, unit, of, working)
+		m.last().gated = true
+	}
+	rate("period", "s", func() float64 { return s.period }, func() string {
 		return law + " = " + show(s.charge, "s") + " + " + show(s.discharge, "s")
 	})
-	m.figure("frequency", "Hz", m.frequency, func() string { return "1/T" })
-	m.figure("first_pulse", "s", m.firstPulse, func() string {
+	rate("frequency", "Hz", m.frequency, func() string { return "1/T" })
+	rate("first_pulse", "s", m.firstPulse, func() string {
 		return "time from an empty capacitor to the first pulse"
 	})
-	m.figure("ramp_nonlinearity", "", func() float64 { return s.ramp }, func() string {
+	rate("ramp_nonlinearity", "", func() float64 { return s.ramp }, func() string {
 		return "largest departure of the ramp from the straight line between its ends, over the swing"
 	})
 }
@@ -266,7 +274,7 @@ func (m *relaxation) targetLimits() {
 	frequency := func() float64 { return 1 / period() }
 	working := func() string { return "T = " + show(period(), "s") + ", f = " + show(frequency(), "Hz") }
 	add := func(name, unit string, bound Bound, value func() float64, limit float64) {
-		m.compare(contest{name: name, limitName: "target", unit: unit, bound: bound, value: value,
+		m.compare(contest{name: name, limitName: "target", unit: unit, bound: bound, value: value, gated: true,
 			limit: func() float64 { return limit }, working: working})
 	}
 	if t.Frequency != nil {

@@ -16,11 +16,11 @@ func (m *scrGate) gateFigures() {
 			return "greatest trigger voltage at the coldest ambient"
 		})
 		m.figure("gate_pulse_current", "A", func() float64 { return g.sheet.current }, m.pulseWorking)
-		m.last().guide = true // a pulse has a width only where its current is enough
+		m.last().guide, m.last().gate = true, true // a pulse has a width only where its current is enough
 		m.figure("gate_pulse_width", "s", func() float64 { return g.sheet.width }, func() string {
 			return "time for which the falling pulse stays above the required current"
 		})
-		m.last().guided = true
+		m.last().guided, m.last().gated = true, true
 		m.last().bent = true // more resistance: a smaller pulse, but a longer one
 		m.figure("gate_pulse_width_required", "s", m.widthWithLatching, m.widthWorking)
 	}
@@ -120,7 +120,7 @@ func (m *scrGate) triggerLimits(d *drive, volts func() float64, because string) 
 	m.compare(contest{name: "gate_pulse_current", limitName: "gate_trigger_current_required", unit: "A", bound: Min,
 		value: func() float64 { return d.current }, limit: func() float64 { return d.required }, limitMark: mark,
 		because: note, working: m.pulseWorking})
-	m.compare(contest{name: "gate_pulse_width", limitName: "gate_pulse_width_required", unit: "s", bound: Min, bent: true, guided: true,
+	m.compare(contest{name: "gate_pulse_width", limitName: "gate_pulse_width_required", unit: "s", bound: Min, bent: true, guided: true, gated: true,
 		value: func() float64 { return d.width }, limit: func() float64 {
 			if d.current < d.required {
 				return 0 // too weak to speak of a width

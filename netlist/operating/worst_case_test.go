@@ -121,7 +121,7 @@ func modelOf(t testing.TB, text string) *model {
 		}
 		return &m.model
 	}
-	m, err := newUJT(w, stages[0])
+	m, err := newDriver(w, stages[0])
 	if err != nil {
 		t.Fatalf("%s\n%v", text, err)
 	}
@@ -142,7 +142,10 @@ func sample(r *rand.Rand, box []numeric.Variable, x []float64) {
 
 // No sampled board of 10,000 random stages lies outside the computed bounds,
 // and each bound is reached, within 1 %, on a board inside the box.
-func TestNoSampledBoardLiesOutsideTheBounds(t *testing.T) {
+func TestNoSampledBoardLiesOutsideTheBounds(t *testing.T) { sampleStages(t, randomDeck) }
+
+// sampleStages samples random stages that a maker writes.
+func sampleStages(t *testing.T, maker func(seed uint64) string) {
 	stages := 10_000
 	if testing.Short() {
 		stages = 500
@@ -156,15 +159,14 @@ func TestNoSampledBoardLiesOutsideTheBounds(t *testing.T) {
 				if t.Failed() {
 					return
 				}
-				sampleStage(t, uint64(seed), samples)
+				sampleStage(t, maker(uint64(seed)), uint64(seed), samples)
 			}
 		})
 	}
 	wait.Wait()
 }
 
-func sampleStage(t *testing.T, seed uint64, samples int) {
-	text := randomDeck(seed)
+func sampleStage(t *testing.T, text string, seed uint64, samples int) {
 	m := modelOf(t, text)
 	n := len(m.outputs) + len(m.contests)
 	name := func(j int) string {
