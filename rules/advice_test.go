@@ -145,7 +145,7 @@ func TestTheNearestValueIsAdvised(t *testing.T) {
 
 // Where the period is declared, resistor and capacitor have to change together.
 func TestResistorAndCapacitorChangeTogetherWhereOneAloneWillNotDo(t *testing.T) {
-	text := duskWith("2.2meg", "1u", "*> XQ1 period=1.15..4.5\n*> all R tol=1%\n*> C1 tol=5% kind=film\n*> "+
+	text := duskWith("2.2meg", "1u", "*> XQ1 period=1.2..4.4\n*> all R tol=1%\n*> C1 tol=5% kind=film\n*> "+
 		"V1 tol=1%\n")
 	before := full(t, text)
 	f := findingOf(before, "timing-current-below-peak")

@@ -5,12 +5,11 @@ import (
 	"standoff/netlist/quantity"
 )
 
-// dielectric is how the capacitance of a kind of capacitor changes with
+// dielectric is how the capacitance of a kind of capacitor may change with
 // temperature.
 type dielectric struct {
 	tempco quantity.Spread // 1/K
 	class  quantity.Spread // relative change anywhere in the temperature range
-	memory bool
 }
 
 // classReach is how far from 25 deg C, in K, the whole of a class change is
@@ -18,11 +17,10 @@ type dielectric struct {
 // nothing in between.
 const classReach = 5
 
-// dielectricOf returns what is known of a kind. C0G, X7R and Y5V: EIA-198 (30 ppm
-// per K; 15 % over -55 .. 125 deg C; +22, -82 % over -30 .. 85 deg C), the nominal
-// change of a class being the middle of its range. Film: the span of polypropylene
-// and polyester; electrolytic and tantalum: a fifth less at -40 deg C (all three
-// from memory). A y2 capacitor may be ceramic of several classes: unknown.
+// dielectricOf returns what a standard promises of a kind: EIA-198 for C0G (30 ppm
+// per K), X7R (15 % over -55 .. 125 deg C) and Y5V (+22, -82 % over -30 .. 85
+// deg C), the nominal change of a class being the middle of its range. Of film and
+// electrolytic capacitors no standard limits it: their drift is what tempco= says.
 func dielectricOf(kind string) (d dielectric, ok bool) {
 	switch kind {
 	case "c0g":
@@ -31,10 +29,6 @@ func dielectricOf(kind string) (d dielectric, ok bool) {
 		return dielectric{class: quantity.Spread{Low: -0.15, High: 0.15}}, true
 	case "y5v":
 		return dielectric{class: quantity.Spread{Low: -0.82, Nominal: -0.3, High: 0.22}}, true
-	case "film", "x2":
-		return dielectric{tempco: quantity.Spread{Low: -300e-6, Nominal: 100e-6, High: 600e-6}, memory: true}, true
-	case "electrolytic", "tantalum":
-		return dielectric{tempco: quantity.Spread{Low: 0, Nominal: 1e-3, High: 3e-3}, memory: true}, true
 	}
 	return dielectric{}, false
 }
@@ -52,20 +46,10 @@ func (b *bench) drifts(e *circuit.Element, s *slot) {
 	if !ok {
 		return
 	}
-	note := func(what string) trait {
-		t := trait{name: e.Designator + what, unit: "1/K"}
-		if d.memory {
-			t.doubtLow, t.doubtHigh = true, true
-			t.note = "drift of " + e.Designator + " as of a capacitor of its kind, from memory"
-		}
-		return t
-	}
 	if d.tempco.Low < d.tempco.High {
-		s.tempco = b.add(note(".tempco"), d.tempco)
+		s.tempco = b.add(trait{name: e.Designator + ".tempco", unit: "1/K"}, d.tempco)
 	}
 	if d.class.Low < d.class.High {
-		t := note(".class")
-		t.unit = ""
-		s.class = b.add(t, d.class)
+		s.class = b.add(trait{name: e.Designator + ".class"}, d.class)
 	}
 }

@@ -224,10 +224,12 @@ func (m *model) decide(k int, e numeric.Extreme) (Comparison, bool) {
 // memory and whatever the assumed values really are.
 func (m *model) certainty(k int, at []float64) (bool, string) {
 	c := &m.contests[k]
-	if c.because != "" {
+	m.evaluate(at)
+	nothing := c.bound == Min && c.value() <= 0 // fails whatever the limit
+	if c.because != "" && !nothing {
 		return false, c.because
 	}
-	if c.limitMark >= part.Memory {
+	if c.limitMark >= part.Memory && !nothing {
 		return false, "the limit is " + markWords(c.limitMark)
 	}
 	if note := m.memoryIn(k, at); note != "" {
