@@ -190,14 +190,15 @@ func (m *putModel) onResistance() {
 		m.on = m.assumed("ron", "ohm", assumedPUTOn, "on-resistance not published, assumed")
 		return
 	}
-	t := trait{name: "ron", unit: "ohm", doubtLow: true, note: "least on-resistance assumed"}
+	t := trait{name: "ron", unit: "ohm", doubtLow: true, note: "least on-resistance assumed at a quarter of the typical one"}
 	if mark >= part.Memory {
 		t.memory, t.note = true, fmt.Sprintf("vo of %s is from memory", m.ratings.Name)
 	}
-	s := quantity.Spread{Low: leastOn, High: max(load*(volts/least-1), leastOn)}
-	s.Nominal = s.High / 2
+	s := quantity.Spread{High: max(load*(volts/least-1), leastOn)}
+	s.Nominal, s.Low = s.High/2, s.High/8
 	if v, _, ok := m.ratings.Spread("vo"); ok && v.Nominal > least && v.Nominal < typical {
 		s.Nominal = max(load*(typical/v.Nominal-1), leastOn)
+		s.Low = max(s.Nominal/4, leastOn)
 	}
 	m.on = m.add(t, s)
 }

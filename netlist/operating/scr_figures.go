@@ -165,11 +165,11 @@ func (m *scrGate) quietLimits() {
 
 // overdriveLimits hold the pulse against what the gate stands. The verdict is
 // certain only where resistors on the board set the current: where the drive
-// hangs on the on-resistance of the unijunction it is a doubt.
+// hangs on the on-resistance of the driver it is a doubt.
 func (m *scrGate) overdriveLimits() {
 	because := ""
 	if m.boardResistance() < m.nominalOn() {
-		because = "the current hangs on the unijunction's own on-resistance"
+		because = "the current hangs on the driver's own on-resistance"
 	}
 	add := func(name, limit, unit string, value func() float64) {
 		v, mark, ok := m.scr.Limit(limit)

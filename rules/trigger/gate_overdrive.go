@@ -10,7 +10,7 @@ var overdrive = &rule.Rule{
 	Title: "The trigger pulse is more than the gate stands.",
 	Why: "Small thyristors have small gates: 0.2 A for a C106, 0.1 W for many TO-92 types. A capacitor " +
 		"emptied through a few ohm exceeds that. It is a hold where resistors on the board set the " +
-		"current, a doubt where it hangs on the unijunction's own on-resistance.",
+		"current, a doubt where it hangs on the driver's own on-resistance.",
 	Formula: "shorted-gate current < I_GM; E^2/(4 R) of the drive < P_GM",
 	Source:  "upper bounds for any gate characteristic (straight load line); ratings of the sheet",
 	Failing: `Pinball bumper
