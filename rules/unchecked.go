@@ -53,12 +53,10 @@ func Unstaged(b *netlist.Board) []Unchecked {
 // where the element could not.
 func noStage(e *circuit.Element) string {
 	switch e.Kind {
-	case circuit.UJT, circuit.PUT, circuit.SCR:
+	case circuit.UJT, circuit.PUT, circuit.Diac, circuit.SCR:
 		return "no stage was recognised around it"
 	case circuit.Triac:
 		return "gate stages of triacs are not worked out yet"
-	case circuit.Diac:
-		return "stages around a breakover device are not worked out yet"
 	case circuit.SourceIC:
 		return "current-source circuits are not worked out yet"
 	case circuit.Optotriac:

@@ -62,7 +62,7 @@ func (s *scope) namesake(r *part.Ratings) bool {
 		return false
 	}
 	hidden := r.Kind == part.SCR && len(s.pins) == 2
-	return len(libraryOrder(r.Kind, len(s.pins))) != len(s.pins) && !hidden
+	return len(libraryOrder(r.Kind, len(s.pins))) != len(s.pins) && !hidden || r.Kind == part.Diac && len(s.pins) != 2
 }
 
 // words returns the fields without the word PARAMS:, the slash before a cell
@@ -196,6 +196,9 @@ func (p *placing) trigger(e *Element, r *part.Ratings, sub *scope) {
 func libraryOrder(kind part.Kind, count int) []string {
 	if kind == part.CurrentSource && count == 2 {
 		return []string{"v+", "v-"}
+	}
+	if kind == part.Diac && count == 3 { // a silicon switch with its gate
+		return []string{"1", "gate", "2"}
 	}
 	return part.NetlistOrder(kind)
 }

@@ -99,7 +99,11 @@ func (b *bench) rating(r *part.Ratings, symbol, unit string) (int, bool) {
 		return -1, false
 	}
 	t := trait{name: symbol, unit: unit}
-	if mark >= part.Memory {
+	switch {
+	case mark == part.Assumed:
+		t.doubtLow, t.doubtHigh = true, true
+		t.note = fmt.Sprintf("%s of %s is published on one side only", symbol, r.Name)
+	case mark >= part.Memory:
 		t.memory, t.note = true, fmt.Sprintf("%s of %s is from memory", symbol, r.Name)
 	}
 	return b.add(t, s), true

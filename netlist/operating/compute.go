@@ -58,6 +58,8 @@ func account(w *circuit.Wiring, s *stage.Stage) *Account {
 		a.oscillator(w, s)
 	case stage.PUTOscillator:
 		a.programmable(w, s)
+	case stage.BreakoverOscillator:
+		a.breakover(w, s)
 	case stage.SCRGate:
 		a.gate(w, s)
 	}
@@ -96,6 +98,21 @@ func (a *Account) programmable(w *circuit.Wiring, s *stage.Stage) {
 		return
 	}
 	a.times(&m.relaxation)
+	a.Unchecked = append(a.Unchecked, m.unchecked()...)
+}
+
+// breakover fills the account of a breakover oscillator.
+func (a *Account) breakover(w *circuit.Wiring, s *stage.Stage) {
+	m, err := newBreakover(w, s)
+	if err != nil {
+		a.cannot(err)
+		return
+	}
+	if m.line == nil && !m.blocked {
+		a.times(&m.relaxation)
+	} else {
+		a.take(&m.model)
+	}
 	a.Unchecked = append(a.Unchecked, m.unchecked()...)
 }
 

@@ -19,6 +19,7 @@ type mesh struct {
 	crest    bool    // sine sources stand at their crest
 	polarity float64 // +1 or -1: which crest
 	bends    bool    // diodes stand in it: straight only in pieces
+	sines    []*circuit.Element
 	there    []float64
 	back     []float64
 }
@@ -135,6 +136,9 @@ func (m *mesh) element(e *circuit.Element) error {
 		}
 		if mb.sine = e.Wave.Kind == "sin"; mb.sine && len(e.Wave.Args) > 0 {
 			mb.fixed = e.Wave.Args[0]
+		}
+		if mb.sine {
+			m.sines = append(m.sines, e)
 		}
 		if e.Wave.Kind != "" && e.Wave.Kind != "dc" && !(mb.sine && m.crest) {
 			return fmt.Errorf("it is fed by %s, which is not a dc source", e.Designator)

@@ -75,6 +75,15 @@ func newDriver(w *circuit.Wiring, s *stage.Stage) (*relaxation, error) {
 			return nil, err
 		}
 		return &m.relaxation, nil
+	case stage.BreakoverOscillator:
+		m, err := newBreakover(w, s)
+		if err != nil {
+			return nil, err
+		}
+		if m.line != nil || m.sign < 0 || m.blocked {
+			return nil, fmt.Errorf("only positive pulses on a dc supply are worked out")
+		}
+		return &m.relaxation, nil
 	}
 	return nil, fmt.Errorf("a %s as a driver is not worked out", s.Kind)
 }

@@ -121,6 +121,13 @@ func modelOf(t testing.TB, text string) *model {
 		}
 		return &m.model
 	}
+	if stages[0].Kind == stage.BreakoverOscillator {
+		m, err := newBreakover(w, stages[0])
+		if err != nil {
+			t.Fatalf("%s\n%v", text, err)
+		}
+		return &m.model
+	}
 	m, err := newDriver(w, stages[0])
 	if err != nil {
 		t.Fatalf("%s\n%v", text, err)

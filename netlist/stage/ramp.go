@@ -107,7 +107,7 @@ func (u *rampReading) feeds(e *circuit.Element) bool {
 }
 
 // lowerRail takes the fixed net that base one reaches through the fewest parts;
-// where it reaches none, the cathode of a thyristor whose gate it reaches.
+// where it reaches none, the cathode (main terminal one) of a thyristor whose gate it reaches.
 func (u *rampReading) lowerRail() bool {
 	for _, n := range u.atOutlet.Nets {
 		if u.w.IsFixed(n) && n != u.control {
@@ -117,10 +117,10 @@ func (u *rampReading) lowerRail() bool {
 	}
 	for _, n := range u.atOutlet.Nets {
 		for _, p := range u.w.On(n) {
-			cathode, ok := p.Element.Pin("cathode")
+			back, ok := p.Element.Pin(map[circuit.Kind]string{circuit.SCR: "cathode", circuit.Triac: "mt1"}[p.Element.Kind])
 			gate, _ := p.Element.Pin("gate")
-			if p.Element.Kind == circuit.SCR && ok && u.w.Net(gate) == n && u.w.IsFixed(cathode) {
-				u.lower = u.w.Net(cathode)
+			if ok && u.w.Net(gate) == n && u.w.IsFixed(back) {
+				u.lower = u.w.Net(back)
 				return true
 			}
 		}
@@ -240,7 +240,7 @@ func (u *rampReading) isGate(n circuit.NodeID) bool {
 	}
 	return slices.ContainsFunc(u.w.On(n), func(p circuit.Pin) bool {
 		gate, ok := p.Element.Pin("gate")
-		return ok && p.Element.Kind == circuit.SCR && u.w.Net(gate) == n
+		return ok && (p.Element.Kind == circuit.SCR || p.Element.Kind == circuit.Triac) && u.w.Net(gate) == n
 	})
 }
 

@@ -20,6 +20,7 @@ type topology struct {
 var topologies = [...]topology{
 	{circuit.UJT, UJTOscillator, []string{"emitter", "base1", "base2"}, (*recogniser).ujt},
 	{circuit.PUT, PUTOscillator, []string{"anode", "gate", "cathode"}, (*recogniser).put},
+	{circuit.Diac, BreakoverOscillator, []string{"1", "2"}, (*recogniser).breakover},
 	{circuit.SCR, SCRGate, []string{"anode", "gate", "cathode"}, (*recogniser).scr},
 }
 
@@ -87,7 +88,8 @@ type OrderNote struct {
 // order that nobody wrote down then gives way to the wiring.
 func (r *recogniser) ordered(e *circuit.Element, t *topology) *Stage {
 	roles := e.Roles
-	if len(e.Nodes) != len(t.roles) || len(roles) != len(t.roles) {
+	known := func(role string) bool { return slices.Contains(roles, role) }
+	if len(roles) != len(e.Nodes) || slices.ContainsFunc(t.roles, func(role string) bool { return !known(role) }) {
 		return &Stage{Anchor: e, Kind: t.kind, Gap: "its terminals are not known"}
 	}
 	taken := t.build(r, e, netsOf(r.w, e, roles, t.roles))

@@ -1,0 +1,131 @@
+package operating
+
+import (
+	"fmt"
+	"math"
+)
+
+// figures lists what a worksheet shows of the oscillator.
+func (m *breakoverModel) figures() {
+	s := &m.s
+	m.figure("supply_voltage", "V", func() float64 { return s.upper - s.lower }, func() string {
+		return fmt.Sprintf("feeding rail %s less the device's rail %s", show(s.upper, "V"), show(s.lower, "V"))
+	})
+	m.figure("capacitor_voltage_crest", "V", func() float64 { return s.reach }, m.reachWorking)
+	m.figure("peak_voltage", "V", func() float64 { return s.vp }, func() string {
+		return fmt.Sprintf("V_BO = %s across the device", show(s.volts, "V"))
+	})
+	m.figure("valley_voltage", "V", func() float64 { return s.vv }, func() string {
+		return "capacitor voltage at which the discharge ends"
+	})
+	if m.line == nil {
+		m.windowFigures(func() string { return "I_BO of the sheet" }, func() string { return "I_H of the sheet" })
+		m.timeFigures("T = R_th C ln((V_th - V_V)/(V_th - V_BO)) + (R_on + R_K) C ln(V_BO/V_V)")
+	} else {
+		m.lineFigures()
+	}
+	m.figure("discharge_peak_current", "A", m.surge, m.surgeWorking)
+}
+
+// lineFigures are those of a stage that the line feeds.
+func (m *breakoverModel) lineFigures() {
+	s := &m.s
+	m.figure("timing_resistance", "ohm", func() float64 { return s.rth }, func() string {
+		return "resistance of the charging network as the capacitor sees it"
+	})
+	m.figure("timing_capacitance", "F", func() float64 { return s.c }, func() string {
+		return "all capacitors from the breakover device to the rails"
+	})
+	m.figure("breakover_margin", "V", func() float64 { return s.reach - s.vp }, func() string {
+		return "crest of the capacitor's voltage less V_BO"
+	})
+	m.last().gate = true
+	m.figure("first_breakover_time", "s", func() float64 { return s.first }, func() string {
+		return "from the zero crossing, empty capacitor, to the first breakover"
+	})
+	m.last().gated, m.last().bent = true, true
+	m.figure("pulses_per_half_cycle", "", func() float64 { return s.pulses }, func() string {
+		return "breakovers before the line crosses zero again; the fraction says how far the last ramp gets"
+	})
+	m.last().bent, m.last().gated = true, true
+}
+
+func (m *breakoverModel) reachWorking() string {
+	if m.line == nil {
+		return "what the charging network would bring the capacitor to if nothing broke over"
+	}
+	return fmt.Sprintf("crest of the capacitor's voltage on the line, %s behind %s: crest/sqrt(1 + (w R C)^2)",
+		show(m.line.crest, "V"), show(m.line.ohms, "ohm"))
+}
+
+// surge returns the greatest current through the device.
+func (m *breakoverModel) surge() float64 {
+	s := &m.s
+	return (s.vp - s.drop) / (s.on + s.r1 + s.re)
+}
+
+func (m *breakoverModel) surgeWorking() string {
+	s := &m.s
+	return fmt.Sprintf("(V_BO - V_V)/(R_on + R_K) = (%s - %s)/(%s + %s + %s)", show(s.vp, "V"), show(s.drop, "V"),
+		show(s.on, "ohm"), show(s.r1, "ohm"), show(s.re, "ohm"))
+}
+
+// limits lists the comparisons. The nominal board was evaluated last.
+func (m *breakoverModel) limits() {
+	s := &m.s
+	if m.blocked {
+		m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min,
+			value: func() float64 { return -s.reach }, limit: func() float64 { return s.volts },
+			working: func() string { return "the device conducts in one direction only and stands the wrong way round" }})
+		return
+	}
+	m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min,
+		value: func() float64 { return s.reach - m.sign*s.standby }, limit: func() float64 { return s.volts }, working: m.reachWorking})
+	if m.line != nil {
+		s.ip, s.iv = math.NaN(), math.NaN() // the capacitor delivers I_BO, and every zero crossing lets go
+	}
+	m.windowLimits("", "")
+	if limit, mark, ok := m.rated("itrm"); ok {
+		m.compare(contest{name: "discharge_peak_current", limitName: "itrm", unit: "A", bound: Max, value: m.surge, bent: true,
+			limit: limit, limitMark: mark, working: m.surgeWorking})
+	}
+	if m.line == nil {
+		m.targetLimits()
+	}
+	m.guideByPeak()
+}
+
+// guideByPeak has everything guided by the charging current at the peak, beyond
+// which nothing happens.
+func (m *breakoverModel) guideByPeak() {
+	for i := range m.outputs {
+		m.outputs[i].kinked = m.line != nil
+	}
+	for i := range m.contests {
+		m.contests[i].kinked = true
+	}
+}
+
+// unchecked lists the rules that a missing rating keeps from being judged.
+func (m *breakoverModel) unchecked() []Unchecked {
+	var list []Unchecked
+	if m.line != nil {
+		list = append(list, Unchecked{"timing-current-below-peak", "the capacitor delivers the breakover current; on the line only the voltage is judged"})
+	} else if m.ibo < 0 {
+		list = append(list, Unchecked{"timing-current-below-peak", missing("breakover current", m.ratings)})
+	}
+	switch {
+	case m.line != nil: // every zero crossing lets go
+	case m.isOneShot():
+		list = append(list, Unchecked{"timing-current-above-valley", oneShotNote})
+	case m.ih < 0:
+		list = append(list, Unchecked{"timing-current-above-valley", missing("holding current", m.ratings)})
+	}
+	if _, _, ok := m.ratings.Limit("itrm"); !ok {
+		list = append(list, Unchecked{"emitter-surge-current", missing("repetitive peak current rating", m.ratings)})
+	}
+	if t := m.stage.Anchor.Intent; m.line != nil && (t.Frequency != nil || t.Period != nil) {
+		list = append(list, Unchecked{"frequency-off-target", "the line sets the rate of the stage"})
+	}
+	return list
+}

@@ -1,0 +1,44 @@
+package operating
+
+import (
+	"math/rand/v2"
+	"testing"
+)
+
+// randomBreakover writes a random breakover oscillator on dc or on the line,
+// sometimes with a thyristor behind it.
+func randomBreakover(seed uint64) string {
+	d := &deckMaker{Rand: rand.New(rand.NewPCG(seed, 5))}
+	d.card("random board")
+	line := d.IntN(4) == 0
+	if line {
+		d.card("V1 vcc 0 SIN(0 %g %d)", d.between(30, 400), 50+10*d.IntN(2))
+		d.resistor("vcc", "e", 1e4, 1e6)
+		if d.IntN(2) == 0 {
+			d.resistor("e", "0", 1e5, 1e7)
+		}
+	} else {
+		sign := [...]string{"", "-"}[d.IntN(2)*d.IntN(2)]
+		d.card("V1 vcc 0 %s%g", sign, 12+100*d.Float64())
+		if d.IntN(2) == 0 {
+			d.card("*> V1 tol=%d%%", d.IntN(15))
+		}
+		d.charging()
+		line = sign == "-" // no thyristor behind a negative pulse
+	}
+	d.card("C1 e 0 %g", d.between(5e-9, 20e-6))
+	d.card("X1 e k %s", [...]string{"DB3", "MBS4991", "HT-32", "2N4992", "NE-2"}[d.IntN(5)])
+	d.resistor("k", "0", 10, 100)
+	low := d.IntN(60) - 30
+	d.card("*> board ambient=%d..%d", low, low+d.IntN(70))
+	if !line && d.IntN(3) == 0 {
+		d.resistor("k", "sg", 10, 500)
+		d.resistor("sg", "0", 200, 5000)
+		d.card("X2 a sg 0 C106D")
+		d.resistor("vcc", "a", 10, 1000)
+	}
+	return d.b.String()
+}
+
+// The same for breakover oscillators.
+func TestNoSampledBreakoverBoardLiesOutsideTheBounds(t *testing.T) { sampleStages(t, randomBreakover) }

@@ -1,0 +1,115 @@
+package stage
+
+import (
+	"slices"
+
+	"standoff/netlist/circuit"
+)
+
+// breakover recognises the relaxation oscillator around a two-terminal device
+// that breaks over: a capacitor on one side, charged by any network; the other
+// side at a rail, through a resistor, a winding or a thyristor's gate. Which side
+// is which the wiring tells; a device with a direction has to stand the right way.
+func (r *recogniser) breakover(anchor *circuit.Element, nets []circuit.NodeID) *Stage {
+	first := r.breakoverFrom(anchor, nets[0], nets[1])
+	if first.Gap == "" {
+		return first
+	}
+	if second := r.breakoverFrom(anchor, nets[1], nets[0]); second.Gap == "" || !r.hasCapacitor(nets[0]) {
+		return second
+	}
+	return first
+}
+
+func (r *recogniser) hasCapacitor(n circuit.NodeID) bool {
+	return slices.ContainsFunc(r.w.On(n), func(p circuit.Pin) bool { return p.Element.Kind == circuit.Capacitor })
+}
+
+// breakoverFrom reads the stage with the capacitor on the side of terminal.
+func (r *recogniser) breakoverFrom(anchor *circuit.Element, terminal, outlet circuit.NodeID) *Stage {
+	u := &breakoverReading{rampReading{w: r.w, stage: newStage(BreakoverOscillator, anchor),
+		terminal: terminal, outlet: outlet, control: outlet,
+		terminalWords: "breakover device", outletWords: "its far side"}}
+	s := u.stage
+	s.Nodes["outlet"], s.Nodes["terminal"] = outlet, terminal
+	s.Gap = steps(u.apart, u.capacitorNode, u.rails, u.capacitors, u.charging, u.fed)
+	if s.Gap == "" {
+		u.lead()
+		u.supplies()
+		u.beside()
+		u.gate()
+	}
+	return s
+}
+
+// breakoverReading is the state of reading one oscillator.
+type breakoverReading struct{ rampReading }
+
+func (u *breakoverReading) apart() string {
+	if u.terminal == u.outlet {
+		return "both its terminals are on one net"
+	}
+	return ""
+}
+
+// rails finds the rail that the discharge returns to and the one that feeds the
+// capacitor: of those that the charging network reaches, the one farthest from it.
+func (u *breakoverReading) rails() string {
+	stop := func(n circuit.NodeID) bool {
+		return u.w.IsFixed(n) || n == u.terminal || n == u.node || n == u.outlet
+	}
+	u.atOutlet = u.w.Walk([]circuit.NodeID{u.outlet}, carriesDC, stop)
+	u.atControl = u.atOutlet
+	u.atNode = u.w.Walk([]circuit.NodeID{u.node}, u.feeds, stop)
+	if u.w.IsFixed(u.outlet) {
+		u.lower = u.outlet
+	} else if !u.lowerRail() {
+		return "its far side has no way to a rail"
+	}
+	u.lowerVolts, u.lowerVoltsKnown = u.w.Potential(u.lower)
+	found, most := false, 0.0
+	for _, n := range u.atNode.Nets {
+		if !u.w.IsFixed(n) || n == u.lower {
+			continue
+		}
+		v, known := u.w.Potential(n)
+		away := max(v-u.lowerVolts, u.lowerVolts-v)
+		if !known {
+			away = 1e12 // a source that swings
+		}
+		if !found || away > most {
+			found, most, u.upper = true, away, n
+		}
+	}
+	if !found {
+		return "nothing charges the capacitor"
+	}
+	u.stage.Nodes["upper"], u.stage.Nodes["lower"] = u.upper, u.lower
+	return ""
+}
+
+// fed turns away what is timed from the line through a thyristor's own load: that
+// is phase control.
+func (u *breakoverReading) fed() string {
+	for _, n := range u.atOutlet.Nets {
+		for _, p := range u.w.On(n) {
+			e := p.Element
+			gate, ok := e.Pin("gate")
+			if !ok || e.Kind != circuit.Triac && e.Kind != circuit.SCR || u.w.Net(gate) != n {
+				continue
+			}
+			if _, dc := u.w.Potential(u.upper); !dc {
+				return "it fires " + e.Designator + " from the line: phase control is not worked out"
+			}
+		}
+	}
+	return ""
+}
+
+// gate names a third terminal that is wired: it moves the breakover voltage.
+func (u *breakoverReading) gate() {
+	gate, ok := u.stage.Anchor.Pin("gate")
+	if ok && len(u.w.On(gate)) > 1 {
+		u.stage.Beside = append(u.stage.Beside, "its gate is wired; what that does to the breakover voltage is not worked out")
+	}
+}
