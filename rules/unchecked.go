@@ -6,6 +6,7 @@ import (
 
 	"standoff/netlist"
 	"standoff/netlist/circuit"
+	"standoff/netlist/stage"
 	"standoff/rules/rule"
 )
 
@@ -36,6 +37,9 @@ func Unstaged(b *netlist.Board) []Unchecked {
 	anchors := map[*circuit.Element]bool{}
 	for _, a := range b.Accounts {
 		anchors[a.Stage.Anchor] = true
+		for _, e := range a.Stage.Parts[stage.CurrentSource] {
+			anchors[e] = true // told with the stage
+		}
 	}
 	for _, e := range b.Circuit.Elements {
 		if why := noStage(e); why != "" && !anchors[e] {
@@ -58,7 +62,7 @@ func noStage(e *circuit.Element) string {
 	case circuit.Triac:
 		return "gate stages of triacs are not worked out yet"
 	case circuit.SourceIC:
-		return "current-source circuits are not worked out yet"
+		return "it charges no stage that was recognised"
 	case circuit.Optotriac:
 		return "opto-triac stages are not worked out yet"
 	case circuit.Unknown:

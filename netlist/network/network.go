@@ -1,5 +1,6 @@
 // Package network holds the one dc solver of the project: resistors, ideal
-// sources and piecewise-linear diodes between numbered nodes. A network is
+// sources, piecewise-linear diodes and currents that follow theirs, between
+// numbered nodes. A network is
 // compiled once into an elimination order and then solved for as many sets of
 // values as wanted, without allocation. It knows no part names and no trade.
 package network
@@ -31,6 +32,7 @@ type branch struct {
 type Network struct {
 	nodes    int
 	branches []branch
+	follow   []follower
 }
 
 // Node adds a node.
@@ -60,6 +62,19 @@ func (n *Network) Current(from, to Node) Branch { return n.add(current, from, to
 // breakdown and breakdown slope are set on the Solver by SetDiode.
 func (n *Network) Diode(anode, cathode Node) Branch { return n.add(diode, anode, cathode) }
 
+// Follow adds a current that follows that of a diode: gain times as much flows out of
+// from, through the branch, into to. The gain is set on the Solver by SetGain. Two
+// diodes that each make a current follow are a bipolar transistor, straight in pieces.
+func (n *Network) Follow(d Branch, from, to Node) {
+	n.follow = append(n.follow, follower{d, from, to})
+}
+
+// follower is a current that follows a diode's.
+type follower struct {
+	diode    Branch
+	from, to Node
+}
+
 // LoopError says that ideal voltage sources form a loop.
 type LoopError struct{ Branch Branch }
 
@@ -78,7 +93,7 @@ type offset struct {
 // elimination. A loop of voltage sources is a LoopError: the source that closes
 // the loop is left out and the solver returned all the same.
 func (n *Network) Compile() (*Solver, error) {
-	s := &Solver{branches: n.branches, root: make([]int, n.nodes+1), offsets: make([][]offset, n.nodes+1)}
+	s := &Solver{branches: n.branches, follow: n.follow, root: make([]int, n.nodes+1), offsets: make([][]offset, n.nodes+1)}
 	err := s.tie(n)
 	s.number()
 	s.order()
@@ -167,8 +182,13 @@ func (s *Solver) order() {
 			continue
 		}
 		i, j := s.row[b.a], s.row[b.b]
-		if i >= 0 && j >= 0 && i != j {
-			neighbours[i][j], neighbours[j][i] = true, true
+		join(neighbours, i, j)
+	}
+	for _, f := range s.follow {
+		d := s.branches[f.diode]
+		for _, i := range [2]int{s.row[f.from], s.row[f.to]} {
+			join(neighbours, i, s.row[d.a])
+			join(neighbours, i, s.row[d.b])
 		}
 	}
 	position := make([]int, m)
@@ -203,6 +223,13 @@ func (s *Solver) order() {
 			s.touched[k] = append(s.touched[k], position[old])
 		}
 		sortInts(s.touched[k])
+	}
+}
+
+// join notes that two rows share an equation.
+func join(neighbours []map[int]bool, i, j int) {
+	if i >= 0 && j >= 0 && i != j {
+		neighbours[i][j], neighbours[j][i] = true, true
 	}
 }
 

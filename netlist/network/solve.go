@@ -12,6 +12,8 @@ type Solver struct {
 	Values []float64
 
 	branches []branch
+	follow   []follower
+	gains    []float64 // of the followers
 	root     []int
 	offsets  [][]offset
 	row      []int // row of a node, -1 where its potential is fixed
@@ -49,6 +51,7 @@ func (s *Solver) allocate() {
 	s.rhs = make([]float64, s.rows)
 	s.solution = make([]float64, s.rows)
 	s.shift = make([]float64, len(s.root))
+	s.gains = make([]float64, len(s.follow))
 	for i, b := range s.branches {
 		if b.kind == diode {
 			s.diodes = append(s.diodes, diodeState{branch: Branch(i), slope: 1, breakdown: math.Inf(1), breakdownSlope: 1})
@@ -69,6 +72,15 @@ func (s *Solver) SetDiode(b Branch, slope, breakdown, breakdownSlope float64) {
 	}
 }
 
+// SetGain sets what share of a diode's current its followers carry, 0 .. below 1.
+func (s *Solver) SetGain(d Branch, gain float64) {
+	for i := range s.follow {
+		if s.follow[i].diode == d && s.gains[i] != gain {
+			s.gains[i], s.solved = gain, s.solved[:0]
+		}
+	}
+}
+
 // IsFixed reports whether voltage sources alone set the node's potential.
 func (s *Solver) IsFixed(n Node) bool { return s.row[n] < 0 }
 
@@ -81,17 +93,34 @@ func (s *Solver) Solve() bool {
 	}
 	s.solved = s.solved[:0]
 	s.shifts()
-	for range 4 + 8*len(s.diodes) {
+	sweeps := 4 + 8*len(s.diodes)
+	for sweep := range sweeps + oneByOne*len(s.diodes) {
 		s.assemble()
 		s.factorise()
 		copy(s.solution, s.rhs)
 		s.substitute(s.solution)
-		if !s.flip() {
+		if !s.flip(sweep < sweeps) {
 			s.solved = append(s.solved, s.Values...)
 			return true
 		}
 	}
 	return len(s.diodes) == 0
+}
+
+// oneByOne is how many steps a diode is given where moving all of them at once goes
+// round in a circle: then only the first that disagrees moves (least-index
+// pivoting, which ends on any network without gain above one).
+const oneByOne = 32
+
+// SolveHeld solves for the present Values with every diode on the segment of the last
+// solution, whether it agrees or not.
+func (s *Solver) SolveHeld() {
+	s.solved = s.solved[:0]
+	s.shifts()
+	s.assemble()
+	s.factorise()
+	copy(s.solution, s.rhs)
+	s.substitute(s.solution)
 }
 
 // shifts works out how far each node lies above its root.
@@ -124,6 +153,32 @@ func (s *Solver) assemble() {
 	for _, d := range s.diodes {
 		g, e := d.line(s.Values[d.branch])
 		s.stamp(s.branches[d.branch], g, e)
+		for i, f := range s.follow {
+			if f.diode == d.branch {
+				s.stampFollower(f, s.gains[i]*g, e)
+			}
+		}
+	}
+}
+
+// stampFollower adds a current g (va - vb - e) of a diode's voltage that flows from
+// one node to another.
+func (s *Solver) stampFollower(f follower, g, e float64) {
+	d := s.branches[f.diode]
+	a, b := s.row[d.a], s.row[d.b]
+	inject := g * (s.shift[d.a] - s.shift[d.b] - e)
+	for k, i := range [2]int{s.row[f.from], s.row[f.to]} {
+		if i < 0 {
+			continue
+		}
+		sign := float64(1 - 2*k)
+		s.rhs[i] -= sign * inject
+		if a >= 0 {
+			s.matrix[i*s.rows+a] += sign * g
+		}
+		if b >= 0 {
+			s.matrix[i*s.rows+b] -= sign * g
+		}
 	}
 }
 
@@ -166,8 +221,10 @@ func (s *Solver) inject(n Node, amperes float64) {
 	}
 }
 
-// factorise eliminates in place; below the diagonal stay the factors. The
-// matrix is symmetric and positive, so no pivoting is needed.
+// factorise eliminates in place; below the diagonal stay the factors. Without
+// followers the matrix is symmetric and positive; with gains below one it is what
+// conductances make of it, and no pivoting is needed either (a test compares with a
+// general solver).
 func (s *Solver) factorise() {
 	m := s.rows
 	for k, list := range s.touched {
@@ -202,9 +259,10 @@ func (s *Solver) substitute(v []float64) {
 	}
 }
 
-// flip moves every diode to the segment its voltage asks for and reports
-// whether any moved. A conducting diode stays while its current is forward.
-func (s *Solver) flip() bool {
+// flip moves every diode (or only the first) to the segment its voltage asks for
+// and reports whether any moved. A conducting diode stays while its current is
+// forward.
+func (s *Solver) flip(all bool) bool {
 	moved := false
 	for i := range s.diodes {
 		d := &s.diodes[i]
@@ -219,6 +277,9 @@ func (s *Solver) flip() bool {
 		}
 		if segment != d.segment {
 			d.segment, moved = segment, true
+			if !all {
+				return true
+			}
 		}
 	}
 	return moved

@@ -45,11 +45,17 @@ type Hints struct {
 	Guides []int
 	// Guided lists the outputs that depend on a guide in that way.
 	Guided []int
-	// Gated lists outputs that are 0, infinite or undefined unless output Gate is
-	// great enough. Where they are so at the nominal point, nothing seems to move
-	// them: then what moves the gate is taken to move them too.
+	// Gated lists outputs of which some are 0, infinite or undefined unless output
+	// Gate is great enough. Where that is so at the nominal point, nothing seems to
+	// move them: then what moves the gate is taken to move them too.
 	Gated []int
 	Gate  int
+	// Corners is how many corners are tried besides, spread evenly by a fixed sequence:
+	// for outputs whose extremes lie on the far side of a saddle.
+	Corners int
+	// Grain is the relative change of an output below which a variable does not count
+	// as moving it; 0 means rounding.
+	Grain float64
 	// Kinked lists outputs whose best point has to be looked around for variables
 	// that move them only there.
 	Kinked []int
@@ -75,7 +81,7 @@ type Hints struct {
 // variables, not with 2 to its power.
 func Extremes(box []Variable, n int, f Function, hints Hints) []Extreme {
 	s := newSearch(box, n, f)
-	s.guides, s.one = hints.Guides, hints.One
+	s.guides, s.one, s.grain = hints.Guides, hints.One, max(hints.Grain, 1e-11)
 	for _, j := range hints.Guided {
 		s.guided[j] = true
 	}
@@ -92,13 +98,33 @@ func Extremes(box []Variable, n int, f Function, hints Hints) []Extreme {
 	for _, j := range hints.HighOnly {
 		s.best[2*j].idle = true
 	}
-	s.start()
+	s.start(hints.Corners)
 	for round := 0; round < maxRounds; round++ {
 		if !s.exploreAll() {
 			break
 		}
 	}
 	return s.extremes()
+}
+
+// scatter tries corners that a fixed sequence picks.
+func (s *search) scatter(count int) {
+	state := uint64(88172645463325252)
+	for range count {
+		for i, v := range s.box {
+			s.x[i] = v.Nominal
+		}
+		for _, i := range s.free { // xorshift (Marsaglia 2003)
+			state ^= state << 13
+			state ^= state >> 7
+			state ^= state << 17
+			s.x[i] = s.box[i].Low
+			if state>>32&1 == 1 {
+				s.x[i] = s.box[i].High
+			}
+		}
+		s.try()
+	}
 }
 
 // maxRounds bounds the search; boards seen so far need three.
@@ -153,6 +179,7 @@ type search struct {
 	alone   bool // the present exploration serves one output only
 	guided  []bool
 	kinked  []bool
+	grain   float64
 	gated   []int
 	gate    int
 	tried   map[uint64]bool // hashes of corners that were tried
@@ -240,7 +267,7 @@ func (b *best) set(v float64, x []float64) {
 // around each end of every pivot, and the corners that each output's
 // signs point to there. The signs at the ends matter: what a temperature
 // coefficient does depends on the side of the reference temperature.
-func (s *search) start() {
+func (s *search) start(scattered int) {
 	for i, v := range s.box {
 		s.x[i] = v.Nominal
 	}
@@ -257,6 +284,10 @@ func (s *search) start() {
 			s.corners(i, s.box[i].High)
 		}
 	}
+	s.scatter(scattered)
+	if shut != nil {
+		s.open(2*s.gate + 1)
+	}
 	for _, j := range shut {
 		own, gate := s.movesOf(2*j), s.movesOf(2*s.gate)
 		for i, m := range gate {
@@ -271,20 +302,35 @@ func (s *search) start() {
 	}
 }
 
-// shut lists the gated outputs that are degenerate at the nominal point, and has
-// them follow the gate.
+// shut lists the gated outputs where any of them is degenerate at the nominal
+// point, and has them follow the gate.
 func (s *search) shut() []int {
-	var list []int
-	for _, j := range s.gated {
-		if v := s.nominal[j]; v == 0 || v != v || math.IsInf(v, 0) {
-			list = append(list, j)
-			s.guided[j] = true
-		}
+	closed := slices.ContainsFunc(s.gated, func(j int) bool {
+		v := s.nominal[j]
+		return v == 0 || v != v || math.IsInf(v, 0)
+	})
+	if !closed {
+		return nil
 	}
-	if len(list) > 0 && !slices.Contains(s.guides, s.gate) {
+	for _, j := range s.gated {
+		s.guided[j] = true
+	}
+	if !slices.Contains(s.guides, s.gate) {
 		s.guides = append(slices.Clone(s.guides), s.gate)
 	}
-	return list
+	return s.gated
+}
+
+// open climbs to the best point of the gate; every output profits on the way.
+func (s *search) open(gate int) {
+	b := &s.best[gate]
+	for range maxRounds {
+		if b.explored || b.value != b.value {
+			return
+		}
+		b.explored, s.alone = true, false
+		s.explore(slices.Clone(b.at), gate)
+	}
 }
 
 // opened notes what moves an output around its best point, where a gate is open or
@@ -303,7 +349,7 @@ func (s *search) opened(b int) {
 		}
 		for _, end := range [2]float64{s.box[i].Low, s.box[i].High} {
 			s.x[i] = end
-			moved[i] = moved[i] || differ(s.tryAlone(b), here)
+			moved[i] = moved[i] || s.differ(s.tryAlone(b), here)
 		}
 		s.x[i] = at[i]
 	}
@@ -318,7 +364,7 @@ func (s *search) corners(fixed int, value float64) {
 	if fixed >= 0 {
 		s.x[fixed] = value
 	}
-	// sign[k*n+j] is the end of free variable k that makes output j greatest.
+	// sign[k*n+j] is how free variable k pushes output j.
 	sign := make([]int8, len(s.free)*s.n)
 	lowY := make([]float64, s.n)
 	for k, i := range s.free {
@@ -332,16 +378,10 @@ func (s *search) corners(fixed int, value float64) {
 		s.x[i] = v.High
 		s.try()
 		for j := range s.y {
-			if differ(s.y[j], lowY[j]) || fixed < 0 && differ(s.y[j], s.nominal[j]) {
+			if s.differ(s.y[j], lowY[j]) || fixed < 0 && s.differ(s.y[j], s.nominal[j]) {
 				s.moves[j*len(s.box)+i] = true
 			}
-			switch {
-			case !differ(s.y[j], lowY[j]):
-			case s.y[j] > lowY[j]:
-				sign[k*s.n+j] = 1
-			case s.y[j] < lowY[j]:
-				sign[k*s.n+j] = -1
-			}
+			sign[k*s.n+j] = s.push(lowY[j], s.y[j])
 		}
 		s.x[i] = v.Nominal
 	}
@@ -358,6 +398,25 @@ func (s *search) corners(fixed int, value float64) {
 	}
 }
 
+// push says which end of a variable makes an output greatest: 1 for the high, -1 for
+// the low one, 2 and -2 where it moves it by more than a thousandth, 0 for neither.
+func (s *search) push(low, high float64) int8 {
+	switch {
+	case !s.differ(low, high):
+		return 0
+	case math.Abs(high-low) <= 1e-3*math.Min(math.Abs(low), math.Abs(high)):
+		if high > low {
+			return 1
+		}
+		return -1
+	case high > low:
+		return 2
+	case high < low:
+		return -2
+	}
+	return 0
+}
+
 // influences notes which variables move which outputs around a corner of the
 // box: away from the nominal point other limits may bind.
 func (s *search) influences(base []float64, at, away func(Variable) float64) {
@@ -371,7 +430,7 @@ func (s *search) influences(base []float64, at, away func(Variable) float64) {
 		s.x[i] = away(v)
 		s.try()
 		for j := range s.y {
-			if differ(s.y[j], base[j]) {
+			if s.differ(s.y[j], base[j]) {
 				s.moves[j*len(s.box)+i] = true
 			}
 		}
@@ -379,25 +438,27 @@ func (s *search) influences(base []float64, at, away func(Variable) float64) {
 	}
 }
 
-// differ reports whether two values of an output differ by more than rounding.
-func differ(a, b float64) bool {
-	return a != b && !(math.Abs(a-b) <= 1e-11*math.Min(math.Abs(a), math.Abs(b)))
+// differ reports whether two values of an output differ by more than the grain.
+func (s *search) differ(a, b float64) bool {
+	return a != b && !(math.Abs(a-b) <= s.grain*math.Min(math.Abs(a), math.Abs(b)))
 }
 
 // corner tries the corner at which output j should be greatest (direction 1)
 // or least (direction -1), unless it was tried before. Variables that do not
-// move it stand where they suit the guide (if one is given).
+// move it, or hardly, stand where they suit the guide (if one is given).
 func (s *search) corner(sign []int8, j int, direction int8, fixed, guide int, toward int8) {
 	for k, i := range s.free {
 		v := s.box[i]
 		push := sign[k*s.n+j] * direction
-		if push == 0 && guide >= 0 {
-			push = sign[k*s.n+guide] * toward
+		if weak := push > -2 && push < 2; weak && guide >= 0 {
+			if g := sign[k*s.n+guide] * toward; g != 0 {
+				push = g
+			}
 		}
-		switch push {
-		case 1:
+		switch {
+		case push > 0:
 			s.x[i] = v.High
-		case -1:
+		case push < 0:
 			s.x[i] = v.Low
 		default:
 			if i != fixed {

@@ -28,6 +28,7 @@ type bench struct {
 	traits  []trait
 	ambient int // index of the ambient temperature
 	slots   map[*circuit.Element]slot
+	active  []*circuit.Element // transistors and regulators that a stage counts as its own
 	// ignoreTempco takes every board part as free of drift.
 	ignoreTempco bool
 }

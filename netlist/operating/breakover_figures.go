@@ -12,6 +12,7 @@ func (m *breakoverModel) figures() {
 		return fmt.Sprintf("feeding rail %s less the device's rail %s", show(s.upper, "V"), show(s.lower, "V"))
 	})
 	m.figure("capacitor_voltage_crest", "V", func() float64 { return s.reach }, m.reachWorking)
+	m.last().bent = m.charging.bends
 	m.figure("peak_voltage", "V", func() float64 { return s.vp }, func() string {
 		return fmt.Sprintf("V_BO = %s across the device", show(s.volts, "V"))
 	})
@@ -79,7 +80,7 @@ func (m *breakoverModel) limits() {
 			working: func() string { return "the device conducts in one direction only and stands the wrong way round" }})
 		return
 	}
-	m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min,
+	m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min, bent: m.charging.bends,
 		value: func() float64 { return s.reach - m.sign*s.standby }, limit: func() float64 { return s.volts }, working: m.reachWorking})
 	if m.line != nil {
 		s.ip, s.iv = math.NaN(), math.NaN() // the capacitor delivers I_BO, and every zero crossing lets go

@@ -66,6 +66,7 @@ func newBreakover(w *circuit.Wiring, s *stage.Stage) (*breakoverModel, error) {
 	m.direction()
 	m.figures()
 	m.limits()
+	m.bendsKink()
 	return m, nil
 }
 
@@ -179,6 +180,7 @@ func (m *breakoverModel) direction() {
 // at works the oscillator out at one point of the box.
 func (m *breakoverModel) at(x []float64) {
 	s, mesh := &m.s, m.standing
+	m.point = x
 	mesh.polarity = 1
 	mesh.load(x)
 	m.charging.draw(0)
@@ -222,7 +224,7 @@ func (m *breakoverModel) direct() {
 	p := m.charging.tangent(peak)
 	s.vth, s.rth = p.vth, p.rth
 	s.atPeak = m.sign * p.current(peak)
-	s.atValley = m.sign * m.charging.current(valley)
+	s.atValley = m.sign * m.sourceAtBothEnds(valley)
 	s.fires = s.atPeak > 0 && !m.blocked
 	signed := s.cycle
 	signed.vp, signed.vv, signed.atPeak = m.sign*s.vp, m.sign*s.vv, m.sign*s.atPeak
@@ -231,5 +233,6 @@ func (m *breakoverModel) direct() {
 		return
 	}
 	s.charge, s.ramp = m.charging.time(&signed)
+	s.ramp = straight(s.ramp)
 	s.period = s.charge + s.discharge
 }

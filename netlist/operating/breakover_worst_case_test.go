@@ -41,4 +41,6 @@ func randomBreakover(seed uint64) string {
 }
 
 // The same for breakover oscillators.
-func TestNoSampledBreakoverBoardLiesOutsideTheBounds(t *testing.T) { sampleStages(t, randomBreakover) }
+func TestNoSampledBreakoverBoardLiesOutsideTheBounds(t *testing.T) {
+	sampleStages(t, randomBreakover, 2500)
+}

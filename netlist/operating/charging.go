@@ -22,20 +22,65 @@ type charging struct {
 	probe    network.Branch // the current into the capacitor
 	transfer []float64      // rise of every node for 1 A into the capacitor's net
 	bends    bool           // diodes or transistors stand in the network
+	watched  *regulated     // a current source, nil for none
+	held     float64        // the voltage at which the net was seized last, NaN for none
+	across   float64        // what stood across it when the net was seized last
+	grip     network.Branch // what holds the capacitor's net at a voltage, in a network that bends
 }
 
 // newCharging adds the probe to a mesh that is not compiled yet.
 func newCharging(m *mesh, capacitor circuit.NodeID) *charging {
-	c := &charging{mesh: m, node: m.node(capacitor), bends: m.bends}
+	c := &charging{mesh: m, node: m.node(capacitor), bends: m.bends, held: math.NaN()}
 	c.probe = m.net.Current(c.node, 0)
+	if c.bends {
+		c.grip = m.net.Resistor(c.node, 0)
+	}
 	return c
 }
 
+// gripOhms is the resistance in ohm behind which the capacitor's net is held, and
+// noGrip lets go of it.
+const gripOhms = 1
+
+var noGrip = math.Inf(1)
+
 // draw solves the network with a current flowing into the capacitor.
 func (c *charging) draw(amperes float64) {
-	c.mesh.solver.Values[c.probe] = amperes
-	c.mesh.solver.Solve()
-	c.mesh.solver.Transfer(c.node, c.transfer)
+	solver := c.mesh.solver
+	solver.Values[c.probe] = amperes
+	c.held = math.NaN()
+	if c.bends {
+		solver.Values[c.grip] = noGrip
+	}
+	solver.Solve()
+	solver.Transfer(c.node, c.transfer)
+}
+
+// seize solves the network with the capacitor's net held at a voltage, and leaves it
+// solved on the straight piece that counts there.
+func (c *charging) seize(volts float64) {
+	if volts == c.held {
+		return
+	}
+	solver := c.mesh.solver
+	solver.Values[c.grip] = gripOhms
+	amperes := 0.0
+	for range 4 {
+		solver.Values[c.probe] = amperes - volts/gripOhms
+		solver.Solve()
+		miss := volts - solver.Voltage(c.node)
+		amperes -= miss / gripOhms
+		if math.Abs(miss) <= 1e-9*(1+math.Abs(volts)) {
+			break
+		}
+	}
+	if c.watched != nil { // let go, the net of an ideal source hangs on its last digits
+		c.across = c.mesh.across(c.watched)
+	}
+	c.held = volts
+	solver.Values[c.probe], solver.Values[c.grip] = amperes, noGrip
+	solver.SolveHeld()
+	solver.Transfer(c.node, c.transfer)
 }
 
 // thevenin returns the straight piece of the last solution: the voltage at which
@@ -57,28 +102,26 @@ const maxPieces = 40
 // on a straight piece: condition reads the last solution and returns voltage and
 // current where it would hold on that piece. The network is left solved there.
 func (c *charging) meet(condition func() (volts, amperes float64)) float64 {
-	volts, amperes := condition()
+	volts, _ := condition()
 	if !c.bends {
 		return volts
 	}
-	drawn := c.mesh.solver.Values[c.probe]
 	for range maxPieces {
-		if math.Abs(amperes-drawn) <= 1e-9*math.Abs(amperes)+1e-15 {
+		c.seize(volts)
+		next, _ := condition()
+		if math.Abs(next-volts) <= 1e-9*(1+math.Abs(volts)) {
 			break
 		}
-		drawn = amperes
-		c.draw(drawn)
-		volts, amperes = condition()
+		volts = next
 	}
 	return volts
 }
 
 // tangent returns the straight piece at a capacitor voltage.
 func (c *charging) tangent(volts float64) piece {
-	c.meet(func() (float64, float64) {
-		vth, rth := c.thevenin()
-		return volts, (vth - volts) / rth
-	})
+	if c.bends {
+		c.seize(volts)
+	}
 	vth, rth := c.thevenin()
 	return piece{vth, rth}
 }

@@ -148,8 +148,8 @@ func frequencyTarget(frequency, period *quantity.Spread) *quantity.Spread {
 func (a *Account) baseTwo(m *ujtModel) {
 	a.Facts["base-two-missing"] = len(m.stage.Parts[stage.BaseTwo]) == 0
 	d := drifting{&m.model, m.frequency}
-	if m.v.tc < 0 || d.span() == 0 || m.interbase() <= 0 {
-		return
+	if m.v.tc < 0 || d.span() == 0 || m.interbase() <= 0 || m.charging.bends {
+		return // the drift of diodes and transistors that charge is not the bar's
 	}
 	m.ignoreTempco = true
 	x := m.nominal()

@@ -2,6 +2,8 @@ package operating
 
 import (
 	"fmt"
+	"math"
+	"slices"
 
 	"standoff/netlist/circuit"
 	"standoff/netlist/network"
@@ -20,6 +22,8 @@ type mesh struct {
 	polarity float64 // +1 or -1: which crest
 	bends    bool    // diodes stand in it: straight only in pieces
 	sines    []*circuit.Element
+	shapes   []shape
+	sources  []*regulated // current sources in it
 	there    []float64
 	back     []float64
 }
@@ -31,8 +35,10 @@ type meshBranch struct {
 	kind   circuit.Kind
 	fixed  float64 // added to the value: the offset of a sine source
 	sine   bool
-	drift  float64 // V/K of a diode threshold
-	zener  int     // variable of the breakdown voltage, -1 for none
+	drift  float64                   // V/K of a diode threshold
+	zener  int                       // variable of the breakdown voltage, -1 for none
+	gain   int                       // variable of a current gain, 0 for none
+	set    func(x []float64) float64 // works the value out, nil where the slot gives it
 }
 
 // diodeSlope is the slope resistance of a conducting diode in ohm: a silicon
@@ -60,14 +66,35 @@ func newCrestMesh(b *bench, starts []circuit.NodeID, leaveOut func(*circuit.Elem
 func fillMesh(m *mesh, b *bench, starts []circuit.NodeID, leaveOut func(*circuit.Element) bool) (*mesh, error) {
 	*m = mesh{crest: m.crest, polarity: m.polarity, bench: b, nodes: map[circuit.NodeID]network.Node{}, have: map[*circuit.Element]bool{}}
 	area := b.w.Walk(starts, func(e *circuit.Element) bool {
-		return isMeshElement(e) && (leaveOut == nil || !leaveOut(e))
+		return isMeshElement(e) && !b.inside(e) && (leaveOut == nil || !leaveOut(e))
 	}, b.w.IsFixed)
+	// Transistors that a stage counts as its own lead on to what hangs on them.
+	for more := true; more; {
+		more = false
+		for _, e := range b.active {
+			if b.touches(e, area) && !b.within(e, area) {
+				starts, more = append(slices.Clone(starts), b.ends(e)...), true
+			}
+		}
+		if more {
+			area = b.w.Walk(starts, func(e *circuit.Element) bool {
+				return isMeshElement(e) && !b.inside(e) && (leaveOut == nil || !leaveOut(e))
+			}, b.w.IsFixed)
+		}
+	}
 	if len(area.Elements) > maxMesh {
 		return nil, fmt.Errorf("the network around it has more than %d parts", maxMesh)
 	}
 	for _, n := range area.Nets {
 		if err := m.take(n); err != nil {
 			return nil, err
+		}
+	}
+	for _, e := range b.active {
+		if b.touches(e, area) {
+			if err := m.active(e); err != nil {
+				return nil, err
+			}
 		}
 	}
 	for _, e := range area.Elements {
@@ -206,7 +233,16 @@ func (m *mesh) compile() error {
 	if err != nil {
 		return fmt.Errorf("voltage sources form a loop")
 	}
+	for _, s := range m.shapes {
+		m.solver.SetDiode(s.branch, s.slope, math.Inf(1), 1)
+	}
 	return nil
+}
+
+// shape is the slope of a diode that is no diode of the board.
+type shape struct {
+	branch network.Branch
+	slope  float64
 }
 
 // load sets every branch of the solver to its value at a point.
@@ -215,8 +251,13 @@ func (m *mesh) load(x []float64) {
 	for i := range m.branches {
 		mb := &m.branches[i]
 		v := 0.0
-		if mb.slot.index >= 0 {
+		if mb.set != nil {
+			v = mb.set(x)
+		} else if mb.slot.index >= 0 {
 			v = m.bench.value(mb.slot, x) + mb.drift*heat
+		}
+		if mb.gain > 0 {
+			m.solver.SetGain(mb.branch, x[mb.gain]/(1+x[mb.gain]))
 		}
 		if mb.sine {
 			v = m.polarity*v + mb.fixed

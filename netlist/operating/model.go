@@ -16,6 +16,8 @@ type model struct {
 	evaluate func(x []float64)
 	outputs  []output
 	contests []contest
+	grain    float64 // relative change that counts as none
+	scatter  int     // corners to try besides
 }
 
 // output is one figure to be.
@@ -160,7 +162,7 @@ func slackOf(bent bool) float64 {
 
 // search looks for the extremes over the box.
 func (m *model) search(list []sought) []numeric.Extreme {
-	hints := numeric.Hints{One: func(x []float64, j int) float64 {
+	hints := numeric.Hints{Grain: m.grain, Corners: m.scatter, One: func(x []float64, j int) float64 {
 		m.evaluate(x)
 		return list[j].of()
 	}}

@@ -37,6 +37,7 @@ func (m *putModel) figures() {
 	m.figure("discharge_peak_current", "A", m.surge, m.surgeWorking)
 	m.figure("capacitor_energy", "J", m.energy, func() string { return "C V_P^2/2" })
 	m.figure("device_power", "W", m.power, func() string { return "C (V_P^2 - V_V^2) f/2, an upper bound: part of it goes into resistors" })
+	m.last().gated = true
 	m.last().bent = true // a higher peak stores more energy and comes less often
 }
 

@@ -101,6 +101,7 @@ func newPUT(w *circuit.Wiring, s *stage.Stage) (*putModel, error) {
 	m.figures()
 	m.limits()
 	m.guideByGate()
+	m.bendsKink()
 	return m, nil
 }
 
@@ -269,6 +270,7 @@ func (p *points) beyond(ohms float64) bool {
 // at works the oscillator out at one point of the box.
 func (m *putModel) at(x []float64) {
 	s, n, mesh := &m.s, &m.at0, m.standing
+	m.point = x
 	s.heat = x[m.ambient] - 25
 	mesh.load(x)
 	m.charging.draw(0)
@@ -289,7 +291,7 @@ func (m *putModel) at(x []float64) {
 	m.valley = x[m.vv]
 	s.vv = min(m.valley, 0.9*s.vp) // a valley above the peak is no valley
 	s.atPeak = (s.vth - peak) / s.rth
-	s.atValley = m.charging.current(s.lower + s.vv)
+	s.atValley = m.sourceAtBothEnds(s.lower + s.vv)
 	s.fires = s.atPeak > 0 && s.vp > 0
 	s.ip, s.iv = m.ip.value(x, s.ohms, true), m.iv.value(x, s.ohms, false)
 	s.c = m.caps.farads(x)

@@ -54,4 +54,4 @@ func randomPUT(seed uint64) string {
 }
 
 // The same for programmable oscillators.
-func TestNoSampledPUTBoardLiesOutsideTheBounds(t *testing.T) { sampleStages(t, randomPUT) }
+func TestNoSampledPUTBoardLiesOutsideTheBounds(t *testing.T) { sampleStages(t, randomPUT, 2500) }

@@ -3,6 +3,7 @@ package operating
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"standoff/netlist/circuit"
 	"standoff/netlist/network"
@@ -31,9 +32,13 @@ type relaxation struct {
 	// bentWindow says that the valley side of the window bends too.
 	bentWindow bool
 
+	source     *regulated // the current source on the capacitor, nil where none is
+	room, most float64    // voltage across it at the peak and at the valley
+
 	// What a gate stage wants to know of its driver.
 	outlet       circuit.NodeID     // where the pulse comes out
 	keepOff      []*circuit.Element // what the pulse does not flow through
+	point        []float64          // the point that was evaluated last
 	share        int                // variable of the on-resistance
 	pulseFarads  float64            // least capacitor with which the maker specifies the pulse; 0 for any
 	quietWorking func() string      // where the voltage before the pulse comes from
@@ -57,7 +62,9 @@ type cycle struct {
 
 // newRelaxation starts a model.
 func newRelaxation(w *circuit.Wiring, s *stage.Stage) relaxation {
-	return relaxation{stage: s, ratings: s.Anchor.Ratings, model: model{bench: newBench(w)}, share: -1}
+	m := relaxation{stage: s, ratings: s.Anchor.Ratings, model: model{bench: newBench(w)}, share: -1}
+	m.active = activeParts(s)
+	return m
 }
 
 // newDriver builds the model of whatever fires a gate.
@@ -96,7 +103,22 @@ func (m *relaxation) readyToCharge(capacitor circuit.NodeID) error {
 		return err
 	}
 	m.charging.transfer = make([]float64, m.standing.solver.Nodes())
+	for _, r := range m.standing.sources {
+		own := contains(m.stage.Parts[stage.CurrentSource], r.element)
+		if own && m.source == nil && (r.high == m.charging.node || r.low == m.charging.node) {
+			m.source, m.charging.watched = r, r
+		}
+	}
 	return nil
+}
+
+// sourceAtBothEnds returns the charging current at the valley and notes what stands across a
+// current source at both ends of the ramp; the network stands at the peak.
+func (m *relaxation) sourceAtBothEnds(valley float64) (amperes float64) {
+	m.room = m.charging.across
+	amperes = m.charging.current(valley)
+	m.most = m.charging.across
+	return amperes
 }
 
 // capacitors readies the capacitor network at its net.
@@ -152,7 +174,73 @@ func (m *relaxation) fill() {
 		return
 	}
 	s.charge, s.ramp = m.charging.time(s)
+	s.ramp = straight(s.ramp)
 	s.period = s.charge + s.discharge
+}
+
+// bendsKink has everything looked around for variables that move it only far from
+// the nominal board, where the charging network bends, and guided by the voltage
+// across a current source: it hides what moves the charging current elsewhere.
+func (m *relaxation) bendsKink() {
+	if !m.charging.bends {
+		return
+	}
+	m.grain = 1e-7 // an ideal source has 1 Tohm here
+	if m.source != nil {
+		m.scatter = scattered
+	}
+	turns := m.source != nil // more current leaves less room for it: the best lies between
+	for _, r := range m.standing.sources {
+		m.turnsInside(r)
+	}
+	for i := range m.outputs {
+		o := &m.outputs[i]
+		o.bent = o.bent || turns
+		o.kinked, o.guide = true, o.guide || o.name == "current_source_voltage"
+		o.guided = o.guided || !o.guide
+	}
+	for i := range m.contests {
+		c := &m.contests[i]
+		c.bent = c.bent || turns
+		c.kinked, c.guided = true, true
+	}
+}
+
+// turnsInside has what sets a current source looked at between its ends.
+func (m *relaxation) turnsInside(r *regulated) {
+	if m.source == nil {
+		return
+	}
+	for i := range m.traits {
+		if strings.HasSuffix(m.traits[i].name, " of "+r.element.Designator) {
+			m.box[i].Bends = true
+		}
+	}
+	for _, role := range [...]stage.Role{stage.CurrentSource, stage.TimingResistor} {
+		for _, e := range m.stage.Parts[role] {
+			if s, known := m.slots[e]; known {
+				m.box[s.index].Bends = true
+			}
+			for i := range m.traits {
+				if m.traits[i].name == "bv of "+e.Designator {
+					m.box[i].Bends = true
+				}
+			}
+		}
+	}
+}
+
+// scattered is how many corners of a stage with a current source are tried besides:
+// it saturates on some boards, and what is worst lies beyond.
+const scattered = 256
+
+// straight takes a departure of less than a millionth for none: it is below what the
+// arithmetic resolves.
+func straight(departure float64) float64 {
+	if departure < 1e-6 {
+		return 0
+	}
+	return departure
 }
 
 func (m *relaxation) frequency() float64 { return 1 / m.cycle.period }
@@ -169,7 +257,8 @@ func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 	m.figure("charging_current_at_valley", "A", func() float64 { return s.atValley }, m.valleyWorking)
 	m.figure("valley_current_available", "A", func() float64 { return s.iv }, valleyWorking)
 	m.last().guided = true
-	if len(m.stage.Parts[stage.TimingResistor]) > 0 {
+	m.evaluate(m.nominal())
+	if len(m.stage.Parts[stage.TimingResistor]) > 0 && s.rth < noPath && m.source == nil {
 		m.figure("timing_resistance", "ohm", func() float64 { return s.rth }, func() string {
 			return "resistance of the charging network as the capacitor sees it"
 		})
@@ -184,6 +273,9 @@ func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 		m.last().guided = true
 		m.last().bent = true // a higher peak voltage may come with a lower peak current
 	}
+	if m.source != nil {
+		m.figure("current_source_voltage", "V", func() float64 { return m.room }, m.sourceWorking)
+	}
 	m.figure("timing_capacitance", "F", func() float64 { return s.c }, func() string {
 		return "all capacitors from the " + m.terminal + " to the rails"
 	})
@@ -191,6 +283,9 @@ func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 
 func (m *relaxation) peakWorking() string {
 	s := m.cycle
+	if s.rth > noPath {
+		return show(s.atPeak, "A") + " from the charging network at V_P = " + show(s.vp, "V")
+	}
 	return fmt.Sprintf("(V_th - V_P)/R_th = (%s - %s)/%s = %s", show(s.vth-s.lower, "V"), show(s.vp, "V"),
 		show(s.rth, "ohm"), show(s.atPeak, "A"))
 }
@@ -202,6 +297,43 @@ func (m *relaxation) valleyWorking() string {
 	}
 	return fmt.Sprintf("(V_th - V_V)/R_th = (%s - %s)/%s = %s", show(s.vth-s.lower, "V"), show(s.vv, "V"),
 		show(s.rth, "ohm"), show(s.atValley, "A"))
+}
+
+func (m *relaxation) sourceWorking() string {
+	return fmt.Sprintf("across %s at the peak; %s at the valley", m.source.element.Designator, show(m.most, "V"))
+}
+
+// sourceLimits hold a current source against the range in which it is one.
+func (m *relaxation) sourceLimits(x func() []float64) {
+	r := m.source
+	if r == nil {
+		return
+	}
+	because := ""
+	if r.assumed {
+		because = "the least voltage across " + r.element.Designator + " is assumed"
+	}
+	working := m.sourceWorking
+	add := func(name, limitName, unit string, bound Bound, value, limit func() float64) {
+		m.compare(contest{name: name, limitName: limitName, unit: unit, bound: bound, value: value, limit: limit,
+			because: because, limitMark: r.mark, working: working})
+	}
+	add("current_source_voltage", "least_voltage", "V", Min, func() float64 { return m.room }, func() float64 { return r.least(x()) })
+	if !math.IsInf(r.greatest, 1) {
+		because = ""
+		add("current_source_voltage_greatest", "v_max", "V", Max, func() float64 { return max(m.room, m.most) }, func() float64 { return r.greatest })
+	}
+	if r.amperes == nil {
+		return
+	}
+	set := func() float64 { return r.amperes(x()) }
+	working = func() string { return "the current that " + r.element.Designator + " is set to" }
+	if r.from > 0 {
+		add("current_source_least", "i_min", "A", Min, set, func() float64 { return r.from })
+	}
+	if !math.IsInf(r.upTo, 1) {
+		add("current_source_greatest", "i_max", "A", Max, set, func() float64 { return r.upTo })
+	}
 }
 
 // windowLimits hold the charging current against what the device asks for at the
@@ -222,6 +354,7 @@ func (m *relaxation) windowLimits(peakBecause, valleyBecause string) {
 		m.compare(contest{name: "charging_current_at_valley", limitName: "valley_current_available", unit: "A", bound: Max, guided: true,
 			value: func() float64 { return s.atValley }, limit: func() float64 { return s.iv }, bent: m.bentWindow, because: valleyBecause, working: m.valleyWorking})
 	}
+	m.sourceLimits(func() []float64 { return m.point })
 	m.compare(contest{name: "timing_capacitance", limitName: "habit", unit: "F", bound: Min, habit: true,
 		value: func() float64 { return s.c }, limit: func() float64 { return 100e-12 },
 		working: func() string { return "least capacitance at the " + m.terminal }})

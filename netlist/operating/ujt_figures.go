@@ -66,10 +66,12 @@ func (m *ujtModel) loadFigures() {
 	m.figure("emitter_current_rms", "A", m.rms, func() string {
 		return "I_pk sqrt(tau/(2 T)) of the exponential pulse"
 	})
+	m.last().gated = true
 	m.last().bent = true // a higher peak makes a larger pulse, and a rarer one
 	m.figure("interbase_power", "W", m.barPower, func() string {
 		return fmt.Sprintf("V_BB^2/R_BB + C V_P^2 f/2 = %s^2/%s + the emitter's share", show(m.interbase(), "V"), show(s.rbb, "ohm"))
 	})
+	m.last().gated = true
 	m.last().bent = true // a higher peak stores more energy and comes less often
 	if _, _, ok := m.ratings.Limit("pd"); ok {
 		m.figure("interbase_power_allowed", "W", m.powerAllowed, func() string {

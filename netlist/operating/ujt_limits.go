@@ -72,7 +72,7 @@ func (m *ujtModel) emitterLimits() {
 		}
 	}
 	if limit, mark, ok := m.rated("ie_rms"); ok {
-		m.compare(contest{name: "emitter_current_rms", limitName: "ie_rms", unit: "A", bound: Max, bent: true, value: m.rms,
+		m.compare(contest{name: "emitter_current_rms", limitName: "ie_rms", unit: "A", bound: Max, bent: true, gated: true, value: m.rms,
 			limit: limit, limitMark: mark, working: func() string { return "I_pk sqrt(tau/(2 T))" }})
 	}
 	if limit, mark, ok := m.rated("vb2e"); ok {
@@ -107,7 +107,7 @@ func (m *ujtModel) barLimits() {
 		limit: func() float64 { return low }, limitMark: lowMark, working: working})
 	if _, mark, ok := m.ratings.Limit("pd"); ok {
 		m.compare(contest{name: "interbase_power", limitName: "interbase_power_allowed", unit: "W", bound: Max,
-			value: m.barPower, limit: m.powerAllowed, limitMark: mark, bent: true, working: func() string {
+			value: m.barPower, limit: m.powerAllowed, limitMark: mark, bent: true, gated: true, working: func() string {
 				return fmt.Sprintf("V_BB^2/R_BB + C V_P^2 f/2 at R_BB = %s", show(m.s.rbb, "ohm"))
 			}})
 	}

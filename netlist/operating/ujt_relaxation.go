@@ -99,6 +99,7 @@ func newUJT(w *circuit.Wiring, s *stage.Stage) (*ujtModel, error) {
 	}
 	m.figures()
 	m.limits()
+	m.bendsKink()
 	return m, nil
 }
 
@@ -239,6 +240,7 @@ func contains(list []*circuit.Element, e *circuit.Element) bool {
 // at works the oscillator out at one point of the box.
 func (m *ujtModel) at(x []float64) {
 	s := &m.s
+	m.point = x
 	s.heat = x[m.ambient] - 25
 	s.eta = x[m.v.eta]
 	s.rbb = x[m.v.rbb]
@@ -283,7 +285,7 @@ func (m *ujtModel) solveStanding(x []float64) {
 	// then is too high for this supply.
 	s.vv = min(x[m.v.vv], 0.9*s.vp)
 	s.atPeak = (s.vth - peak) / s.rth
-	s.atValley = m.charging.current(s.lower + s.vv)
+	s.atValley = m.sourceAtBothEnds(s.lower + s.vv)
 	s.fires = s.atPeak > 0
 }
 

@@ -68,7 +68,7 @@ func (u *breakoverReading) rails() string {
 	}
 	u.lowerVolts, u.lowerVoltsKnown = u.w.Potential(u.lower)
 	found, most := false, 0.0
-	for _, n := range u.atNode.Nets {
+	for _, n := range append(slices.Clone(u.atNode.Nets), u.sourceNets(stop)...) {
 		if !u.w.IsFixed(n) || n == u.lower {
 			continue
 		}
@@ -86,6 +86,27 @@ func (u *breakoverReading) rails() string {
 	}
 	u.stage.Nodes["upper"], u.stage.Nodes["lower"] = u.upper, u.lower
 	return ""
+}
+
+// sourceNets lists the nets that transistors and regulators on the capacitor lead
+// to.
+func (u *breakoverReading) sourceNets(stop func(circuit.NodeID) bool) []circuit.NodeID {
+	var list []circuit.NodeID
+	for _, p := range u.w.On(u.node) {
+		var ends []circuit.NodeID
+		if emitter, ok := p.Element.Pin("emitter"); ok && p.Element != u.stage.Anchor {
+			ends = append(ends, emitter)
+		}
+		if high, low, _, ok := RegulatorEnds(u.w, p.Element); ok {
+			ends = append(ends, high, low)
+		}
+		for _, n := range ends {
+			if n = u.w.Net(n); n != u.node {
+				list = append(list, u.w.Walk([]circuit.NodeID{n}, carriesDC, stop).Nets...)
+			}
+		}
+	}
+	return list
 }
 
 // fed turns away what is timed from the line through a thyristor's own load: that

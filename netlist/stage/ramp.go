@@ -205,7 +205,7 @@ func (u *rampReading) charging() string {
 	})
 	ends := func(n circuit.NodeID) bool { return n == u.node || u.isRail(n) || n == u.control || n == u.outlet }
 	list := prune(u.w, area.Elements, ends)
-	fed := false
+	fed := u.sources()
 	for _, e := range list {
 		for _, n := range e.Nodes {
 			if n = u.w.Net(n); n != u.node && n != u.lower && ends(n) && n != u.outlet {
@@ -260,6 +260,14 @@ func (u *rampReading) beside() {
 	}
 }
 
+// isClamp reports whether a transistor lies with its collector on the capacitor: it
+// is told already.
+func (u *rampReading) isClamp(e *circuit.Element) bool {
+	collector, ok := e.Pin("collector")
+	emitter, _ := e.Pin("emitter")
+	return ok && u.w.Net(collector) == u.node && !u.leadsAway(emitter)
+}
+
 // strangers returns the parts on the inner nets of an area that no walk follows.
 func (u *rampReading) strangers(area *circuit.Area, outside func(circuit.NodeID) bool) []*circuit.Element {
 	var list []*circuit.Element
@@ -270,7 +278,7 @@ func (u *rampReading) strangers(area *circuit.Area, outside func(circuit.NodeID)
 		for _, p := range u.w.On(n) {
 			e := p.Element
 			thyristor := e.Kind == circuit.SCR // its gate stage tells
-			if e == u.stage.Anchor || carriesDC(e) || e.Kind == circuit.Capacitor || thyristor || slices.Contains(list, e) {
+			if e == u.stage.Anchor || u.isSource(e) || u.isClamp(e) || carriesDC(e) || e.Kind == circuit.Capacitor || thyristor || slices.Contains(list, e) {
 				continue
 			}
 			list = append(list, e)

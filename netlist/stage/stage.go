@@ -73,6 +73,9 @@ type Stage struct {
 	Nodes map[string]circuit.NodeID
 	// Gap says why the stage could not be recognised in full; "" where it was.
 	Gap string
+	// Clamps lists transistors that can hold the timing capacitor down and whose base
+	// dc on the board sets.
+	Clamps []*circuit.Element
 	// Beside lists what hangs on the stage and is not worked out, in words.
 	Beside []string
 	// Order is set where terminal order and wiring do not agree.

@@ -15,7 +15,7 @@ func Rules() []*rule.Rule {
 		currentBelowPeak, currentAboveValley, capacitorSmall, capacitorLarge, capacitorLeak,
 		emitterSurge, emitterRMS, emitterReverse, baseTwoMissing, baseTwoOff, baseOneMissing,
 		frequencyOffTarget, frequencyDrift, interbaseHigh, interbaseLow, interbaseDissipation,
-		putGateDivider, putGateVoltage, breakoverNotReached,
+		putGateDivider, putGateVoltage, breakoverNotReached, sourceCompliance,
 	}
 }
 
