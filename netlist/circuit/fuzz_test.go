@@ -62,3 +62,47 @@ func hangsTogether(t *testing.T, e *circuit.Element) {
 		t.Errorf("%s has no kind", e.Designator)
 	}
 }
+
+// Whatever the expression, a resistor gets a finite value or the board a problem at
+// its place.
+func FuzzExpression(f *testing.F) {
+	for _, seed := range []string{"1k*2", "2**3^-1", "sin(p)/q", "p>1?2:3", "max(1,min(2,p))", "if(p,1,2)", "-(-(-1))", "1/0", "sqrt(-1)",
+		"((((((1))))))", "p&&q||!p", "1e308*1e308", "table(p,0,0,1,1)", "pwr(2,3)", "p p", "1meg+1m", "limit(p,0,1)", "", "gauss(1,2,3)", "q{p}", "0x1", "é"} {
+		f.Add(seed)
+	}
+	f.Fuzz(func(t *testing.T, text string) {
+		for _, quoted := range []string{"{" + text + "}", "'" + text + "'", "\"" + text + "\""} {
+			file := source.New("t.cir", "title\n.param p=2 q={p+1}\nR1 a 0 "+quoted+"\nR2 a 0 r={"+text+"}\n.param s={"+text+"}\n")
+			c, problems := circuit.Build(syntax.Parse(file, true), circuit.Options{})
+			for _, p := range problems {
+				if at := p.Span; at.File == nil || at.Start < 0 || at.Start > at.End || int(at.End) > len(at.File.Text) {
+					t.Errorf("%q has no place: %v", p.Message, at)
+				}
+			}
+			for _, e := range c.Elements {
+				hangsTogether(t, e)
+			}
+		}
+	})
+}
+
+// Whatever stands on an intent line, it is taken or told at its place.
+func FuzzIntent(f *testing.F) {
+	for _, seed := range []string{"R1 tol=5% power=0.25 travel=1..10k", "all C tol=10% kind=film", "board ambient=-20..70 mains=207..253 line=50",
+		"waive node-dangling R1: a reason", "waive x", "C1 volts=25 leak=1u tempco=-30", "V1 range=10..12", "Q1 part=2N2646 pins=b2,e,b1 period=1..2",
+		"X1.R1 tol=1", "R1 tol=", "R1 tol=1..", "R1 = 3", "all", "all Z tol=1", "board", "R1 tol=1% tol=2%", "é x=1", "R1 travel=10..1", "Q1 frequency=1e999..2"} {
+		f.Add(seed)
+	}
+	f.Fuzz(func(t *testing.T, text string) {
+		file := source.New("t.cir", "title\nR1 a 0 1k\nC1 a 0 1u\nV1 a 0 5\nXQ1 a 0 a 2N2646\n*> "+text+"\n")
+		c, problems := circuit.Build(syntax.Parse(file, true), circuit.Options{})
+		for _, p := range problems {
+			if at := p.Span; at.File == nil || at.Start < 0 || at.Start > at.End || int(at.End) > len(at.File.Text) {
+				t.Errorf("%q has no place: %v", p.Message, at)
+			}
+		}
+		for _, e := range c.Elements {
+			hangsTogether(t, e)
+		}
+	})
+}
