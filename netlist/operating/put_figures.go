@@ -3,8 +3,6 @@ package operating
 import (
 	"fmt"
 	"math"
-
-	"standoff/netlist/part"
 )
 
 // figures lists what a worksheet shows of the oscillator.
@@ -29,7 +27,11 @@ func (m *putModel) figures() {
 	m.figure("valley_voltage", "V", func() float64 { return s.vv }, func() string {
 		return "anode voltage at which the discharge ends"
 	})
-	m.windowFigures(func() string { return m.carried("I_P", &m.ip) }, func() string { return m.carried("I_V", &m.iv) })
+	if m.pair != nil {
+		m.windowFigures(func() string { return m.pair.working("peak") }, func() string { return m.pair.working("valley") })
+	} else {
+		m.windowFigures(func() string { return m.carried("I_P", &m.ip) }, func() string { return m.carried("I_V", &m.iv) })
+	}
 	m.timeFigures("T = R_th C ln((V_th - V_V)/(V_th - V_P)) + (R_on + R_K + R_A) C ln(V_P/V_V)")
 	m.figure("cathode_standby_voltage", "V", func() float64 { return s.standby }, func() string {
 		return "cathode over the lower rail before the pulse"
@@ -81,6 +83,12 @@ func (m *putModel) power() float64 {
 
 // limits lists the comparisons. The nominal board was evaluated last.
 func (m *putModel) limits() {
+	if m.pair != nil {
+		m.windowLimits("", "")
+		m.dividerLimits()
+		m.targetLimits()
+		return
+	}
 	ip, iv := m.verdictOn(&m.ip, "peak"), m.verdictOn(&m.iv, "valley")
 	if !m.promises(&m.iv) {
 		m.iv = points{} // nothing is promised there
@@ -127,7 +135,7 @@ func (m *putModel) dividerLimits() {
 			low, high = min(low, r), max(high, r)
 		}
 	}
-	if m.ratings.Kind != part.PUT || high <= low {
+	if m.pair != nil || high <= low {
 		return
 	}
 	because := "outside the gate resistances of the sheet nothing is published"
@@ -160,6 +168,13 @@ func (m *putModel) ratingLimits() {
 // unchecked lists the rules that a missing rating keeps from being judged.
 func (m *putModel) unchecked() []Unchecked {
 	var list []Unchecked
+	if m.pair != nil {
+		if m.isOneShot() {
+			list = append(list, Unchecked{"timing-current-above-valley", oneShotNote})
+		}
+		return append(list, Unchecked{"emitter-surge-current", "no rating of the crossed transistors is known"},
+			Unchecked{"put-gate-voltage", "no rating of the crossed transistors is known"})
+	}
 	if len(m.ip.at) == 0 {
 		list = append(list, Unchecked{"timing-current-below-peak", missing("peak current", m.ratings)})
 	}

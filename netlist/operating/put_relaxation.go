@@ -38,6 +38,7 @@ type putModel struct {
 	valley float64 // the valley voltage before it is bounded by the peak
 	gateOf []float64
 	at0    putNodes
+	pair   *pairFigures // of two crossed transistors, nil for a device
 	s      putState
 }
 
@@ -79,14 +80,21 @@ const leastOn = 0.5
 // newPUT builds the model of a recognised oscillator. An error says why it
 // cannot be computed.
 func newPUT(w *circuit.Wiring, s *stage.Stage) (*putModel, error) {
-	if s.Anchor.Ratings == nil {
+	if s.Anchor.Ratings == nil && s.Partner == nil {
 		return nil, fmt.Errorf("nothing is known of the part %s", partName(s.Anchor))
 	}
 	m := &putModel{relaxation: newRelaxation(w, s)}
 	m.cycle, m.terminal, m.bentWindow = &m.s.cycle, "anode", true
 	m.evaluate = m.at
 	m.quietWorking = func() string { return "what flows through the divider to the cathode's resistor" }
-	m.device()
+	if s.Partner == nil {
+		m.device()
+	} else {
+		m.crossedPair()
+	}
+	for i := range m.box {
+		m.box[i].Bends = true
+	}
 	if err := m.networks(); err != nil {
 		return nil, err
 	}
@@ -145,9 +153,6 @@ func (m *putModel) device() {
 			"valley voltage not published, assumed from 0.5 V to V_F")
 	}
 	m.onResistance()
-	for i := range m.box {
-		m.box[i].Bends = true
-	}
 }
 
 // points adds a figure at those gate resistances at which the sheet guarantees
@@ -294,6 +299,9 @@ func (m *putModel) at(x []float64) {
 	s.atValley = m.sourceAtBothEnds(s.lower + s.vv)
 	s.fires = s.atPeak > 0 && s.vp > 0
 	s.ip, s.iv = m.ip.value(x, s.ohms, true), m.iv.value(x, s.ohms, false)
+	if m.pair != nil {
+		s.ip, s.iv = m.pair.currents(x)
+	}
 	s.c = m.caps.farads(x)
 	m.path(x)
 	s.leak = m.caps.leakage(x, s.vp)

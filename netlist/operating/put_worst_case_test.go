@@ -40,7 +40,14 @@ func randomPUT(seed uint64) string {
 	d.charging()
 	d.card("C1 e 0 %g", d.between(5e-9, 20e-6))
 	d.divider()
-	d.card("X1 e g k %s", [...]string{"2N6027", "2N6028", "BRY56A", "D13T1"}[d.IntN(4)])
+	if d.IntN(5) == 0 { // two transistors in its place
+		d.card("Q1 x g e QP\nQ2 g x k QN\n.model QP PNP(bf=%g)\n.model QN NPN", 50+200*d.Float64())
+		if d.IntN(2) == 0 {
+			d.resistor("x", "k", 1e4, 1e6)
+		}
+	} else {
+		d.card("X1 e g k %s", [...]string{"2N6027", "2N6028", "BRY56A", "D13T1"}[d.IntN(4)])
+	}
 	d.resistor("k", "0", 10, 100)
 	low := d.IntN(60) - 30
 	d.card("*> board ambient=%d..%d", low, low+d.IntN(70))

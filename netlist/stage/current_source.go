@@ -67,7 +67,7 @@ func (u *rampReading) sources() bool {
 	for _, p := range u.w.On(u.node) {
 		e := p.Element
 		switch {
-		case e == u.stage.Anchor || u.isSource(e):
+		case u.isOwn(e) || u.isSource(e):
 		case e.Kind == circuit.NPN || e.Kind == circuit.PNP:
 			charges = u.transistor(e) || charges
 		default:
@@ -166,7 +166,7 @@ func (u *rampReading) bias(e *circuit.Element, setting []*circuit.Element) []*ci
 			for _, m := range area.Nets {
 				for _, p := range u.w.On(m) {
 					other := p.Element
-					bipolar := other.Kind == circuit.NPN || other.Kind == circuit.PNP
+					bipolar := (other.Kind == circuit.NPN || other.Kind == circuit.PNP) && !u.isOwn(other)
 					if !seen[other] && bipolar && !u.ends(m) {
 						seen[other] = true
 						list, queue = append(list, other), append(queue, other)

@@ -7,19 +7,31 @@ import "standoff/netlist/circuit"
 // any shape that reaches the upper rail, the cathode at the lower rail directly
 // or through resistors.
 func (r *recogniser) put(anchor *circuit.Element, nets []circuit.NodeID) *Stage {
+	u := r.putReading(anchor, nets[0], nets[1], nets[2])
+	u.read()
+	return u.stage
+}
+
+// putReading starts the reading of an oscillator around a device with anode, gate
+// and cathode.
+func (r *recogniser) putReading(anchor *circuit.Element, anode, gate, cathode circuit.NodeID) *rampReading {
 	u := &rampReading{w: r.w, stage: newStage(PUTOscillator, anchor),
-		terminal: nets[0], outlet: nets[2], control: nets[1],
+		terminal: anode, outlet: cathode, control: gate,
 		terminalWords: "anode", outletWords: "the cathode", controlWords: "the gate"}
+	n := u.stage.Nodes
+	n["outlet"], n["anode"], n["gate"], n["cathode"] = cathode, anode, gate, cathode
+	return u
+}
+
+// read goes through the steps of the reading.
+func (u *rampReading) read() {
 	s := u.stage
-	s.Nodes["outlet"] = u.outlet
-	s.Nodes["anode"], s.Nodes["gate"], s.Nodes["cathode"] = u.terminal, u.control, u.outlet
 	s.Gap = steps(u.distinct, u.capacitorNode, u.rails, u.capacitors, u.charging, u.divider)
 	if s.Gap == "" {
 		u.lead()
 		u.supplies()
 		u.beside()
 	}
-	return s
 }
 
 // divider collects what sets the gate's voltage: everything that carries dc from

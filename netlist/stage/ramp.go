@@ -48,7 +48,7 @@ func (u *rampReading) capacitorNode() string {
 		var only *circuit.Element
 		count := 0
 		for _, p := range u.w.On(u.terminal) {
-			if p.Element == u.stage.Anchor {
+			if u.isOwn(p.Element) {
 				continue
 			}
 			count++
@@ -278,7 +278,7 @@ func (u *rampReading) strangers(area *circuit.Area, outside func(circuit.NodeID)
 		for _, p := range u.w.On(n) {
 			e := p.Element
 			thyristor := e.Kind == circuit.SCR // its gate stage tells
-			if e == u.stage.Anchor || u.isSource(e) || u.isClamp(e) || carriesDC(e) || e.Kind == circuit.Capacitor || thyristor || slices.Contains(list, e) {
+			if u.isOwn(e) || u.isSource(e) || u.isClamp(e) || carriesDC(e) || e.Kind == circuit.Capacitor || thyristor || slices.Contains(list, e) {
 				continue
 			}
 			list = append(list, e)

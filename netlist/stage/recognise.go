@@ -13,15 +13,17 @@ type topology struct {
 	part  circuit.Kind
 	kind  Kind
 	roles []string
+	when  func(r *recogniser, e *circuit.Element) bool // nil: always
 	build func(r *recogniser, anchor *circuit.Element, nets []circuit.NodeID) *Stage
 }
 
 // topologies lists the timing stages first: a gate stage asks for its driver.
 var topologies = [...]topology{
-	{circuit.UJT, UJTOscillator, []string{"emitter", "base1", "base2"}, (*recogniser).ujt},
-	{circuit.PUT, PUTOscillator, []string{"anode", "gate", "cathode"}, (*recogniser).put},
-	{circuit.Diac, BreakoverOscillator, []string{"1", "2"}, (*recogniser).breakover},
-	{circuit.SCR, SCRGate, []string{"anode", "gate", "cathode"}, (*recogniser).scr},
+	{circuit.UJT, UJTOscillator, []string{"emitter", "base1", "base2"}, nil, (*recogniser).ujt},
+	{circuit.PUT, PUTOscillator, []string{"anode", "gate", "cathode"}, nil, (*recogniser).put},
+	{circuit.PNP, PUTOscillator, []string{"emitter", "base", "collector"}, (*recogniser).isCrossed, (*recogniser).crossedPair},
+	{circuit.Diac, BreakoverOscillator, []string{"1", "2"}, nil, (*recogniser).breakover},
+	{circuit.SCR, SCRGate, []string{"anode", "gate", "cathode"}, nil, (*recogniser).scr},
 }
 
 // Recognise returns the stages of a circuit: the timing stages first, then the
@@ -33,9 +35,10 @@ func Recognise(c *circuit.Circuit) []*Stage {
 	}
 	r := &recogniser{w: circuit.NewWiring(c)}
 	for i := range topologies {
+		t := &topologies[i]
 		for _, e := range c.Elements {
-			if e.Kind == topologies[i].part {
-				r.stages = append(r.stages, r.ordered(e, &topologies[i]))
+			if e.Kind == t.part && (t.when == nil || t.when(r, e)) {
+				r.stages = append(r.stages, r.ordered(e, t))
 			}
 		}
 	}

@@ -73,6 +73,9 @@ type Stage struct {
 	Nodes map[string]circuit.NodeID
 	// Gap says why the stage could not be recognised in full; "" where it was.
 	Gap string
+	// Partner is the second transistor of a crossed pair that stands in for a device,
+	// else nil.
+	Partner *circuit.Element
 	// Clamps lists transistors that can hold the timing capacitor down and whose base
 	// dc on the board sets.
 	Clamps []*circuit.Element

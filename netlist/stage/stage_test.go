@@ -68,6 +68,64 @@ func TestOscillators(t *testing.T) {
 	}
 }
 
+func TestOtherTimingStages(t *testing.T) {
+	const supply = "\nV1 vcc 0 20"
+	const divider = "\nR2 vcc g 10k\nR3 g 0 15k\nR4 k 0 47" + supply
+	const put = " base-one=R4 gate-divider=R2,R3 supply=V1"
+	const bases = "\nX1 e b1 b2 2N2646\nR2 vcc b2 330\nR3 b1 0 22" + supply
+	const models = "\n.model QP PNP\n.model QN NPN\n.model DZ D(bv=5.6)\n.model JN NJF(vto=-2 idss=3m)\n.model CR isource(i=1m v_min=1)"
+	for _, c := range []struct{ name, kind, text, want string }{
+		{"programmable", "put-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nX1 a g k 2N6027" + divider, "X1: timing-resistor=R1 timing-capacitor=C1" + put},
+		{"programmable, anode resistor", "put-oscillator", "R1 vcc c 100k\nC1 c 0 1u\nR9 c a 10\nX1 a g k 2N6027" + divider,
+			"X1: timing-resistor=R1 timing-capacitor=C1 base-one=R4 emitter-series=R9 gate-divider=R2,R3 supply=V1"},
+		{"programmable, diode in the divider", "put-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nX1 a g k 2N6027\nR2 vcc g 10k\nD1 g d DZ\nR3 d 0 15k\nR4 k 0 47" + supply + models,
+			"X1: timing-resistor=R1 timing-capacitor=C1 base-one=R4 gate-divider=R2,D1,R3 supply=V1"},
+		{"programmable, plus at ground", "put-oscillator", "R1 0 a 100k\nC1 a n 1u\nX1 a g k 2N6027\nR2 0 g 10k\nR3 g n 15k\nR4 k n 47\nV1 0 n 20",
+			"X1: timing-resistor=R1 timing-capacitor=C1" + put},
+		{"programmable, order from the wiring", "put-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nX1 g a k 2N6027" + divider, "X1: timing-resistor=R1 timing-capacitor=C1" + put},
+		{"programmable, gate in the air", "put-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nX1 a g k 2N6027\nR4 k 0 47" + supply, "X1: the gate has no way to a supply"},
+		{"crossed pair", "put-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nQ1 x g a QP\nQ2 g x k QN\nR5 x k 22k" + divider + models,
+			"Q1: timing-resistor=R1 timing-capacitor=C1 base-one=R4 gate-divider=R2,R3 supply=V1 gate-shunt=R5"},
+		{"diac", "breakover-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nX1 a k DB3\nR4 k 0 47" + supply, "X1: timing-resistor=R1 timing-capacitor=C1 base-one=R4 supply=V1"},
+		{"diac, turned round", "breakover-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nX1 k a DB3\nR4 k 0 47" + supply, "X1: timing-resistor=R1 timing-capacitor=C1 base-one=R4 supply=V1"},
+		{"neon lamp across the capacitor", "breakover-oscillator", "R1 vcc a 1meg\nC1 a 0 1u\nX1 a 0 NE-2" + supply, "X1: timing-resistor=R1 timing-capacitor=C1 supply=V1"},
+		{"silicon switch, negative supply", "breakover-oscillator", "R1 n a 100k\nC1 a 0 1u\nX1 a k MBS4991\nR4 k 0 47\nV1 n 0 -20", "X1: timing-resistor=R1 timing-capacitor=C1 base-one=R4 supply=V1"},
+		{"lamp from the line", "breakover-oscillator", "R1 l a 100k\nC1 a 0 100n\nX1 a 0 NE-2\nV1 l 0 SIN(0 325 50)", "X1: timing-resistor=R1 timing-capacitor=C1 supply=V1"},
+		{"phase control", "breakover-oscillator", "R1 l a 100k\nC1 a 0 100n\nX1 a g DB3\nX2 l g 0 BT136-600\nV1 l 0 SIN(0 325 50)", "X1: it fires X2 from the line: phase control is not worked out"},
+		{"nothing charges a diac", "breakover-oscillator", "C1 a 0 1u\nX1 a 0 DB3" + supply, "X1: nothing charges the capacitor"},
+		{"zener-biased source", "ujt-oscillator", "D1 b vcc DZ\nR6 b 0 4.7k\nR5 vcc ee 10k\nQ1 e b ee QP\nC1 e 0 1u" + bases + models,
+			"X1: timing-resistor=R5 timing-capacitor=C1 current-source=D1,R6,Q1 base-one=R3 base-two=R2 supply=V1"},
+		{"mirror", "ujt-oscillator", "R6 b 0 100k\nQ1 e b vcc QP\nQ2 b b vcc QP\nC1 e 0 1u" + bases + models,
+			"X1: timing-resistor=R6 timing-capacitor=C1 current-source=Q1,Q2 base-one=R3 base-two=R2 supply=V1"},
+		{"field-effect source", "ujt-oscillator", "J1 vcc e s JN\nR5 s e 4.7k\nC1 e 0 1u" + bases + models,
+			"X1: timing-resistor=R5 timing-capacitor=C1 current-source=J1 base-one=R3 base-two=R2 supply=V1"},
+		{"three-terminal source", "ujt-oscillator", "X5 vcc r e LM334\nR5 r e 68\nC1 e 0 1u" + bases,
+			"X1: timing-resistor=R5 timing-capacitor=C1 current-source=X5 base-one=R3 base-two=R2 supply=V1"},
+		{"regulator diode", "ujt-oscillator", "X5 vcc e CR\nC1 e 0 1u" + bases + models, "X1: timing-capacitor=C1 current-source=X5 base-one=R3 base-two=R2 supply=V1"},
+		{"reset transistor", "ujt-oscillator", "R1 vcc e 100k\nC1 e 0 1u\nQ9 e r 0 QN\nR9 rst r 10k\nVR rst 0 PULSE(0 5 0 1u 1u 1m 1)" + bases + models,
+			"X1: timing-resistor=R1 timing-capacitor=C1 base-one=R3 base-two=R2 supply=V1"},
+	} {
+		s := recognise(t, c.text)[0]
+		if got := show(s); got != c.want || string(s.Kind) != c.kind {
+			t.Errorf("%s:\n got %s %s\nwant %s %s", c.name, s.Kind, got, c.kind, c.want)
+		}
+	}
+}
+
+// A transistor across the capacitor is worked out where dc sets its base, and named
+// where a signal does.
+func TestTransistorsThatHoldTheCapacitorDown(t *testing.T) {
+	const rest = "\nR1 vcc e 100k\nC1 e 0 1u\nX1 e b1 b2 2N2646\nR2 vcc b2 330\nR3 b1 0 22\nV1 vcc 0 20\n.model QN NPN"
+	held := recognise(t, "Q9 e r 0 QN\nR9 vcc r 10k"+rest)[0]
+	if len(held.Clamps) != 1 || held.Beside != nil {
+		t.Errorf("%+v", held)
+	}
+	free := recognise(t, "Q9 e r 0 QN\nR9 s r 10k\nVS s 0 PULSE(0 5 0 1u 1u 1m 1)"+rest)[0]
+	if free.Clamps != nil || len(free.Beside) != 1 || !strings.Contains(free.Beside[0], "taken as off") {
+		t.Errorf("%+v", free)
+	}
+}
+
 const oscillator = "V1 vcc 0 20\nR1 vcc e 100k\nC1 e 0 1u\nXQ1 e b1 b2 2N2646\nR2 vcc b2 330\nR3 b1 0 22\n"
 
 func TestGates(t *testing.T) {

@@ -1,0 +1,72 @@
+package operating
+
+import (
+	"fmt"
+
+	"standoff/netlist/quantity"
+	"standoff/netlist/stage"
+)
+
+// pairFigures are a pnp and an npn, crossed, in place of a programmable unijunction.
+//
+// Model. The pnp turns on V_BE above the gate. The npn follows when the pnp's
+// collector current exceeds what the resistor across its base takes; until then the
+// capacitor has to deliver
+//
+//	I_P = (I_0 + V_BE/R_BE) (1 + 1/gain_pnp)
+//
+// with I_0 of a few hundred nanoamperes for the gains to reach one together. Once on,
+// the pair lets go when the npn can no longer sink what the divider delivers:
+//
+//	I_V = (V_S/(R_G gain_npn) + V_BE/R_BE) (1 + 1/gain_pnp)
+//
+// (both derived here from the transistors' node equations; I_0 from memory). Units SI.
+type pairFigures struct {
+	m        *putModel
+	vbe      int // of the npn
+	up, down int // gains of the pnp and of the npn
+	start    int // I_0
+	across   []slot
+}
+
+// Figures that nobody publishes for a crossed pair.
+var (
+	assumedPairStart  = quantity.Spread{Low: 50e-9, Nominal: 200e-9, High: 1e-6}
+	assumedPairValley = quantity.Spread{Low: 0.6, Nominal: 0.8, High: 1}
+	assumedPairOn     = quantity.Spread{Low: 1, Nominal: 5, High: 30}
+)
+
+// crossedPair adds the figures of the two transistors.
+func (m *putModel) crossedPair() {
+	pnp, npn := m.stage.Anchor, m.stage.Partner
+	v := m.baseEmitter(pnp)
+	m.vt = points{[]float64{10e3}, []int{v.index}, false}
+	m.pair = &pairFigures{m: m, up: m.gain(pnp), vbe: m.baseEmitter(npn).index, down: m.gain(npn)}
+	m.pair.start = m.assumed("I_0", "A", assumedPairStart, "current at which the gains reach one together, assumed")
+	m.vv = m.assumed("vv", "V", assumedPairValley, "valley voltage of a crossed pair, assumed")
+	m.on = m.assumed("ron", "ohm", assumedPairOn, "on-resistance of a crossed pair, assumed")
+	m.igao = -1
+	for _, e := range m.stage.Parts[stage.GateShunt] {
+		m.pair.across = append(m.pair.across, m.element(e))
+	}
+}
+
+// currents returns peak and valley current at a point; V_S and R_G are known.
+func (p *pairFigures) currents(x []float64) (peak, valley float64) {
+	s := &p.m.s
+	diverted := 0.0
+	for _, r := range p.across {
+		diverted += (x[p.vbe] + diodeDrift*s.heat) / p.m.value(r, x)
+	}
+	base := 1 + 1/x[p.up]
+	return (x[p.start] + diverted) * base, (s.gate/(s.ohms*x[p.down]) + diverted) * base
+}
+
+// pairWorking says how a current of the pair comes about.
+func (p *pairFigures) working(which string) string {
+	if which == "peak" {
+		return "(I_0 + V_BE/R_BE) (1 + 1/gain of the pnp)"
+	}
+	return fmt.Sprintf("(V_S/(R_G gain of the npn) + V_BE/R_BE) (1 + 1/gain of the pnp), V_S = %s, R_G = %s",
+		show(p.m.s.gate, "V"), show(p.m.s.ohms, "ohm"))
+}
