@@ -180,15 +180,15 @@ func (m *relaxation) trimmer(b *Budget) {
 		}
 	}
 	ends := m.periods(box)
-	shortest, ok := m.setting(ends.HighAt, at, aim)
-	longest, also := m.setting(ends.LowAt, at, aim)
+	shortest, ok := m.trimmedTo(ends.HighAt, at, aim)
+	longest, also := m.trimmedTo(ends.LowAt, at, aim)
 	if ok && also {
 		b.TrimmedPart, b.Trimmer = part.Designator, &quantity.Spread{Low: shortest, Nominal: math.Sqrt(shortest * longest), High: longest}
 	}
 }
 
-// setting returns the value of one variable with which a board has a period.
-func (m *relaxation) setting(x []float64, at int, aim float64) (float64, bool) {
+// trimmedTo returns the value of one variable with which a board has a period.
+func (m *relaxation) trimmedTo(x []float64, at int, aim float64) (float64, bool) {
 	x = slices.Clone(x)
 	low, high := x[at]/100, x[at]*100
 	period := func(v float64) float64 {

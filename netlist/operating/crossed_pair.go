@@ -23,10 +23,10 @@ import (
 // (both derived here from the transistors' node equations; I_0 from memory). Units SI.
 type pairFigures struct {
 	m        *putModel
-	vbe      int // of the npn
-	up, down int // gains of the pnp and of the npn
-	start    int // I_0
-	across   []slot
+	vbe      int                       // of the npn
+	up, down int                       // gains of the pnp and of the npn
+	start    int                       // I_0
+	across   func(x []float64) float64 // R_BE, nil for none
 }
 
 // Figures that nobody publishes for a crossed pair.
@@ -37,7 +37,7 @@ var (
 )
 
 // crossedPair adds the figures of the two transistors.
-func (m *putModel) crossedPair() {
+func (m *putModel) crossedPair() error {
 	pnp, npn := m.stage.Anchor, m.stage.Partner
 	v := m.baseEmitter(pnp)
 	m.vt = points{[]float64{10e3}, []int{v.index}, false}
@@ -46,17 +46,17 @@ func (m *putModel) crossedPair() {
 	m.vv = m.assumed("vv", "V", assumedPairValley, "valley voltage of a crossed pair, assumed")
 	m.on = m.assumed("ron", "ohm", assumedPairOn, "on-resistance of a crossed pair, assumed")
 	m.igao = -1
-	for _, e := range m.stage.Parts[stage.GateShunt] {
-		m.pair.across = append(m.pair.across, m.element(e))
-	}
+	var err error
+	m.pair.across, err = m.setting(m.stage.Parts[stage.GateShunt], m.stage.Nodes["diverted"])
+	return err
 }
 
 // currents returns peak and valley current at a point; V_S and R_G are known.
 func (p *pairFigures) currents(x []float64) (peak, valley float64) {
 	s := &p.m.s
 	diverted := 0.0
-	for _, r := range p.across {
-		diverted += (x[p.vbe] + diodeDrift*s.heat) / p.m.value(r, x)
+	if p.across != nil {
+		diverted = (x[p.vbe] + diodeDrift*s.heat) / p.across(x)
 	}
 	base := 1 + 1/x[p.up]
 	return (x[p.start] + diverted) * base, (s.gate/(s.ohms*x[p.down]) + diverted) * base

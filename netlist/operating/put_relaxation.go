@@ -89,8 +89,8 @@ func newPUT(w *circuit.Wiring, s *stage.Stage) (*putModel, error) {
 	m.quietWorking = func() string { return "what flows through the divider to the cathode's resistor" }
 	if s.Partner == nil {
 		m.device()
-	} else {
-		m.crossedPair()
+	} else if err := m.crossedPair(); err != nil {
+		return nil, err
 	}
 	for i := range m.box {
 		m.box[i].Bends = true

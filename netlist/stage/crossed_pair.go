@@ -23,27 +23,27 @@ func (r *recogniser) crossedPair(anchor *circuit.Element, nets []circuit.NodeID)
 	u.stage.Nodes["inner"] = collector
 	u.read()
 	if s := u.stage; s.Gap == "" {
-		for _, p := range r.w.On(collector) {
-			if e := p.Element; e != anchor && e != partner && !u.holdsOff(e, collector) {
-				s.Beside = append(s.Beside, e.Designator+" hangs between the crossed transistors; what it does there is not worked out")
-			}
-		}
+		u.diverting(collector)
 	}
 	return u.stage
 }
 
-// holdsOff takes in a resistor from the inner net to the cathode or the lower rail:
-// it diverts what would turn the npn on.
-func (u *rampReading) holdsOff(e *circuit.Element, inner circuit.NodeID) bool {
-	if !isResistor(e) {
-		return false
+// diverting takes in the resistors from the inner net to the cathode or the lower
+// rail, which divert what would turn the npn on, and names what else hangs there.
+func (u *rampReading) diverting(inner circuit.NodeID) {
+	s := u.stage
+	for _, end := range [2]circuit.NodeID{u.outlet, u.lower} {
+		if list := settingNetwork(u.w, inner, end); len(list) > 0 {
+			s.Nodes["diverted"] = end
+			s.add(GateShunt, list...)
+			break
+		}
 	}
-	far := u.w.Other(e, inner)
-	if far != u.outlet && far != u.lower {
-		return false
+	for _, p := range u.w.On(inner) {
+		if e := p.Element; !u.isOwn(e) && !slices.Contains(s.Parts[GateShunt], e) {
+			s.Beside = append(s.Beside, e.Designator+" hangs between the crossed transistors; what it does there is not worked out")
+		}
 	}
-	u.stage.add(GateShunt, e)
-	return true
 }
 
 // partner returns the npn whose collector and base lie on the two nets.
