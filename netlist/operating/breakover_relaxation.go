@@ -145,7 +145,9 @@ func (m *breakoverModel) networks() error {
 	series := m.stage.Parts[stage.EmitterSeries]
 	var err error
 	anchors := []circuit.NodeID{n["capacitor"], n["outlet"], n["upper"], n["lower"]}
-	m.standing, err = newCrestMesh(m.bench, anchors, func(e *circuit.Element) bool { return contains(series, e) })
+	m.standing, err = newCrestMesh(m.bench, anchors, func(e *circuit.Element) bool {
+		return contains(series, e) || contains(m.stage.Apart, e)
+	})
 	if err != nil {
 		return err
 	}

@@ -42,7 +42,8 @@ const saturation = 0.3
 const reverseGain = 1
 
 // activeParts lists the transistors and regulators that a stage counts as its own,
-// and those that could pull its capacitor down.
+// those that could pull its capacitor down, and
+// those that read its ramp.
 func activeParts(s *stage.Stage) []*circuit.Element {
 	var list []*circuit.Element
 	for _, e := range s.Parts[stage.CurrentSource] {
@@ -50,7 +51,7 @@ func activeParts(s *stage.Stage) []*circuit.Element {
 			list = append(list, e)
 		}
 	}
-	return append(list, s.Clamps...)
+	return append(append(list, s.Clamps...), s.Taps...)
 }
 
 func isActive(k circuit.Kind) bool {

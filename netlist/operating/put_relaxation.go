@@ -216,7 +216,9 @@ func (m *putModel) networks() error {
 	series := m.stage.Parts[stage.EmitterSeries]
 	var err error
 	anchors := []circuit.NodeID{n["capacitor"], n["gate"], n["cathode"], n["upper"], n["lower"]}
-	m.standing, err = newMesh(m.bench, anchors, func(e *circuit.Element) bool { return contains(series, e) })
+	m.standing, err = newMesh(m.bench, anchors, func(e *circuit.Element) bool {
+		return contains(series, e) || contains(m.stage.Apart, e)
+	})
 	if err != nil {
 		return err
 	}

@@ -205,7 +205,9 @@ func (m *ujtModel) networks() error {
 	anchors := []circuit.NodeID{n["capacitor"], n["base1"], n["base2"], n["upper"], n["lower"]}
 	series := m.stage.Parts[stage.EmitterSeries]
 	var err error
-	m.standing, err = newMesh(m.bench, anchors, func(e *circuit.Element) bool { return contains(series, e) })
+	m.standing, err = newMesh(m.bench, anchors, func(e *circuit.Element) bool {
+		return contains(series, e) || contains(m.stage.Apart, e)
+	})
 	if err != nil {
 		return err
 	}

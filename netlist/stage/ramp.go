@@ -251,13 +251,15 @@ func (u *rampReading) beside() {
 		return u.isRail(n) || n == u.outlet || n == u.control
 	}
 	charging := u.w.Walk([]circuit.NodeID{u.node, u.terminal}, carriesDC, own)
+	u.taps(charging)
 	for _, e := range u.strangers(charging, func(n circuit.NodeID) bool { return own(n) }) {
-		u.stage.Beside = append(u.stage.Beside, e.Designator+" hangs on the charging network; the current it draws is not worked out")
+		u.tell(e, "hangs on the charging network; the current it draws is not worked out")
 	}
 	base := u.w.Walk([]circuit.NodeID{u.outlet}, carriesDC, func(n circuit.NodeID) bool { return u.isRail(n) || n == u.node || n == u.terminal })
 	for _, e := range u.strangers(base, func(n circuit.NodeID) bool { return u.isRail(n) || n == u.node || n == u.terminal }) {
-		u.stage.Beside = append(u.stage.Beside, e.Designator+" hangs on "+u.outletWords+"; what it does there is not worked out")
+		u.tell(e, "hangs on "+u.outletWords+"; what it does there is not worked out")
 	}
+	u.besideControl()
 }
 
 // isClamp reports whether a transistor lies with its collector on the capacitor: it
@@ -278,7 +280,7 @@ func (u *rampReading) strangers(area *circuit.Area, outside func(circuit.NodeID)
 		for _, p := range u.w.On(n) {
 			e := p.Element
 			thyristor := e.Kind == circuit.SCR // its gate stage tells
-			if u.isOwn(e) || u.isSource(e) || u.isClamp(e) || carriesDC(e) || e.Kind == circuit.Capacitor || thyristor || slices.Contains(list, e) {
+			if u.isOwn(e) || u.isSource(e) || u.isClamp(e) || isDeaf(p) || slices.Contains(u.stage.Taps, e) || carriesDC(e) || e.Kind == circuit.Capacitor || thyristor || slices.Contains(list, e) {
 				continue
 			}
 			list = append(list, e)

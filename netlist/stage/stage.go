@@ -79,6 +79,9 @@ type Stage struct {
 	// Clamps lists transistors that can hold the timing capacitor down and whose base
 	// dc on the board sets.
 	Clamps []*circuit.Element
+	// Taps lists transistors that read the ramp with their base, and Apart parts that
+	// bring a signal in and are left out of the networks.
+	Taps, Apart []*circuit.Element
 	// Beside lists what hangs on the stage and is not worked out, in words.
 	Beside []string
 	// Order is set where terminal order and wiring do not agree.

@@ -154,9 +154,23 @@ func TestGates(t *testing.T) {
 
 func TestWhatIsNotFollowedIsNamed(t *testing.T) {
 	s := recognise(t, oscillator+"R7 e t 1meg\nQ7 vcc t out QN\nR8 out 0 1k\nR9 b1 y 1k\nQ9 z y 0 QN\nR10 vcc z 1k\n.model QN npn")[0]
-	want := []string{"Q7 hangs on the charging network; the current it draws is not worked out", "Q9 hangs on base one; what it does there is not worked out"}
-	if s.Gap != "" || !slices.Equal(s.Beside, want) {
-		t.Errorf("gap %q, beside %q", s.Gap, s.Beside)
+	want := []string{"Q9 hangs on base one; what it does there is not worked out"}
+	if s.Gap != "" || !slices.Equal(s.Beside, want) || len(s.Taps) != 1 || s.Taps[0].Designator != "Q7" {
+		t.Errorf("gap %q, beside %q, taps %v", s.Gap, s.Beside, s.Taps)
+	}
+	for text, want := range map[string]string{
+		"Q7 z e out QN\nX5 z y blackbox\nR8 out 0 1k\n.model QN npn": "Q7 hangs on the charging network; the current it draws is not worked out",
+		"X5 e y blackbox": "X5 hangs on the charging network; the current it draws is not worked out",
+		"C5 b2 s 1n\nVS s 0 PULSE(0 5 0 1u 1u 1m 2m)": "C5 couples a signal into base two (synchronisation); what it does to the rate is not worked out",
+		"R5 b2 s 4.7k\nVS s 0 SIN(0 5 50)":            "R5 leads a signal to base two (synchronisation); the stage is worked out without it",
+		"Q7 b2 x 0 QN\nR8 x vcc 10k\n.model QN npn":   "Q7 hangs on base two; what it does there is not worked out",
+		"J7 vcc e s JN\nR8 s 0 10k\n.model JN njf":    "",
+		"C5 b2 0 1n": "",
+	} {
+		s := recognise(t, oscillator+text)[0]
+		if s.Gap != "" || strings.Join(s.Beside, "|") != want {
+			t.Errorf("%s:\n got %q %q\nwant %q", text, s.Gap, s.Beside, want)
+		}
 	}
 	if s := recognise(t, oscillator+"R4 b1 g 47\nXS1 a g 0 C106D\nRL vcc a 100")[0]; s.Beside != nil {
 		t.Errorf("nothing hangs on a plain stage: %q", s.Beside)
