@@ -81,7 +81,7 @@ func (m *breakoverModel) limits() {
 		return
 	}
 	m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min, bent: m.charging.bends,
-		value: func() float64 { return s.reach - m.sign*s.standby }, limit: func() float64 { return s.volts }, working: m.reachWorking})
+		value: func() float64 { return s.reach - (s.vp - s.volts) }, limit: func() float64 { return s.volts }, working: m.reachWorking})
 	if m.line != nil {
 		s.ip, s.iv = math.NaN(), math.NaN() // the capacitor delivers I_BO, and every zero crossing lets go
 	}

@@ -30,12 +30,12 @@ import (
 // HT series) is left out. Voltages count in the direction of the charge. Units SI.
 type breakoverModel struct {
 	relaxation
-	vbo, swing, vf, vo, on, ibo, ih int // variables, -1 where there is none
-	s                               breakoverState
-	outletNode, upper, lowerNode    network.Node
-	sign                            float64 // +1 or -1: direction of the charge
-	line                            *lineFeed
-	blocked                         bool // a one-sided device stands the wrong way round
+	vbo, swing, vf, vo, on, ibo, ih, gate int // variables, -1 where there is none
+	s                                     breakoverState
+	outletNode, upper, lowerNode          network.Node
+	sign                                  float64 // +1 or -1: direction of the charge
+	line                                  *lineFeed
+	blocked                               bool // a one-sided device stands the wrong way round
 }
 
 type breakoverState struct {
@@ -162,8 +162,31 @@ func (m *breakoverModel) networks() error {
 		return err
 	}
 	at := m.standing.node
+	m.gateAlone()
 	m.outletNode, m.upper, m.lowerNode = at(n["outlet"]), at(n["upper"]), at(n["lower"])
 	return m.capacitors(n["capacitor"])
+}
+
+// gateAlone adds the voltage of a gate that the far side hangs on with nothing beside
+// it: the breakover current already flows through it, and the capacitor has to climb
+// so much higher (Mehta, Principles of Electronics, ex. 21.5: V_BO + V_GT).
+func (m *breakoverModel) gateAlone() {
+	s := m.stage
+	m.gate = -1
+	if len(s.Parts[stage.BaseOne]) > 0 || m.w.IsFixed(s.Nodes["outlet"]) {
+		return
+	}
+	for _, g := range s.Drives {
+		high := usualGateVoltage
+		if r := g.Anchor.Ratings; r != nil {
+			if v, _, ok := r.Limit("vgt"); ok {
+				high = max(v, leastGateVoltage)
+			}
+		}
+		m.gate = m.assumed("gate voltage of "+g.Anchor.Designator, "V",
+			quantity.Spread{Low: leastGateVoltage, Nominal: (leastGateVoltage + high) / 2, High: high}, "assumed")
+		return
+	}
 }
 
 // direction finds which way the capacitor charges on the nominal board.
@@ -190,6 +213,9 @@ func (m *breakoverModel) at(x []float64) {
 	s.standby = mesh.solver.Voltage(m.outletNode) - s.lower
 	s.volts = x[m.vbo]
 	s.vp = s.volts + m.sign*s.standby
+	if m.gate >= 0 {
+		s.vp += x[m.gate]
+	}
 	if m.vf >= 0 {
 		s.vv = min(x[m.vf], 0.9*s.vp)
 	} else {
