@@ -62,6 +62,9 @@ type Hints struct {
 	// LowOnly and HighOnly list outputs of which one extreme is of no interest; it
 	// is then no more than the best that was met by the way.
 	LowOnly, HighOnly []int
+	// Settled reports that the extreme met so far of an output of which one extreme
+	// counts is so far from mattering that it need not be explored; nil for none.
+	Settled func(j int, extreme float64) bool
 	// One computes output j alone, where that costs less than all of them; nil
 	// where it does not. It serves while the surroundings of one best point are
 	// explored.
@@ -99,12 +102,25 @@ func Extremes(box []Variable, n int, f Function, hints Hints) []Extreme {
 		s.best[2*j].idle = true
 	}
 	s.start(hints.Corners)
+	s.settle(hints.Settled)
 	for round := 0; round < maxRounds; round++ {
 		if !s.exploreAll() {
 			break
 		}
 	}
 	return s.extremes()
+}
+
+// settle marks what need not be explored.
+func (s *search) settle(settled func(j int, extreme float64) bool) {
+	if settled == nil {
+		return
+	}
+	for b := range s.best {
+		if !s.best[b].idle && s.best[b^1].idle && !s.kinked[b/2] && settled(b/2, s.best[b].value) {
+			s.best[b].idle = true
+		}
+	}
 }
 
 // scatter tries corners that a fixed sequence picks.
@@ -195,7 +211,7 @@ type best struct {
 }
 
 func newSearch(box []Variable, n int, f Function) *search {
-	s := &search{box: box, n: n, f: f, tried: make(map[uint64]bool, 1024), bent: make([]bool, n), guided: make([]bool, n), kinked: make([]bool, n)}
+	s := &search{box: box, n: n, f: f, tried: make(map[uint64]bool, 8*n), bent: make([]bool, n), guided: make([]bool, n), kinked: make([]bool, n)}
 	s.x, s.y = make([]float64, len(box)), make([]float64, n)
 	s.best = make([]best, 2*n)
 	s.moves = make([]bool, n*len(box))

@@ -92,7 +92,7 @@ func (m *model) allFigures() []Figure {
 func (m *model) allComparisons() []Comparison {
 	sought := m.contestsSought()
 	extremes := m.search(sought)
-	var comparisons []Comparison
+	comparisons := make([]Comparison, 0, len(m.contests)+4)
 	for k := range m.contests {
 		if c, ok := m.decide(k, extremes[k]); ok {
 			comparisons = append(comparisons, c)
@@ -117,6 +117,7 @@ func (m *model) nominalOf(name string) float64 {
 type sought struct {
 	of                  func() float64
 	bent, guide, guided bool
+	exact               bool // the value counts, not only whether a limit is near
 	gate, gated, kinked bool
 	lowOnly, highOnly   bool
 }
@@ -139,7 +140,7 @@ func (m *model) contestsSought() []sought {
 		c := &m.contests[k]
 		guided, gated = guided || c.guided, gated || c.gated
 		list[k] = sought{of: c.ratio, bent: c.bent, guided: c.guided, gated: c.gated, kinked: c.kinked,
-			lowOnly: c.bound == Min, highOnly: c.bound == Max}
+			exact: c.habit || c.gated, lowOnly: c.bound == Min, highOnly: c.bound == Max}
 	}
 	for _, o := range m.outputs {
 		if o.guide && guided || o.gate && gated {
@@ -148,6 +149,10 @@ func (m *model) contestsSought() []sought {
 	}
 	return list
 }
+
+// farOff is how many times over its limit a value stays so that its worst corner
+// needs no exploring: the corners tried before are right to within a few per cent.
+const farOff = 8
 
 // slackOf is by how much, relatively, the bounds of an output are moved outwards.
 // The extreme of a bent one is looked for between the ends of variables on a coarse
@@ -166,6 +171,10 @@ func (m *model) search(list []sought) []numeric.Extreme {
 		m.evaluate(x)
 		return list[j].of()
 	}}
+	hints.Settled = func(j int, extreme float64) bool {
+		s := &list[j]
+		return !s.exact && (s.lowOnly && extreme > farOff || s.highOnly && extreme < 1/farOff)
+	}
 	mark := func(to *[]int, j int, yes bool) {
 		if yes {
 			*to = append(*to, j)
