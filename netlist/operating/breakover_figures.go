@@ -53,7 +53,7 @@ func (m *breakoverModel) lineFigures() {
 
 func (m *breakoverModel) reachWorking() string {
 	if m.line == nil {
-		return "what the charging network would bring the capacitor to if nothing broke over"
+		return "what the charging network would bring the capacitor to, less what leaks, if nothing broke over"
 	}
 	return fmt.Sprintf("crest of the capacitor's voltage on the line, %s behind %s: crest/sqrt(1 + (w R C)^2)",
 		show(m.line.crest, "V"), show(m.line.ohms, "ohm"))
@@ -85,7 +85,7 @@ func (m *breakoverModel) limits() {
 	if m.line != nil {
 		s.ip, s.iv = math.NaN(), math.NaN() // the capacitor delivers I_BO, and every zero crossing lets go
 	}
-	m.windowLimits("", "")
+	m.windowLimits("", m.holdingNote())
 	if limit, mark, ok := m.rated("itrm"); ok {
 		m.compare(contest{name: "discharge_peak_current", limitName: "itrm", unit: "A", bound: Max, value: m.surge, bent: true,
 			limit: limit, limitMark: mark, working: m.surgeWorking})
@@ -94,6 +94,14 @@ func (m *breakoverModel) limits() {
 		m.targetLimits()
 	}
 	m.guideByPeak()
+}
+
+// holdingNote says that the sheet promises no least holding current, "" where it does.
+func (m *breakoverModel) holdingNote() string {
+	if f := m.ratings.Figures["ih"]; f.HasMin || m.ih < 0 {
+		return ""
+	}
+	return fmt.Sprintf("only a typical or greatest holding current of %s is published", m.ratings.Name)
 }
 
 // guideByPeak has everything guided by the charging current at the peak, beyond
@@ -121,6 +129,8 @@ func (m *breakoverModel) unchecked() []Unchecked {
 		list = append(list, Unchecked{"timing-current-above-valley", oneShotNote})
 	case m.ih < 0:
 		list = append(list, Unchecked{"timing-current-above-valley", missing("holding current", m.ratings)})
+	case m.holdingNote() != "":
+		list = append(list, Unchecked{"timing-current-above-valley", m.holdingNote() + ": below it the device may stay on all the same"})
 	}
 	if _, _, ok := m.ratings.Limit("itrm"); !ok {
 		list = append(list, Unchecked{"emitter-surge-current", missing("repetitive peak current rating", m.ratings)})

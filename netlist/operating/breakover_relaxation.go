@@ -27,10 +27,14 @@ import (
 // far below V_BO and at most two thirds of V_BO (assumed). R_on follows from the
 // output step V_O into 20 ohm: R_on = 20 ohm (swing/V_O - 1). The temperature
 // coefficient of V_BO (0.02 % per K, MBS4991 sheet; within 8 % over -40 .. 140 deg C,
-// HT series) is left out. Voltages count in the direction of the charge. Units SI.
+// HT series) counts where the part's ratings carry it. A device whose voltage in
+// conduction nobody gives and that breaks over below 15 V is taken for a silicon switch.
+// The device passes up to I_BO before it breaks over: what hangs on its far side
+// lifts the peak by that much. Voltages count in the direction of the charge. Units SI.
 type breakoverModel struct {
 	relaxation
 	vbo, swing, vf, vo, on, ibo, ih, gate int // variables, -1 where there is none
+	drift, idle                           int // temperature coefficient of V_BO, leakage before it
 	s                                     breakoverState
 	outletNode, upper, lowerNode          network.Node
 	sign                                  float64 // +1 or -1: direction of the charge
@@ -84,6 +88,7 @@ func (m *breakoverModel) device() error {
 		return -1
 	}
 	m.ibo, m.ih, m.vo = optional("ibo", "A"), optional("ih", "A"), -1
+	m.drift, m.idle = optional("vbo_tc", "1/K"), optional("idrm", "A")
 	if least, mark, ok := r.Limit("vo"); ok {
 		m.vo = m.add(trait{name: "vo", unit: "V", memory: mark >= part.Memory, note: markNote("vo", r.Name, mark >= part.Memory)}, quantity.Exact(least))
 	}
@@ -112,6 +117,11 @@ func (m *breakoverModel) valley() {
 		return
 	}
 	vbo := m.box[m.vbo].Nominal
+	if vbo < siliconSwitch {
+		m.vf = m.assumed("vv", "V", quantity.Spread{Low: 0.75, Nominal: 1.4, High: 1.7},
+			"valley voltage not published, assumed as of silicon switches")
+		return
+	}
 	least, note := 0.15, "step back at breakover not published, assumed"
 	if v, _, ok := m.ratings.Limit("dv"); ok {
 		least, note = min(v/vbo, 0.6), "greatest step back at breakover assumed"
@@ -120,6 +130,11 @@ func (m *breakoverModel) valley() {
 	}
 	m.swing = m.add(trait{name: "swing", doubtHigh: true, note: note}, quantity.Spread{Low: least, Nominal: (least + 0.65) / 2, High: 0.65})
 }
+
+// siliconSwitch is the breakover voltage in volt below which a device is taken for
+// one whose voltage in conduction is that of a few junctions: 1.4 .. 1.7 V (MBS4991
+// sheet). Diacs begin at 16 V (1N5758).
+const siliconSwitch = 15
 
 // lampVolts is the conduction voltage from which a device is taken for a glow
 // discharge, whose resistance is that of the gas.
@@ -212,7 +227,14 @@ func (m *breakoverModel) at(x []float64) {
 	s.lower, s.upper = mesh.solver.Voltage(m.lowerNode), mesh.solver.Voltage(m.upper)
 	s.standby = mesh.solver.Voltage(m.outletNode) - s.lower
 	s.volts = x[m.vbo]
+	if m.drift >= 0 {
+		s.volts *= 1 + x[m.drift]*(x[m.ambient]-25)
+	}
+	m.outside(x)
 	s.vp = s.volts + m.sign*s.standby
+	if m.ibo >= 0 {
+		s.vp += x[m.ibo] * (s.r1 + s.re)
+	}
 	if m.gate >= 0 {
 		s.vp += x[m.gate]
 	}
@@ -233,22 +255,34 @@ func (m *breakoverModel) at(x []float64) {
 	if m.vo >= 0 {
 		s.on *= 20 * max((s.vp-s.vv)/x[m.vo]-1, 0.05)
 	}
-	m.outside(x)
 	s.discharge = (s.on + s.r1 + s.re) * s.c * math.Log(s.vp/s.vv)
 	s.leak = m.caps.leakage(x, s.vp)
 	if m.line != nil {
 		m.alternating(x)
 	} else {
-		m.direct()
+		m.direct(x)
 	}
 }
 
+// leakRise is by how many degrees the leakage of the device doubles (MBS4991 sheet: 1 uA at
+// 25, 10 uA at 85 deg C).
+const leakRise = 18
+
+// leaking returns what the capacitors and the device lead away at the peak. Within
+// the breakover current the device's share is counted already.
+func (m *breakoverModel) leaking(x []float64) float64 {
+	if m.idle < 0 {
+		return m.s.leak
+	}
+	return m.s.leak + x[m.idle]*math.Exp2((x[m.ambient]-25)/leakRise)
+}
+
 // direct works out the charge from a dc supply.
-func (m *breakoverModel) direct() {
+func (m *breakoverModel) direct(x []float64) {
 	s := &m.s
 	peak, valley := s.lower+m.sign*s.vp, s.lower+m.sign*s.vv
-	idle, _ := m.charging.thevenin()
-	s.reach = m.sign * (idle - s.lower)
+	m.charging.draw(m.sign * m.leaking(x))
+	s.reach = m.sign * (m.standing.solver.Voltage(m.charging.node) - s.lower)
 	p := m.charging.tangent(peak)
 	s.vth, s.rth = p.vth, p.rth
 	s.atPeak = m.sign * p.current(peak)

@@ -197,7 +197,7 @@ func (m *scrGate) boardResistance() float64 {
 	if m.g.short <= 0 {
 		return math.Inf(1)
 	}
-	return max(m.cycle.vp/m.g.short-m.cycle.on, 0)
+	return max((m.cycle.vp-m.cycle.drop)/m.g.short-m.cycle.on, 0)
 }
 
 // unchecked lists the rules that a missing rating keeps from being judged.

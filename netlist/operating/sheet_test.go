@@ -37,7 +37,7 @@ func TestSheetCircuitsReproduceTheSheets(t *testing.T) {
 		// V_O of breakover devices into 20 ohm: DB3 at least 3 V (the safe one of two makers), MBS4991 3.5 V.
 		{"DB3 V_O", "t\nV1 vcc 0 60\nR1 vcc e 10k\nC1 e 0 0.1u\nX1 e k DB3\nR3 k 0 20\n", "discharge_peak_current", low, 20, 3, 1e-5},
 		{"MBS4991 V_O", "t\nV1 vcc 0 20\nR1 vcc e 10k\nC1 e 0 0.1u\nX1 e k MBS4991\nR3 k 0 20\n", "discharge_peak_current", low, 20, 3.5, 1e-5},
-		{"DB3 V_BO", "t\nV1 vcc 0 60\nR1 vcc e 10k\nC1 e 0 0.1u\nX1 e k DB3\nR3 k 0 20\n", "peak_voltage", high, 0, 36, 1e-5},
+		{"DB3 V_BO", "t\nV1 vcc 0 60\nR1 vcc e 10k\nC1 e 0 0.1u\nX1 e k DB3\nR3 k 0 20\n", "peak_voltage", high, 0, 36, 2e-4},
 		// LM334: 67.7 mV/R_SET at 25 deg C (TI SNVS746E), and 1N5290: 0.47 mA.
 		{"LM334", "t\nV1 vcc 0 20\nX5 vcc r e LM334\nR1 r e 677\nC1 e 0 0.1u\nX1 e 0 vcc 2N2646\n", "charging_current_at_valley", nominal, 0, 100e-6, 0.005},
 		{"1N5290", "t\nV1 vcc 0 20\nX5 vcc e 1N5290\nC1 e 0 0.1u\nX1 e 0 vcc 2N2646\n", "charging_current_at_valley", nominal, 0, 0.47e-3, 1e-6},

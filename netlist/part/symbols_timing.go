@@ -60,7 +60,9 @@ var putSymbols = []Symbol{
 var diacSymbols = []Symbol{
 	{"vbo", "V", Either, "breakover voltage"},
 	{"vbo_symmetry", "V", Greatest, "difference of the two breakover voltages"},
+	{"vbo_tc", "1/K", Either, "temperature coefficient of the breakover voltage"},
 	{"ibo", "A", Greatest, "breakover current"},
+	{"idrm", "A", Greatest, "leakage below the breakover voltage"},
 	{"dv", "V", Least, "step back of the voltage at breakover"},
 	{"vf", "V", Greatest, "voltage when it conducts"},
 	{"ih", "A", Either, "holding current"},
