@@ -28,6 +28,7 @@ type bench struct {
 	traits  []trait
 	ambient int // index of the ambient temperature
 	slots   map[*circuit.Element]slot
+	types   map[string]int     // variable of the base-emitter voltage of a type of transistor
 	active  []*circuit.Element // transistors and regulators that a stage counts as its own
 	// ignoreTempco takes every board part as free of drift.
 	ignoreTempco bool

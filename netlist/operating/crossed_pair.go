@@ -39,9 +39,8 @@ var (
 // crossedPair adds the figures of the two transistors.
 func (m *putModel) crossedPair() error {
 	pnp, npn := m.stage.Anchor, m.stage.Partner
-	v := m.baseEmitter(pnp)
-	m.vt = points{[]float64{10e3}, []int{v.index}, false}
-	m.pair = &pairFigures{m: m, up: m.gain(pnp), vbe: m.baseEmitter(npn).index, down: m.gain(npn)}
+	m.vt = points{[]float64{10e3}, []int{m.baseEmitter(pnp)}, false}
+	m.pair = &pairFigures{m: m, up: m.gain(pnp), vbe: m.baseEmitter(npn), down: m.gain(npn)}
 	m.pair.start = m.assumed("I_0", "A", assumedPairStart, "current at which the gains reach one together, assumed")
 	m.vv = m.assumed("vv", "V", assumedPairValley, "valley voltage of a crossed pair, assumed")
 	m.on = m.assumed("ron", "ohm", assumedPairOn, "on-resistance of a crossed pair, assumed")

@@ -12,20 +12,21 @@ import (
 
 // mesh is a piece of the board as the dc solver sees it.
 type mesh struct {
-	bench    *bench
-	net      network.Network
-	solver   *network.Solver
-	nodes    map[circuit.NodeID]network.Node
-	have     map[*circuit.Element]bool
-	branches []meshBranch
-	crest    bool    // sine sources stand at their crest
-	polarity float64 // +1 or -1: which crest
-	bends    bool    // diodes stand in it: straight only in pieces
-	sines    []*circuit.Element
-	shapes   []shape
-	sources  []*regulated // current sources in it
-	there    []float64
-	back     []float64
+	bench     *bench
+	net       network.Network
+	solver    *network.Solver
+	nodes     map[circuit.NodeID]network.Node
+	have      map[*circuit.Element]bool
+	branches  []meshBranch
+	crest     bool    // sine sources stand at their crest
+	polarity  float64 // +1 or -1: which crest
+	bends     bool    // diodes stand in it: straight only in pieces
+	sines     []*circuit.Element
+	shapes    []shape
+	junctions []junctionAt
+	sources   []*regulated // current sources in it
+	there     []float64
+	back      []float64
 }
 
 // meshBranch ties a branch of the solver to the slot that gives its value.

@@ -103,6 +103,9 @@ func (m *relaxation) readyToCharge(capacitor circuit.NodeID) error {
 		return err
 	}
 	m.charging.transfer = make([]float64, m.standing.solver.Nodes())
+	if len(m.standing.junctions) > 0 {
+		m.charging.slopes(m.nominal(), m.standing.node(m.stage.Nodes["lower"]))
+	}
 	for _, r := range m.standing.sources {
 		own := contains(m.stage.Parts[stage.CurrentSource], r.element)
 		if own && m.source == nil && (r.high == m.charging.node || r.low == m.charging.node) {

@@ -18,30 +18,23 @@ var sourceCompliance = &rule.Rule{
 	Source: "LM334: TI SNVS746E, at least 1 V, at most 30 V (ST), 1 uA .. 10 mA; transistor saturated below " +
 		"0.3 V: common practice, no source",
 	Failing: `Seed drill pulse, linear ramp
-V1 vcc 0 20
-D1 b vcc DZ
-R6 b 0 4.7k
-R5 vcc ee 10k
-Q1 e b ee QP
-C1 e 0 100n
+V1 vcc 0 12
+XI1 vcc e 1N5303
+C1 e 0 2.2u
 XQ2 e b1 b2 2N2647
 R2 vcc b2 330
-R3 b1 0 27
-.model DZ D(bv=6.2)
-.model QP PNP(bf=150)
+R3 b1 0 47
+*> C1 kind=film
 .end
 `,
 	Mended: `Seed drill pulse, linear ramp
-V1 vcc 0 20
-R7 vcc b 1k
-R6 b 0 15k
-R5 vcc ee 1k
-Q1 e b ee QP
-C1 e 0 100n
-XQ2 e b1 b2 2N2646
+V1 vcc 0 15
+XI1 vcc e 1N5303
+C1 e 0 2.2u
+XQ2 e b1 b2 2N2647
 R2 vcc b2 330
-R3 b1 0 27
-.model QP PNP(bf=150)
+R3 b1 0 47
+*> C1 kind=film
 .end
 `,
 	Check: each(rule.Case{

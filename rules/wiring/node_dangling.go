@@ -41,7 +41,11 @@ func openOnPurpose(n *circuit.Node, formulas bool) bool {
 	if leftOpen(strings.ToLower(n.Name[len(instance(n.Name)):])) {
 		return true
 	}
-	switch n.Pins[0].Element.Kind {
+	pin := n.Pins[0]
+	if gate, ok := pin.Element.Pin("gate"); ok && pin.Element.Kind == circuit.Diac && gate == pin.Element.Nodes[pin.Index] {
+		return true // the gate of a silicon switch may stay open
+	}
+	switch pin.Element.Kind {
 	case circuit.Controlled, circuit.Unknown, circuit.Line, circuit.Jig:
 		return true
 	case circuit.VoltageSource:

@@ -44,6 +44,9 @@ func shorted(e *circuit.Element) (rule.Grade, string) {
 	if _, ok := twice(e.Nodes); !ok || circuit.IsLink(e) {
 		return 0, ""
 	}
+	if e.Kind == circuit.Diac && len(e.Nodes) > 2 && e.Nodes[0] != e.Nodes[len(e.Nodes)-1] {
+		return 0, "" // the gate of a silicon switch tied to one of its ends
+	}
 	switch e.Kind {
 	case circuit.UJT, circuit.PUT, circuit.SCR, circuit.Triac:
 		return rule.Hold, "it cannot work"
