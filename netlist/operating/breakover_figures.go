@@ -52,11 +52,15 @@ func (m *breakoverModel) lineFigures() {
 }
 
 func (m *breakoverModel) reachWorking() string {
-	if m.line == nil {
+	switch s := &m.s; {
+	case m.line == nil:
 		return "what the charging network would bring the capacitor to, less what leaks, if nothing broke over"
+	case m.charging.bends:
+		return "highest voltage in a cycle that repeats while nothing breaks over, followed through its rectifiers"
+	default:
+		return fmt.Sprintf("crest of the capacitor's voltage on the line, %s behind %s: crest/sqrt(1 + (w R C)^2)",
+			show(s.vth-s.lower, "V"), show(s.rth, "ohm"))
 	}
-	return fmt.Sprintf("crest of the capacitor's voltage on the line, %s behind %s: crest/sqrt(1 + (w R C)^2)",
-		show(m.line.crest, "V"), show(m.line.ohms, "ohm"))
 }
 
 // surge returns the greatest current through the device.
@@ -83,7 +87,7 @@ func (m *breakoverModel) limits() {
 	m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min, bent: m.charging.bends,
 		value: func() float64 { return s.reach - (s.vp - s.volts) }, limit: func() float64 { return s.volts }, working: m.reachWorking})
 	if m.line != nil {
-		s.ip, s.iv = math.NaN(), math.NaN() // the capacitor delivers I_BO, and every zero crossing lets go
+		s.iv = math.NaN() // every zero crossing lets go
 	}
 	m.windowLimits("", m.holdingNote())
 	if limit, mark, ok := m.rated("itrm"); ok {
@@ -118,9 +122,7 @@ func (m *breakoverModel) guideByPeak() {
 // unchecked lists the rules that a missing rating keeps from being judged.
 func (m *breakoverModel) unchecked() []Unchecked {
 	var list []Unchecked
-	if m.line != nil {
-		list = append(list, Unchecked{"timing-current-below-peak", "the capacitor delivers the breakover current; on the line only the voltage is judged"})
-	} else if m.ibo < 0 {
+	if m.ibo < 0 {
 		list = append(list, Unchecked{"timing-current-below-peak", missing("breakover current", m.ratings)})
 	}
 	switch {

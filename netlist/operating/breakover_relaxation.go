@@ -39,12 +39,14 @@ type breakoverModel struct {
 	outletNode, upper, lowerNode          network.Node
 	sign                                  float64 // +1 or -1: direction of the charge
 	line                                  *lineFeed
+	gains                                 gains
 	blocked                               bool // a one-sided device stands the wrong way round
 }
 
 type breakoverState struct {
 	cycle
 	reach   float64 // highest voltage that the network brings the capacitor to
+	reverse float64 // greatest voltage the other way, of a stage on the line
 	standby float64
 	volts   float64 // V_BO
 	first   float64 // time of the first breakover after the zero crossing of the line
@@ -172,6 +174,12 @@ func (m *breakoverModel) networks() error {
 	if err := m.readyToCharge(n["capacitor"]); err != nil {
 		return err
 	}
+	if m.line != nil {
+		if e := m.standing.smoothing(m.stage.Parts[stage.TimingCapacitor]); e != nil {
+			return fmt.Errorf("%s smooths what the line feeds, which is not worked out", e.Designator)
+		}
+		m.onTheLine()
+	}
 	m.outlet, m.share, m.keepOff = n["outlet"], m.on, m.stage.Parts[stage.TimingResistor]
 	if err := m.readyToEmpty(); err != nil {
 		return err
@@ -206,14 +214,19 @@ func (m *breakoverModel) gateAlone() {
 
 // direction finds which way the capacitor charges on the nominal board.
 func (m *breakoverModel) direction() {
+	first := m.stage.Anchor.Nodes[0]
+	faces := m.w.Net(first) == m.w.Net(m.stage.Nodes["terminal"])
+	if m.line != nil {
+		m.lineDirection(faces)
+		m.evaluate(m.nominal())
+		return
+	}
 	m.evaluate(m.nominal())
-	if m.line == nil && m.s.reach < 0 {
+	if m.s.reach < 0 {
 		m.sign = -1
 	}
 	_, _, oneSided := m.ratings.Limit("vr")
-	first := m.stage.Anchor.Nodes[0]
-	faces := m.w.Net(first) == m.w.Net(m.stage.Nodes["terminal"])
-	m.blocked = oneSided && m.line == nil && faces != (m.sign > 0)
+	m.blocked = oneSided && faces != (m.sign > 0)
 	m.evaluate(m.nominal())
 }
 

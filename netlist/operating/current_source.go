@@ -37,6 +37,10 @@ var (
 // taken for a current source (common practice, no source).
 const saturation = 0.3
 
+// saturated is the collector-emitter voltage in volt below which a transistor surely is
+// no current source any more.
+const saturated = 0.1
+
 // reverseGain is the current gain of a transistor run backwards, emitter and
 // collector swapped (common practice, no source).
 const reverseGain = 1

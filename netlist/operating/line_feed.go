@@ -3,15 +3,17 @@ package operating
 import (
 	"fmt"
 	"math"
+
+	"standoff/netlist/circuit"
 )
 
-// lineFeed is a charging network whose sources swing: the voltage behind its
-// resistance is offset + crest sin(2 pi f t). Exact for a linear network; rectifiers
-// in it are not worked out.
+// lineFeed is a charging network whose sources swing.
 type lineFeed struct {
-	hertz         float64
-	offset, crest float64 // V over the lower rail
-	ohms          float64
+	hertz      float64
+	crest      float64 // swing of the voltage behind the resistance, of a network without diodes
+	ohms       float64
+	plus, less []float64 // values of the branches at the two crests
+	*ride
 }
 
 // newLineFeed returns what feeds a mesh from a line, nil where nothing does.
@@ -21,120 +23,156 @@ func newLineFeed(m *mesh) (*lineFeed, error) {
 	}
 	f := &lineFeed{}
 	for _, e := range m.sines {
-		if len(e.Wave.Args) < 3 || e.Wave.Args[2] <= 0 {
+		args := e.Wave.Args
+		if len(args) < 3 || args[2] <= 0 {
 			return nil, fmt.Errorf("the frequency of %s is not known", e.Designator)
 		}
-		if f.hertz != 0 && f.hertz != e.Wave.Args[2] {
+		if f.hertz != 0 && f.hertz != args[2] {
 			return nil, fmt.Errorf("it is fed by sources of different frequencies")
 		}
-		f.hertz = e.Wave.Args[2]
+		if len(args) > 4 && args[4] != 0 || len(m.sines) > 1 && len(args) > 3 && phased(args[3:]) {
+			return nil, fmt.Errorf("%s is damped or shifted in time, which is not worked out", e.Designator)
+		}
+		f.hertz = args[2]
 	}
-	if m.bends {
-		return nil, fmt.Errorf("it is fed from the line through a rectifier, which is not worked out")
+	if len(m.sources) > 0 || m.amplifies() {
+		return nil, fmt.Errorf("a current source that the line feeds is not worked out")
 	}
 	return f, nil
 }
 
-// response is the capacitor's voltage over the lower rail while it charges:
+// phased reports whether delay or phase of a sine source is not zero.
+func phased(rest []float64) bool {
+	return rest[0] != 0 || len(rest) > 2 && rest[2] != 0
+}
+
+// amplifies reports whether a transistor stands in a mesh.
+func (m *mesh) amplifies() bool {
+	for i := range m.branches {
+		if m.branches[i].gain > 0 {
+			return true
+		}
+	}
+	return false
+}
+
+// smoothing returns a capacitor in the charging network that is not the timing
+// capacitor, nil where there is none.
+func (m *mesh) smoothing(own []*circuit.Element) *circuit.Element {
+	w := m.bench.w
+	for _, e := range w.Circuit.Elements {
+		if e.Kind != circuit.Capacitor || contains(own, e) {
+			continue
+		}
+		for _, n := range e.Nodes {
+			if _, inside := m.nodes[w.Net(n)]; inside && !w.IsFixed(n) {
+				return e
+			}
+		}
+	}
+	return nil
+}
+
+// crests loads the values of a point at both crests.
+func (f *lineFeed) crests(m *mesh, x []float64) {
+	m.polarity = -1
+	m.load(x)
+	f.less = append(f.less[:0], m.solver.Values...)
+	m.polarity = 1
+	m.load(x)
+	f.plus = append(f.plus[:0], m.solver.Values...)
+}
+
+// instant sets the sources to a share of their swing, -1 .. 1.
+func (f *lineFeed) instant(m *mesh, share float64) {
+	for i := range m.branches {
+		if m.branches[i].sine {
+			b := m.branches[i].branch
+			m.solver.Values[b] = (f.plus[b]+f.less[b])/2 + share*(f.plus[b]-f.less[b])/2
+		}
+	}
+}
+
+// response is the capacitor's voltage over the lower rail while the network stays
+// straight: from a time on
 //
-//	v(t) = offset + crest/sqrt(1 + (w tau)^2) sin(w t - phi) + k e^(-t/tau)
+//	v(t) = offset + crest/sqrt(1 + (w tau)^2) sin(w t - phi) + k e^(-(t - t0)/tau)
 //
 // with phi = atan(w tau) (linear first-order network on a sine; any textbook of
 // circuit analysis).
 type response struct {
-	w, tau, offset, swing, phi, k float64
+	w, tau, offset, swing, phi float64
+	from, volts, k             float64
 }
 
-// from returns the response that has a voltage at a time.
-func (f *lineFeed) from(t, volts, farads float64) response {
-	r := response{w: 2 * math.Pi * f.hertz, tau: f.ohms * farads, offset: f.offset}
-	r.phi = math.Atan(r.w * r.tau)
-	r.swing = f.crest * math.Cos(r.phi)
-	r.k = (volts - r.offset - r.swing*math.Sin(r.w*t-r.phi)) * math.Exp(t/r.tau)
+// newResponse returns the response of a network of offset + crest sin(w t) behind a time
+// constant that has a voltage at a time.
+func newResponse(w, tau, offset, crest float64) response {
+	r := response{w: w, tau: tau, offset: offset, phi: math.Atan(w * tau)}
+	r.swing = crest * math.Cos(r.phi)
 	return r
 }
 
-func (r response) at(t float64) float64 {
-	return r.offset + r.swing*math.Sin(r.w*t-r.phi) + r.k*math.Exp(-t/r.tau)
+// starting returns the response that has a voltage at a time.
+func (r response) starting(t, volts float64) response {
+	r.from, r.volts = t, volts
+	r.k = volts - r.steady(t)
+	return r
 }
 
-// responseSteps is into how many steps a half cycle is cut to bracket a crossing.
-const responseSteps = 64
+func (r response) steady(t float64) float64 { return r.offset + r.swing*math.Sin(r.w*t-r.phi) }
+
+func (r response) at(t float64) float64 {
+	return r.volts + r.steady(t) - r.steady(r.from) + r.k*math.Expm1(-(t-r.from)/r.tau)
+}
+
+// cycleSteps is into how many steps a cycle is cut to bracket a crossing.
+const cycleSteps = 96
+
+// steps calls f at times from one to another in steps of a cycle's part and stops where it says so;
+// it returns the two times between which that was.
+func (r response) steps(from, to float64, f func(t float64) bool) (before, after float64, found bool) {
+	count := max(1, math.Ceil((to-from)*r.w/(2*math.Pi)*cycleSteps))
+	before = from
+	for k := 1.0; k <= count; k++ {
+		after = from + (to-from)*k/count
+		if f(after) {
+			return before, after, true
+		}
+		before = after
+	}
+	return 0, 0, false
+}
+
+// bisect narrows down when a condition sets in.
+func bisect(before, after float64, f func(t float64) bool) float64 {
+	for range 45 {
+		middle := before/2 + after/2
+		if f(middle) {
+			after = middle
+		} else {
+			before = middle
+		}
+	}
+	return after
+}
 
 // reaches returns when the response passes a voltage upwards between two times.
 func (r response) reaches(volts, from, to float64) (float64, bool) {
-	step := (to - from) / responseSteps
-	for k := 1; k <= responseSteps; k++ {
-		low, high := from+float64(k-1)*step, from+float64(k)*step
-		if r.at(high) < volts {
-			continue
-		}
-		for range 50 {
-			middle := low/2 + high/2
-			if r.at(middle) < volts {
-				low = middle
-			} else {
-				high = middle
-			}
-		}
-		return high, true
+	above := func(t float64) bool { return r.at(t) >= volts }
+	before, after, found := r.steps(from, to, above)
+	if !found {
+		return 0, false
 	}
-	return 0, false
+	return bisect(before, after, above), true
 }
 
 // highest returns the highest voltage between two times, on a grid.
 func (r response) highest(from, to float64) float64 {
-	most := math.Inf(-1)
-	for k := 0; k <= responseSteps; k++ {
-		most = max(most, r.at(from+(to-from)*float64(k)/responseSteps))
-	}
+	most := r.at(from)
+	r.steps(from, to, func(t float64) bool {
+		most = max(most, r.at(t))
+		return false
+	})
 	return most
-}
-
-// maxPulses bounds the breakovers that are counted in a half cycle; more are told as
-// infinitely many.
-const maxPulses = 30
-
-// alternating works out a half cycle of the line from an empty capacitor at the
-// zero crossing.
-func (m *breakoverModel) alternating(x []float64) {
-	s, f := &m.s, m.line
-	plus, ohms := m.charging.thevenin()
-	m.standing.polarity = -1
-	m.standing.load(x)
-	m.charging.draw(0)
-	minus, _ := m.charging.thevenin()
-	f.offset, f.crest, f.ohms = (plus+minus)/2-s.lower, (plus-minus)/2, ohms
-	sign := 1.0
-	if f.crest < 0 {
-		sign = -1 // the capacitor charges in the other half first: the same by symmetry
-	}
-	g := lineFeed{hertz: f.hertz, offset: sign * f.offset, crest: sign * f.crest, ohms: ohms}
-	s.rth, s.vth = ohms, g.offset+g.crest+s.lower
-	steady := g.from(0, 0, s.c)
-	s.reach = g.offset + steady.swing
-	half := 0.5 / f.hertz
-	s.pulses, s.first = 0, math.Inf(1)
-	t, volts := 0.0, 0.0
-	for s.pulses < maxPulses {
-		ramp := g.from(t, volts, s.c)
-		at, ok := ramp.reaches(s.vp, t, half)
-		if !ok {
-			s.pulses += max(ramp.highest(t, half)-volts, 0) / (s.vp - volts)
-			break
-		}
-		if s.pulses == 0 {
-			s.first = at
-		}
-		s.pulses++
-		t, volts = at+s.discharge, s.vv
-	}
-	if s.pulses >= maxPulses {
-		s.pulses = math.Inf(1)
-	}
-	s.fires = !math.IsInf(s.first, 1)
-	s.charge, s.ramp, s.period = math.Inf(1), 1, math.Inf(1)
-	if s.fires {
-		s.charge, s.period, s.ramp = s.first, half, 0
-	}
 }

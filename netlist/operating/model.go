@@ -47,8 +47,10 @@ type contest struct {
 	// verdict a doubt at most.
 	limitMark part.Mark
 	because   string
-	working   func() string
-	bent      bool // its worst point may lie between the ends of a variable
+	// surely is the value at or below which a least limit is broken whatever it is.
+	surely  float64
+	working func() string
+	bent    bool // its worst point may lie between the ends of a variable
 }
 
 // ratio is what is driven to its extreme: value over limit.
@@ -236,7 +238,7 @@ func (m *model) decide(k int, e numeric.Extreme) (Comparison, bool) {
 func (m *model) certainty(k int, at []float64) (bool, string) {
 	c := &m.contests[k]
 	m.evaluate(at)
-	nothing := c.bound == Min && c.value() <= 0 // fails whatever the limit
+	nothing := c.bound == Min && c.value() <= c.surely // fails whatever the limit
 	if c.because != "" && !nothing {
 		return false, c.because
 	}

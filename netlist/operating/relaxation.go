@@ -316,10 +316,13 @@ func (m *relaxation) sourceLimits(x func() []float64) {
 	if r.assumed {
 		because = "the least voltage across " + r.element.Designator + " is assumed"
 	}
-	working := m.sourceWorking
+	working, surely := m.sourceWorking, 0.0
+	if r.amperes == nil {
+		surely = saturated
+	}
 	add := func(name, limitName, unit string, bound Bound, value, limit func() float64) {
 		m.compare(contest{name: name, limitName: limitName, unit: unit, bound: bound, value: value, limit: limit,
-			because: because, limitMark: r.mark, working: working})
+			because: because, surely: surely, limitMark: r.mark, working: working})
 	}
 	add("current_source_voltage", "least_voltage", "V", Min, func() float64 { return m.room }, func() float64 { return r.least(x()) })
 	if !math.IsInf(r.greatest, 1) {

@@ -44,8 +44,10 @@ func shorted(e *circuit.Element) (rule.Grade, string) {
 	if _, ok := twice(e.Nodes); !ok || circuit.IsLink(e) {
 		return 0, ""
 	}
-	if e.Kind == circuit.Diac && len(e.Nodes) > 2 && e.Nodes[0] != e.Nodes[len(e.Nodes)-1] {
-		return 0, "" // the gate of a silicon switch tied to one of its ends
+	if one, ok := e.Pin("1"); ok && e.Kind == circuit.Diac {
+		if two, _ := e.Pin("2"); one != two {
+			return 0, "" // the gate of a silicon switch tied to one of its ends
+		}
 	}
 	switch e.Kind {
 	case circuit.UJT, circuit.PUT, circuit.SCR, circuit.Triac:

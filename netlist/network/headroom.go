@@ -1,0 +1,24 @@
+package network
+
+import "math"
+
+// Headroom appends, for every diode in the order of the network, how far the last
+// solution is from leaving the segment that the diode is on, in volt: above it and
+// below it, +Inf where the segment has no end. Negative means that it has left. While the diodes
+// stay, every entry goes straight with the values of sources.
+func (s *Solver) Headroom(to []float64) []float64 {
+	for i := range s.diodes {
+		d := &s.diodes[i]
+		b := s.branches[d.branch]
+		v, threshold := s.Voltage(b.a)-s.Voltage(b.b), s.Values[d.branch]
+		switch d.segment {
+		case 1:
+			to = append(to, math.Inf(1), v-threshold)
+		case -1:
+			to = append(to, -d.breakdown-v, math.Inf(1))
+		default:
+			to = append(to, threshold-v, v+d.breakdown)
+		}
+	}
+	return to
+}

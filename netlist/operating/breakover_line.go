@@ -1,0 +1,120 @@
+package operating
+
+import (
+	"math"
+)
+
+// maxPulses bounds the breakovers that are counted in a half cycle; more are told as
+// infinitely many.
+const maxPulses = 30
+
+// onTheLine readies what follows the capacitor where the line feeds the stage.
+func (m *breakoverModel) onTheLine() {
+	m.line.ride = &ride{feed: m.line, charging: m.charging, sign: 1, turn: 1}
+}
+
+// alternating works the stage out on the line: from an empty capacitor at the zero crossing
+// that begins the half cycle which charges it.
+func (m *breakoverModel) alternating(x []float64) {
+	s, f := &m.s, m.line
+	r := f.ride
+	f.crests(m.standing, x)
+	r.lower, r.farads, r.leak, r.sign = s.lower, s.c, m.leaking(x), m.sign
+	m.firstCrest()
+	m.gains.ready = false
+	steady := r.settled()
+	s.reach, s.reverse = steady.most, max(-steady.least, 0)
+	s.first, s.pulses = r.climb(0, 0, s.vp, &m.gains), 0
+	m.count(x)
+	s.atPeak = m.deliverable()
+	s.fires = !math.IsInf(s.first, 1) && s.atPeak > 0
+	s.charge, s.ramp, s.period = math.Inf(1), 1, math.Inf(1)
+	if !s.fires {
+		return
+	}
+	s.charge, s.ramp = s.first, 0
+	s.period = 0.5 / f.hertz
+	if m.charging.bends {
+		s.period = r.climb(s.first+s.discharge, s.vv, s.vp, &m.gains) - s.first
+	}
+}
+
+// firstCrest finds which crest of the line charges the capacitor in its direction.
+func (m *breakoverModel) firstCrest() {
+	r, s := m.line.ride, &m.s
+	r.turn = 1
+	r.set(1)
+	m.charging.draw(0)
+	plus := r.idle()
+	s.vth, s.rth = m.charging.thevenin()
+	r.set(-1)
+	m.charging.draw(0)
+	if minus := r.idle(); minus > plus {
+		r.turn = -1
+		s.vth, s.rth = m.charging.thevenin()
+	}
+}
+
+// count works out how many breakovers fall into the first half cycle. Where the network feeds more
+// than the holding current right after one, the device stays on until the line crosses zero.
+func (m *breakoverModel) count(x []float64) {
+	s, r := &m.s, m.line.ride
+	half := 0.5 / m.line.hertz
+	t, volts := 0.0, 0.0
+	for s.pulses < maxPulses && t < half {
+		tr := r.across(t, volts, half, s.vp)
+		if !tr.stopped {
+			s.pulses += max(tr.most-volts, 0) / (s.vp - volts)
+			return
+		}
+		s.pulses++
+		t, volts = tr.at+s.discharge, s.vv
+		if m.ih >= 0 && t < half {
+			if s.c*r.slope(t, volts) > x[m.ih] {
+				return
+			}
+		}
+	}
+	if s.pulses >= maxPulses {
+		s.pulses = math.Inf(1)
+	}
+}
+
+// deliverable returns the greatest current that the network feeds into the capacitor at V_BO: at the
+// crest, or where the capacitor gets there later in the half cycle, then. A rectifier keeps
+// the voltage for the next crest.
+func (m *breakoverModel) deliverable() float64 {
+	s, r := &m.s, m.line.ride
+	quarter := 0.25 / m.line.hertz
+	t := quarter
+	if !m.charging.bends && !math.IsInf(s.first, 1) {
+		t = max(quarter, math.Mod(s.first, 4*quarter))
+	}
+	return s.c * r.slope(t, s.vp)
+}
+
+// slope returns how fast the capacitor's voltage rises at a time and voltage.
+func (r *ride) slope(t, volts float64) float64 {
+	p := r.piece(t, volts)
+	return p.swing*p.w*math.Cos(p.w*t-p.phi) - p.k/p.tau
+}
+
+// lineDirection finds which way a line-fed capacitor charges: the way the device leads, if it
+// leads one way only, else the way in which the nominal board gets farther.
+func (m *breakoverModel) lineDirection(faces bool) {
+	r, x := m.line.ride, m.nominal()
+	if _, _, oneSided := m.ratings.Limit("vr"); oneSided {
+		if !faces {
+			m.sign = -1
+		}
+		return
+	}
+	if !m.charging.bends {
+		return
+	}
+	m.evaluate(x)
+	r.sign = 1
+	if low, high := r.bounds(); -low > high {
+		m.sign = -1
+	}
+}
