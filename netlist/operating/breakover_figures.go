@@ -90,6 +90,13 @@ func (m *breakoverModel) limits() {
 		s.iv = math.NaN() // every zero crossing lets go
 	}
 	m.windowLimits("", m.holdingNote())
+	for i := range m.contests {
+		if c := &m.contests[i]; m.line != nil && c.limitName == "peak_current_required" {
+			c.working = func() string {
+				return show(s.atPeak, "A") + " from the line with the capacitor at V_BO, at the crest or when it gets there"
+			}
+		}
+	}
 	if limit, mark, ok := m.rated("itrm"); ok {
 		m.compare(contest{name: "discharge_peak_current", limitName: "itrm", unit: "A", bound: Max, value: m.surge, bent: true,
 			limit: limit, limitMark: mark, working: m.surgeWorking})

@@ -1,16 +1,36 @@
 package operating
 
 import (
+	"fmt"
 	"math"
+	"slices"
+
+	"standoff/netlist/stage"
 )
 
 // maxPulses bounds the breakovers that are counted in a half cycle; more are told as
 // infinitely many.
 const maxPulses = 30
 
-// onTheLine readies what follows the capacitor where the line feeds the stage.
-func (m *breakoverModel) onTheLine() {
-	m.line.ride = &ride{feed: m.line, charging: m.charging, sign: 1, turn: 1}
+// onTheLine readies what follows the capacitor where the line feeds the stage; where it feeds a
+// reservoir, the stage counts as one on dc.
+func (m *breakoverModel) onTheLine() error {
+	if m.line == nil {
+		return nil
+	}
+	own := m.stage.Parts[stage.TimingCapacitor]
+	reservoir := m.standing.smoothing(own)
+	if reservoir == nil {
+		m.line.ride = &ride{feed: m.line, charging: m.charging, sign: 1, turn: 1}
+		return nil
+	}
+	if m.standing.smoothing(append(slices.Clone(own), reservoir)) != nil || !contains(m.stage.Parts[stage.Reservoir], reservoir) {
+		return fmt.Errorf("%s stands in what the line charges it through, which is not worked out", reservoir.Designator)
+	}
+	var err error
+	m.smooth, err = m.newSmoothFeed(reservoir)
+	m.line = nil
+	return err
 }
 
 // alternating works the stage out on the line: from an empty capacitor at the zero crossing
@@ -90,7 +110,7 @@ func (m *breakoverModel) deliverable() float64 {
 	if !m.charging.bends && !math.IsInf(s.first, 1) {
 		t = max(quarter, math.Mod(s.first, 4*quarter))
 	}
-	return s.c * r.slope(t, s.vp)
+	return s.c*r.slope(t, s.vp) + r.leak
 }
 
 // slope returns how fast the capacitor's voltage rises at a time and voltage.

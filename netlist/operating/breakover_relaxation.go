@@ -40,6 +40,7 @@ type breakoverModel struct {
 	sign                                  float64 // +1 or -1: direction of the charge
 	line                                  *lineFeed
 	gains                                 gains
+	smooth                                *smoothFeed // rectified and smoothed, taken for dc
 	blocked                               bool // a one-sided device stands the wrong way round
 }
 
@@ -174,11 +175,8 @@ func (m *breakoverModel) networks() error {
 	if err := m.readyToCharge(n["capacitor"]); err != nil {
 		return err
 	}
-	if m.line != nil {
-		if e := m.standing.smoothing(m.stage.Parts[stage.TimingCapacitor]); e != nil {
-			return fmt.Errorf("%s smooths what the line feeds, which is not worked out", e.Designator)
-		}
-		m.onTheLine()
+	if err := m.onTheLine(); err != nil {
+		return err
 	}
 	m.outlet, m.share, m.keepOff = n["outlet"], m.on, m.stage.Parts[stage.TimingResistor]
 	if err := m.readyToEmpty(); err != nil {
@@ -214,7 +212,7 @@ func (m *breakoverModel) gateAlone() {
 
 // direction finds which way the capacitor charges on the nominal board.
 func (m *breakoverModel) direction() {
-	first := m.stage.Anchor.Nodes[0]
+	first, _ := m.stage.Anchor.Pin("1")
 	faces := m.w.Net(first) == m.w.Net(m.stage.Nodes["terminal"])
 	if m.line != nil {
 		m.lineDirection(faces)
@@ -236,6 +234,9 @@ func (m *breakoverModel) at(x []float64) {
 	m.point = x
 	mesh.polarity = 1
 	mesh.load(x)
+	if m.smooth != nil {
+		m.smooth.load(mesh, x)
+	}
 	m.charging.draw(0)
 	s.lower, s.upper = mesh.solver.Voltage(m.lowerNode), mesh.solver.Voltage(m.upper)
 	s.standby = mesh.solver.Voltage(m.outletNode) - s.lower

@@ -88,7 +88,29 @@ func (m *relaxation) periodAt(x []float64) float64 {
 
 // periods returns the extremes of the period over a box.
 func (m *relaxation) periods(box []numeric.Variable) numeric.Extreme {
-	return numeric.Extremes(box, 1, func(x, y []float64) { y[0] = m.periodAt(x) }, numeric.Hints{})[0]
+	return m.extremesOver(box, m.target)
+}
+
+// extremesOver returns the extremes over a box of something that depends on the period
+// as the figure does.
+func (m *relaxation) extremesOver(box []numeric.Variable, of func() float64) numeric.Extreme {
+	whole := m.box
+	m.box = box
+	defer func() { m.box = whole }()
+	list := make([]sought, 1, 4)
+	for _, s := range m.figuresSought() {
+		if s.guide || s.gate {
+			s.lowOnly, s.highOnly = true, true // only for its help
+			list = append(list, s)
+		}
+	}
+	for _, o := range m.outputs {
+		if o.name == "period" {
+			list[0] = sought{bent: o.bent, guided: o.guided, gated: o.gated, kinked: o.kinked}
+		}
+	}
+	list[0].of = of
+	return m.search(list)[0]
 }
 
 // shareSteps is into how many steps the way from one extreme to the other is cut.
@@ -167,7 +189,12 @@ func (m *relaxation) trimmer(b *Budget) {
 		}
 		return m.periodAt(set)
 	}
-	e := numeric.Extremes(m.box, 1, func(x, y []float64) { y[0] = m.periodAt(x) / settled(x) }, numeric.Hints{})[0]
+	e := m.extremesOver(m.box, func() float64 {
+		x, period := m.point, m.target()
+		share := period / settled(x)
+		m.evaluate(x) // what else is read there
+		return share
+	})
 	b.Service = e.High / e.Low
 	if !(b.Service <= b.Target.High/b.Target.Low) {
 		return

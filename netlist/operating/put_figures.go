@@ -94,6 +94,9 @@ func (m *putModel) limits() {
 		m.iv = points{} // nothing is promised there
 		m.evaluate(m.nominal())
 	}
+	if m.vt.beyond(m.s.ohms) && len(m.vt.ohms) > 1 {
+		m.timeBecause = "the sheet gives no offset voltage at a gate resistance of " + show(m.s.ohms, "ohm")
+	}
 	m.windowLimits(ip, iv)
 	m.dividerLimits()
 	m.ratingLimits()

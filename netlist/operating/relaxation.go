@@ -27,8 +27,9 @@ type relaxation struct {
 	mouth    network.Node // the outlet in pulse
 	cycle    *cycle       // the result at the last evaluated point
 
-	terminal string // where the device takes the charge in, in words
-	leaks    bool   // the device leaks besides the capacitors
+	terminal    string // where the device takes the charge in, in words
+	leaks       bool   // the device leaks besides the capacitors
+	timeBecause string // why a verdict on a time is no more than a doubt, "" for nothing
 	// bentWindow says that the valley side of the window bends too.
 	bentWindow bool
 
@@ -423,7 +424,7 @@ func (m *relaxation) targetLimits() {
 	working := func() string { return "T = " + show(period(), "s") + ", f = " + show(frequency(), "Hz") }
 	add := func(name, unit string, bound Bound, value func() float64, limit float64) {
 		m.compare(contest{name: name, limitName: "target", unit: unit, bound: bound, value: value, gated: true,
-			limit: func() float64 { return limit }, working: working})
+			limit: func() float64 { return limit }, because: m.timeBecause, working: working})
 	}
 	if t.Frequency != nil {
 		add("frequency_lowest", "Hz", Min, frequency, t.Frequency.Low)

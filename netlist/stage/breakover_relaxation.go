@@ -32,10 +32,11 @@ func (r *recogniser) breakoverFrom(anchor *circuit.Element, terminal, outlet cir
 		terminalWords: "breakover device", outletWords: "its far side"}}
 	s := u.stage
 	s.Nodes["outlet"], s.Nodes["terminal"] = outlet, terminal
-	s.Gap = steps(u.apart, u.capacitorNode, u.rails, u.capacitors, u.charging, u.fed)
+	s.Gap = steps(u.apart, u.capacitorNode, u.rails, u.returns, u.charging, u.fed)
 	if s.Gap == "" {
 		u.lead()
 		u.supplies()
+		u.bridge()
 		u.beside()
 		u.gate()
 	}
@@ -81,7 +82,7 @@ func (u *breakoverReading) rails() string {
 			found, most, u.upper = true, away, n
 		}
 	}
-	if !found {
+	if !found && !u.rectified() {
 		return "nothing charges the capacitor"
 	}
 	u.stage.Nodes["upper"], u.stage.Nodes["lower"] = u.upper, u.lower
@@ -109,6 +110,65 @@ func (u *breakoverReading) sourceNets(stop func(circuit.NodeID) bool) []circuit.
 	return list
 }
 
+// rectified takes for the upper rail the net behind which the rectifiers of a floating source (a
+// transformer's winding, a line with its bridge) stand.
+func (u *breakoverReading) rectified() bool {
+	floats := slices.ContainsFunc(u.atNode.Elements, func(e *circuit.Element) bool { return e.Kind == circuit.VoltageSource })
+	for _, e := range u.atNode.Elements {
+		if e.Kind != circuit.Diode || !floats {
+			continue
+		}
+		for _, n := range u.atNode.Nets { // in the order of the walk: the near end comes first
+			if n != u.node && n != u.lower && (n == u.w.Net(e.Nodes[0]) || n == u.w.Net(e.Nodes[1])) {
+				u.upper = n
+				return true
+			}
+		}
+	}
+	return false
+}
+
+// bridge collects the rectifiers beyond the upper rail, the floating source that feeds them, and
+// what smooths the feed.
+func (u *breakoverReading) bridge() {
+	for _, e := range u.atNode.Elements {
+		switch {
+		case e.Kind == circuit.VoltageSource:
+			u.stage.add(Supply, e)
+		case e.Kind == circuit.Diode:
+			u.stage.add(Rectifier, e)
+		}
+	}
+	for _, n := range u.atNode.Nets {
+		if n == u.node || u.w.IsFixed(n) {
+			continue
+		}
+		pins := u.w.On(n)
+		if !slices.ContainsFunc(pins, func(p circuit.Pin) bool { return p.Element.Kind == circuit.Diode }) {
+			continue
+		}
+		for _, p := range pins {
+			if e := p.Element; e.Kind == circuit.Capacitor && u.isRail(u.w.Other(e, n)) {
+				u.stage.add(Reservoir, e)
+			}
+		}
+	}
+}
+
+// returns collects the timing capacitor; where none ends on a rail, the minus of a bridge may be
+// meant, which only counts as one where it is the reference.
+func (u *breakoverReading) returns() string {
+	gap := u.capacitors()
+	if gap == "" {
+		return ""
+	}
+	diode := func(e *circuit.Element) bool { return e.Kind == circuit.Diode }
+	if !u.w.IsFixed(u.outlet) && slices.ContainsFunc(u.atOutlet.Elements, diode) {
+		return gap + "; a rail behind rectifiers counts where node 0 is put there"
+	}
+	return gap
+}
+
 // fed turns away what is timed from the line through a thyristor's own load: that
 // is phase control.
 func (u *breakoverReading) fed() string {
@@ -119,12 +179,18 @@ func (u *breakoverReading) fed() string {
 			if !ok || e.Kind != circuit.Triac && e.Kind != circuit.SCR || u.w.Net(gate) != n {
 				continue
 			}
-			if _, dc := u.w.Potential(u.upper); !dc {
+			if _, dc := u.w.Potential(u.upper); !dc && !u.smoothed() {
 				return "it fires " + e.Designator + " from the line: phase control is not worked out"
 			}
 		}
 	}
 	return ""
+}
+
+// smoothed reports whether a reservoir stands behind the rectifiers.
+func (u *breakoverReading) smoothed() bool {
+	u.bridge()
+	return len(u.stage.Parts[Reservoir]) > 0
 }
 
 // gate names a third terminal that is wired: it moves the breakover voltage.
