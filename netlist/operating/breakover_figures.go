@@ -41,14 +41,22 @@ func (m *breakoverModel) lineFigures() {
 		return "crest of the capacitor's voltage less V_BO"
 	})
 	m.last().gate = true
-	m.figure("first_breakover_time", "s", func() float64 { return s.first }, func() string {
-		return "from the zero crossing, empty capacitor, to the first breakover"
-	})
-	m.last().gated, m.last().bent = true, true
-	m.figure("pulses_per_half_cycle", "", func() float64 { return s.pulses }, func() string {
-		return "breakovers before the line crosses zero again; the fraction says how far the last ramp gets"
-	})
-	m.last().bent, m.last().gated = true, true
+	paced := func(of *float64) func() float64 {
+		return func() float64 {
+			m.pace()
+			return *of
+		}
+	}
+	rate := func(name, unit string, of *float64, working string) {
+		m.figure(name, unit, paced(of), func() string { return working })
+		m.last().bent, m.last().gated = true, true
+	}
+	rate("first_breakover_time", "s", &s.first, "from the zero crossing, empty capacitor, to the first breakover")
+	if m.charging.bends {
+		rate("pulse_interval", "s", &s.period, "from the first breakover to the next; it moves in steps of the line's cycle")
+	}
+	rate("pulses_per_half_cycle", "", &s.pulses,
+		"breakovers before the line crosses zero again; the fraction says how far the last ramp gets")
 }
 
 func (m *breakoverModel) reachWorking() string {

@@ -44,16 +44,29 @@ func (m *breakoverModel) alternating(x []float64) {
 	m.gains.ready = false
 	steady := r.settled()
 	s.reach, s.reverse = steady.most, max(-steady.least, 0)
-	s.first, s.pulses = r.climb(0, 0, s.vp, &m.gains), 0
-	m.count(x)
+	m.paced = false
+	s.first, s.pulses, s.period = math.Inf(1), 0, math.Inf(1)
+	s.charge, s.ramp = math.Inf(1), 1
+	if !m.charging.bends {
+		m.pace()
+	}
 	s.atPeak = m.deliverable()
-	s.fires = !math.IsInf(s.first, 1) && s.atPeak > 0
-	s.charge, s.ramp, s.period = math.Inf(1), 1, math.Inf(1)
-	if !s.fires {
+	s.fires = s.reach > s.vp && s.atPeak > 0
+}
+
+// pace works out, when it is asked for, when the stage breaks over.
+func (m *breakoverModel) pace() {
+	if m.paced {
 		return
 	}
-	s.charge, s.ramp = s.first, 0
-	s.period = 0.5 / f.hertz
+	m.paced = true
+	s, r := &m.s, m.line.ride
+	s.first = r.climb(0, 0, s.vp, &m.gains)
+	m.count(m.point)
+	if math.IsInf(s.first, 1) {
+		return
+	}
+	s.charge, s.ramp, s.period = s.first, 0, 0.5/m.line.hertz
 	if m.charging.bends {
 		s.period = r.climb(s.first+s.discharge, s.vv, s.vp, &m.gains) - s.first
 	}

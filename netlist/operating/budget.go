@@ -272,21 +272,21 @@ func (m *relaxation) tolerances(b *Budget) {
 	}
 	for _, t := range usualTolerances {
 		box := slices.Clone(m.box)
-		narrower := false
+		var narrower []string
 		for _, e := range parts {
 			i := m.slots[e].index
 			v := quantity.Tolerance(box[i].Nominal, t, t)
 			if v.Low > box[i].Low || v.High < box[i].High {
-				narrower = true
+				narrower = append(narrower, e.Designator)
 				box[i].Low, box[i].High = max(v.Low, box[i].Low), min(v.High, box[i].High)
 			}
 		}
-		if !narrower {
+		if len(narrower) == 0 {
 			continue
 		}
 		e := m.periods(box)
 		if e.High/e.Low <= b.Target.High/b.Target.Low {
-			b.Tolerance = t
+			b.Tolerance, b.Parts = t, narrower
 			if e.Low < b.Target.Low || e.High > b.Target.High {
 				b.Scale = math.Sqrt(b.Target.Low / e.Low * b.Target.High / e.High)
 			}

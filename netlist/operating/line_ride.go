@@ -151,7 +151,7 @@ func (r *ride) settled() trip {
 		return trip{most: p.offset + math.Abs(p.swing), least: p.offset - math.Abs(p.swing)}
 	}
 	low, high := r.bounds()
-	for range 18 {
+	for range settling {
 		middle := low/2 + high/2
 		if r.whole(middle).volts > middle {
 			low = middle
@@ -161,6 +161,9 @@ func (r *ride) settled() trip {
 	}
 	return r.whole(low)
 }
+
+// settling is how often the way to the settled voltage is halved: to 0.01 % of it.
+const settling = 14
 
 // bounds returns between which voltages the network can bring the capacitor at all.
 func (r *ride) bounds() (low, high float64) {
