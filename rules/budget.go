@@ -23,7 +23,7 @@ func Remedies(b *operating.Budget) []string {
 	if b.Tolerance > 0 {
 		text := fmt.Sprintf("%s with %.3g %% would meet it", listed(b.Parts), b.Tolerance*100)
 		if b.Scale != 1 {
-			text += fmt.Sprintf(", their time constant %.3g times as long", b.Scale)
+			text += fmt.Sprintf(", with a time constant %.3g times as long", b.Scale)
 		}
 		list = append(list, text)
 	} else if have > want && len(b.Parts) > 0 {
