@@ -1,0 +1,225 @@
+package operating
+
+import (
+	"fmt"
+	"math"
+
+	"standoff/netlist/circuit"
+	"standoff/netlist/network"
+	"standoff/netlist/quantity"
+	"standoff/netlist/stage"
+)
+
+// regulator adds a two-terminal current source: an ideal source that a diode
+// bypasses backwards, behind a resistance. Below its least voltage the whole is that
+// resistance, above it the current.
+func (m *mesh) regulator(e *circuit.Element) error {
+	high, low, set, ok := stage.RegulatorEnds(m.bench.w, e)
+	if !ok {
+		return fmt.Errorf("how %s is wired as a current source is not understood", e.Designator)
+	}
+	r, err := m.bench.law(e, set, low)
+	if err != nil {
+		return err
+	}
+	from, to, middle := m.node(high), m.node(low), m.net.Node()
+	r.element, r.high, r.low = e, from, to
+	drop := m.net.Resistor(from, middle)
+	source := m.net.Current(middle, to)
+	bypass := m.net.Diode(to, middle)
+	none := slot{index: -1, tempco: -1}
+	m.branches = append(m.branches,
+		meshBranch{branch: drop, slot: none, zener: -1, set: func(x []float64) float64 { return r.least(x) / r.amperes(x) }},
+		meshBranch{branch: source, slot: none, zener: -1, set: r.amperes},
+		meshBranch{branch: bypass, slot: none, zener: -1, set: func([]float64) float64 { return 0 }})
+	m.shapes = append(m.shapes, shape{bypass, bypassSlope})
+	m.sources = append(m.sources, r)
+	return nil
+}
+
+// bypassSlope is the resistance in ohm of the diode that bypasses an ideal source
+// backwards, small against any resistance of a current source.
+const bypassSlope = 1e-2
+
+// law returns the current of a regulator with what it needs to keep it.
+func (b *bench) law(e *circuit.Element, set []*circuit.Element, low circuit.NodeID) (*regulated, error) {
+	ohms, err := b.setting(set, low)
+	if err != nil {
+		return nil, err
+	}
+	if e.Kind == circuit.NJF || e.Kind == circuit.PJF {
+		return b.fieldEffect(e, ohms)
+	}
+	if e.Ratings == nil {
+		return nil, fmt.Errorf("nothing is known of the part %s", partName(e))
+	}
+	r := &regulated{greatest: math.Inf(1), upTo: math.Inf(1)}
+	least := 1.0
+	if v, _, ok := e.Ratings.Limit("v_min"); ok {
+		least = v
+	} else {
+		r.assumed = true
+	}
+	r.least = func([]float64) float64 { return least }
+	if v, mark, ok := e.Ratings.Limit("v_max"); ok {
+		r.greatest, r.mark = v, mark
+	}
+	if ohms == nil {
+		i, ok := b.named(e, "i", "A")
+		if !ok {
+			return nil, fmt.Errorf("the current of %s is unknown", partName(e))
+		}
+		r.amperes = func(x []float64) float64 { return x[i] }
+		return r, nil
+	}
+	return r, b.perKelvin(r, e, ohms)
+}
+
+// setting returns the resistance of the network that sets a current, nil for none.
+// One end of it is the low end of the source, the other hangs on its third terminal.
+func (b *bench) setting(set []*circuit.Element, low circuit.NodeID) (func(x []float64) float64, error) {
+	if len(set) == 0 {
+		return nil, nil
+	}
+	if len(set) == 1 {
+		s := b.element(set[0])
+		return func(x []float64) float64 { return b.value(s, x) }, nil
+	}
+	m := &mesh{bench: b, nodes: map[circuit.NodeID]network.Node{b.w.Net(low): 0}, have: map[*circuit.Element]bool{}}
+	for _, e := range set {
+		for _, n := range e.Nodes {
+			n = b.w.Net(n)
+			if _, known := m.nodes[n]; !known {
+				m.nodes[n] = m.net.Node()
+			}
+		}
+		if err := m.element(e); err != nil {
+			return nil, err
+		}
+	}
+	far, ok := b.farEnd(set, low)
+	if !ok {
+		return nil, fmt.Errorf("the resistors that set its current are not understood")
+	}
+	if err := m.compile(); err != nil {
+		return nil, err
+	}
+	rise, at := make([]float64, m.solver.Nodes()), m.nodes[far]
+	return func(x []float64) float64 {
+		m.load(x)
+		m.solver.Solve()
+		m.solver.Transfer(at, rise)
+		return rise[at]
+	}, nil
+}
+
+// farEnd returns the net of a setting network on which the regulator itself hangs.
+func (b *bench) farEnd(set []*circuit.Element, low circuit.NodeID) (circuit.NodeID, bool) {
+	for _, e := range set {
+		for _, n := range e.Nodes {
+			for _, p := range b.w.On(n) {
+				if isActive(p.Element.Kind) && b.w.Net(n) != b.w.Net(low) {
+					return b.w.Net(n), true
+				}
+			}
+		}
+	}
+	return 0, false
+}
+
+// named adds a figure of an element's card under the element's own name.
+func (b *bench) named(e *circuit.Element, symbol, unit string) (int, bool) {
+	i, ok := b.rating(e.Ratings, symbol, unit)
+	if ok {
+		b.traits[i].name = symbol + " of " + e.Designator
+	}
+	return i, ok
+}
+
+// perKelvin gives a regulator the law of a current that a resistor sets:
+//
+//	I = v_per_k T ratio/R_set, T in kelvin
+//
+// (LM134/234/334 data sheet, TI SNVS746E: 214 uV/K across the resistor, the whole
+// n/(n - 1) times its current). The error of v_per_k is that of the sheet for the
+// range in which the nominal current lies.
+func (b *bench) perKelvin(r *regulated, e *circuit.Element, ohms func(x []float64) float64) error {
+	slope, ok := b.named(e, "v_per_k", "V/K")
+	if !ok {
+		return fmt.Errorf("how a resistor sets the current of %s is unknown", partName(e))
+	}
+	ratio := 1.0
+	if v, ok := e.Ratings.Test("ratio"); ok {
+		ratio = v
+	}
+	r.amperes = func(x []float64) float64 {
+		return x[slope] * (x[b.ambient] + 273.15) * ratio / ohms(x)
+	}
+	typical := b.box[slope].Nominal
+	nominal := r.amperes((&model{bench: b}).nominal())
+	for _, class := range []struct {
+		error, edge string
+		beyond      func(edge float64) bool
+	}{
+		{"set_error_small", "i_small", func(edge float64) bool { return nominal < edge }},
+		{"set_error_large", "i_large", func(edge float64) bool { return nominal > edge }},
+	} {
+		edge, ok := e.Ratings.Test(class.edge)
+		if share, _, known := e.Ratings.Limit(class.error); ok && known && class.beyond(edge) {
+			b.box[slope].Low, b.box[slope].High = typical*(1-share), typical*(1+share)
+		}
+	}
+	if v, _, ok := e.Ratings.Limit("i_min"); ok {
+		r.from = v
+	}
+	if v, _, ok := e.Ratings.Limit("i_max"); ok {
+		r.upTo = v
+	}
+	return nil
+}
+
+// fieldEffect gives a junction field-effect transistor with its gate behind its own
+// source resistor the current at which both agree:
+//
+//	I = I_DSS (1 - I R_S/V_P)^2
+//
+// (square law of the saturated channel; Bell, Solid State Pulse Circuits, ex. 9-4).
+// Drain to gate needs V_P whatever the resistor. I_DSS is the card's idss, or beta
+// vto^2. The drift of both is left out.
+func (b *bench) fieldEffect(e *circuit.Element, ohms func(x []float64) float64) (*regulated, error) {
+	pinch, ok := cardSpread(e, "vto")
+	if !ok {
+		return nil, fmt.Errorf("the pinch-off voltage of %s (vto) is unknown", partName(e))
+	}
+	if pinch.Low < 0 {
+		pinch = quantity.Spread{Low: -pinch.High, Nominal: -pinch.Nominal, High: -pinch.Low}
+	}
+	full, ok := cardSpread(e, "idss")
+	name, unit := "I_DSS", "A"
+	square := !ok
+	if square {
+		if full, ok = cardSpread(e, "beta"); !ok {
+			return nil, fmt.Errorf("the saturation current of %s (idss, or beta) is unknown", partName(e))
+		}
+		name, unit = "beta", "A/V^2"
+	}
+	if !(pinch.Low > 0) || !(full.Low > 0) {
+		return nil, fmt.Errorf("the card of %s makes no sense", partName(e))
+	}
+	p := b.add(trait{name: "V_P of " + e.Designator, unit: "V"}, pinch)
+	d := b.add(trait{name: name + " of " + e.Designator, unit: unit}, full)
+	r := &regulated{greatest: math.Inf(1), upTo: math.Inf(1), least: func(x []float64) float64 { return x[p] }}
+	r.amperes = func(x []float64) float64 {
+		limit := x[d]
+		if square {
+			limit *= x[p] * x[p]
+		}
+		if ohms == nil {
+			return limit
+		}
+		r := ohms(x)
+		root := (math.Sqrt(x[p]*x[p]+4*limit*r*x[p]) - x[p]) / (2 * limit * r)
+		return limit * root * root
+	}
+	return r, nil
+}

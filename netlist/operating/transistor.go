@@ -1,0 +1,195 @@
+package operating
+
+import (
+	"fmt"
+	"math"
+
+	"standoff/netlist/circuit"
+	"standoff/netlist/network"
+	"standoff/netlist/quantity"
+)
+
+// saturation is the collector-emitter voltage in volt down to which a transistor is
+// taken for a current source (common practice, no source).
+const saturation = 0.3
+
+// saturated is the collector-emitter voltage in volt below which a transistor surely is
+// no current source any more.
+const saturated = 0.1
+
+// reverseGain is the current gain of a transistor run backwards, emitter and
+// collector swapped (common practice, no source).
+const reverseGain = 1
+
+// transistor adds a bipolar transistor: two piecewise-linear junctions, of whose
+// currents the gains' shares flow on to the far side (Ebers and Moll's transistor,
+// straight in pieces). Early's effect is left out.
+func (m *mesh) transistor(e *circuit.Element) error {
+	c, okC := e.Pin("collector")
+	b, okB := e.Pin("base")
+	emitter, okE := e.Pin("emitter")
+	if !okC || !okB || !okE {
+		return fmt.Errorf("the terminals of %s are not known", e.Designator)
+	}
+	v := m.bench.junctionVolts(e)
+	nc, nb, ne := m.node(c), m.node(b), m.node(emitter)
+	forward := m.junction(e, v, [3]network.Node{nb, ne, nc})
+	forward.gain = m.bench.gain(e)
+	m.junctions = append(m.junctions, junctionAt{forward.branch, nb, ne})
+	if e.Kind == circuit.PNP {
+		m.junctions[len(m.junctions)-1] = junctionAt{forward.branch, ne, nb}
+	}
+	back := m.junction(e, v, [3]network.Node{nb, nc, ne})
+	back.gain = m.bench.exactGain(e)
+	m.branches = append(m.branches, forward, back)
+	high, low := nc, ne
+	if e.Kind == circuit.PNP {
+		high, low = ne, nc
+	}
+	m.sources = append(m.sources, &regulated{element: e, high: high, low: low, greatest: math.Inf(1), upTo: math.Inf(1), assumed: true,
+		least: func([]float64) float64 { return saturation }})
+	return nil
+}
+
+// junction adds one junction of a transistor: from base to near (npn), with its
+// share flowing on from far.
+func (m *mesh) junction(e *circuit.Element, volts func(x []float64) float64, nodes [3]network.Node) meshBranch {
+	base, near, far := nodes[0], nodes[1], nodes[2]
+	mb := meshBranch{kind: circuit.Diode, slot: slot{index: -1, tempco: -1}, zener: -1, set: volts}
+	if e.Kind == circuit.NPN {
+		mb.branch = m.net.Diode(base, near)
+		m.net.Follow(mb.branch, far, base)
+	} else {
+		mb.branch = m.net.Diode(near, base)
+		m.net.Follow(mb.branch, base, far)
+	}
+	return mb
+}
+
+// thermal is the thermal voltage kT/q in volt at 25 deg C: a junction's slope
+// resistance is this over its current.
+const thermal = 0.0257
+
+// mismatch is by how much the base-emitter voltages of two transistors of one type
+// differ at the same current and temperature, in volt (common practice, no source).
+var mismatch = quantity.Spread{Low: -0.01, High: 0.01}
+
+// junctionVolts returns the threshold of a transistor's junction: the base-emitter
+// voltage of its type with its drift, and what the single transistor differs by where
+// others of the type stand beside it. The slope resistance at the working point takes
+// kT/q of it.
+func (b *bench) junctionVolts(e *circuit.Element) func(x []float64) float64 {
+	kind, own := b.baseEmitter(e), -1
+	for _, other := range b.active {
+		if other != e && other.Kind == e.Kind && other.PartName == e.PartName {
+			own = b.assumed("mismatch of "+e.Designator, "V", mismatch, "assumed")
+			break
+		}
+	}
+	return func(x []float64) float64 {
+		v := x[kind] + diodeDrift*(x[b.ambient]-25) - thermal
+		if own >= 0 {
+			v += x[own]
+		}
+		return v
+	}
+}
+
+// baseEmitter adds the base-emitter voltage of a type of transistor, once: the card's
+// vbe, else assumed. It returns the variable.
+func (b *bench) baseEmitter(e *circuit.Element) int {
+	key := string(e.Kind) + " " + e.PartName
+	if i, known := b.types[key]; known {
+		return i
+	}
+	var i int
+	if v, ok := cardSpread(e, "vbe"); ok {
+		i = b.add(trait{name: "V_BE of " + e.Designator, unit: "V"}, v)
+	} else {
+		i = b.assumed("V_BE of "+e.Designator, "V", assumedBaseEmitter, "assumed")
+	}
+	if b.types == nil {
+		b.types = map[string]int{}
+	}
+	b.types[key] = i
+	return i
+}
+
+// junctionAt is a base-emitter junction in the solver: anode and cathode.
+type junctionAt struct {
+	branch network.Branch
+	a, c   network.Node
+}
+
+// Slope resistances of junctions lie between these, in ohm: those of 25 mA and of
+// 1 uA.
+const leastSlope, greatestSlope = 1, 25e3
+
+// slopes sets the slope resistance of every base-emitter junction to that of its
+// current on the nominal board with the capacitor near the lower rail. It is kept for
+// all boards: within one decade of current the straight line is off by some tens of
+// millivolts, which the spread of the threshold covers.
+func (c *charging) slopes(nominal []float64, lower network.Node) {
+	m := c.mesh
+	for range 8 {
+		m.load(nominal)
+		c.draw(0)
+		c.seize(m.solver.Voltage(lower) + 1)
+		for _, j := range m.junctions {
+			if !m.solver.Conducts(j.branch) {
+				continue
+			}
+			slope := m.solver.Slope(j.branch)
+			amperes := (m.solver.Voltage(j.a) - m.solver.Voltage(j.c) - m.solver.Values[j.branch]) / slope
+			m.solver.SetDiode(j.branch, min(max(thermal/max(amperes, 1e-12), leastSlope), greatestSlope), math.Inf(1), 1)
+		}
+	}
+	c.held = math.NaN()
+}
+
+// gain adds the current gain: the card's bf - from half to twice of it where no
+// ends are given - else assumed.
+func (b *bench) gain(e *circuit.Element) int {
+	v, ok := cardSpread(e, "bf")
+	if ok && !v.IsExact() {
+		return b.add(trait{name: "gain of " + e.Designator}, v)
+	}
+	why := "assumed"
+	if ok && v.Nominal > 0 {
+		v, why = quantity.Spread{Low: v.Nominal / 2, Nominal: v.Nominal, High: 2 * v.Nominal}, "half to twice the card's, assumed"
+	} else {
+		v = assumedGain
+	}
+	return b.assumed("gain of "+e.Designator, "", v, why)
+}
+
+// exactGain adds the gain of a transistor run backwards.
+func (b *bench) exactGain(e *circuit.Element) int {
+	return b.add(trait{name: "reverse gain of " + e.Designator}, quantity.Exact(reverseGain))
+}
+
+// cardSpread returns a figure of a card of SPICE's own types: name_min and name_max,
+// or name alone.
+func cardSpread(e *circuit.Element, name string) (quantity.Spread, bool) {
+	if e.Ratings == nil {
+		return quantity.Spread{}, false
+	}
+	get := func(key string) (float64, bool) {
+		f, ok := e.Ratings.Figures[key]
+		return f.Typ, ok && f.HasTyp
+	}
+	typical, ok := get(name)
+	low, hasLow := get(name + "_min")
+	high, hasHigh := get(name + "_max")
+	if !ok && !(hasLow && hasHigh) {
+		return quantity.Spread{}, false
+	}
+	s := quantity.Spread{Low: typical, Nominal: typical, High: typical}
+	if hasLow && hasHigh {
+		s.Low, s.High = min(low, high), max(low, high)
+		if !ok {
+			s.Nominal = (low + high) / 2
+		}
+	}
+	return s, true
+}
