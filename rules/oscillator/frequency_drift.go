@@ -10,11 +10,11 @@ var frequencyDrift = &rule.Rule{
 	ID: "frequency-drift", Group: group,
 	Title: "The rate drifts with temperature.",
 	Why: "Over the declared ambient range, with everything else unchanged, the rate of a board moves: by " +
-		"the emitter diode, the bar, and the temperature coefficients of the parts. Where that alone " +
-		"leaves the target, no trimming helps.",
+		"the junctions of the devices, the bar, a current source, the temperature coefficients of the parts and " +
+		"the class of a ceramic capacitor. Where that alone leaves the target, no trimming helps.",
 	Formula: "(greatest - least frequency)/frequency of the nominal board over the ambient range; hold where " +
 		"it leaves the target, doubt above 1 % per 10 K",
-	Source: "limit: common practice, no source",
+	Source: "limit: common practice, no source; ceramic classes C0G, X7R, Y5V: EIA-198",
 	Failing: `Tide gauge sampler
 V1 vcc 0 20
 R1 vcc e 100k

@@ -9,7 +9,9 @@ var frequencyOffTarget = &rule.Rule{
 	ID: "frequency-off-target", Group: group,
 	Title: "Some boards miss the declared frequency or period.",
 	Why: "With every part spread, tolerance, supply, temperature and all of a potentiometer's travel " +
-		"counted, the rate leaves the declared target on some boards.",
+		"counted, the rate leaves the declared target on some boards. The worksheet divides " +
+		"the spread among the parts. Of a stage that is declared latch=ok the time from an empty capacitor to the " +
+		"first pulse counts.",
 	Formula: "T = R_th C ln((V_th - V_V)/(V_th - V_P)) + (R_on + R_B1 + " +
 		"R_E) C ln(V_P/V_V) within the target",
 	Source: "Boylestad and Nashelsky, eq. 17.13 and below",

@@ -12,11 +12,13 @@ var currentAboveValley = &rule.Rule{
 	Why: "After the discharge the emitter stops conducting only where its current falls below the valley " +
 		"current I_V. Where the charging network supplies more, the transistor stays on, the emitter sits " +
 		"at the valley voltage and the stage is dead until the supply is taken away. It happens first " +
-		"with a part of low valley current, on a high supply, at the low end of a potentiometer.",
+		"with a part of low valley current, on a high supply, at the low end of a potentiometer. A programmable " +
+		"unijunction asks for the I_V of its gate resistance, a breakover device for its holding current. A stage that " +
+		"is declared latch=ok, or fires only thyristors that are, need not run on.",
 	Formula: "(V_th - V_V)/R_th < I_V; below its test voltage I_V is carried over as I_V V_BB/V_test; derated " +
 		"to 0.6 at 85 deg C and for 470 ohm or more at base two (a doubt)",
 	Source: "Boylestad and Nashelsky, eq. 17.7; the sheets guarantee I_V at 20 V with 100 ohm; derating: " +
-		"memory",
+		"memory; PUT: 2N6027 data sheet, straight in logarithms over R_G",
 	Failing: `Mist timer
 V1 vcc 0 20
 R1 vcc e 2.2k
