@@ -40,7 +40,7 @@ func (m *breakoverModel) lineFigures() {
 	m.figure("breakover_margin", "V", func() float64 { return s.reach - s.vp }, func() string {
 		return "crest of the capacitor's voltage less V_BO"
 	})
-	m.last().gate = true
+	m.last().gate, m.last().bent = true, m.charging.bends
 	paced := func(of *float64) func() float64 {
 		return func() float64 {
 			m.pace()
@@ -101,7 +101,7 @@ func (m *breakoverModel) limits() {
 	for i := range m.contests {
 		if c := &m.contests[i]; m.line != nil && c.limitName == "peak_current_required" {
 			c.working = func() string {
-				return show(s.atPeak, "A") + " from the line with the capacitor at V_BO, at the crest or when it gets there"
+				return show(s.atPeak, "A") + " from the line with the capacitor at V_BO, at the crest or when the capacitor gets there"
 			}
 		}
 	}
@@ -141,7 +141,9 @@ func (m *breakoverModel) unchecked() []Unchecked {
 		list = append(list, Unchecked{"timing-current-below-peak", missing("breakover current", m.ratings)})
 	}
 	switch {
-	case m.line != nil: // every zero crossing lets go
+	case m.line != nil:
+		list = append(list, Unchecked{"timing-current-above-valley", "every zero crossing of the line lets go; whether the device " +
+			"stays on until then is not judged, and pulses are counted as if it did not"})
 	case m.isOneShot():
 		list = append(list, Unchecked{"timing-current-above-valley", oneShotNote})
 	case m.ih < 0:

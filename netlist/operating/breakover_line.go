@@ -62,7 +62,7 @@ func (m *breakoverModel) pace() {
 	m.paced = true
 	s, r := &m.s, m.line.ride
 	s.first = r.climb(0, 0, s.vp, &m.gains)
-	m.count(m.point)
+	m.count()
 	if math.IsInf(s.first, 1) {
 		return
 	}
@@ -88,9 +88,9 @@ func (m *breakoverModel) firstCrest() {
 	}
 }
 
-// count works out how many breakovers fall into the first half cycle. Where the network feeds more
-// than the holding current right after one, the device stays on until the line crosses zero.
-func (m *breakoverModel) count(x []float64) {
+// count works out how many breakovers fall into the first half cycle, as if the device let go
+// after each.
+func (m *breakoverModel) count() {
 	s, r := &m.s, m.line.ride
 	half := 0.5 / m.line.hertz
 	t, volts := 0.0, 0.0
@@ -102,11 +102,6 @@ func (m *breakoverModel) count(x []float64) {
 		}
 		s.pulses++
 		t, volts = tr.at+s.discharge, s.vv
-		if m.ih >= 0 && t < half {
-			if s.c*r.slope(t, volts) > x[m.ih] {
-				return
-			}
-		}
 	}
 	if s.pulses >= maxPulses {
 		s.pulses = math.Inf(1)
@@ -114,16 +109,16 @@ func (m *breakoverModel) count(x []float64) {
 }
 
 // deliverable returns the greatest current that the network feeds into the capacitor at V_BO: at the
-// crest, or where the capacitor gets there later in the half cycle, then. A rectifier keeps
-// the voltage for the next crest.
+// crest, or where the capacitor, lagging behind, gets there later in the half cycle, then (at its own
+// crest where it does not). A rectifier keeps the voltage for the next crest.
 func (m *breakoverModel) deliverable() float64 {
 	s, r := &m.s, m.line.ride
-	quarter := 0.25 / m.line.hertz
-	t := quarter
-	if !m.charging.bends && !math.IsInf(s.first, 1) {
-		t = max(quarter, math.Mod(s.first, 4*quarter))
+	angle := math.Pi / 2
+	if !m.charging.bends {
+		p := r.piece(0, 0)
+		angle = max(angle, p.phi+math.Asin(min((s.vp-p.offset)/math.Abs(p.swing), 1)))
 	}
-	return s.c*r.slope(t, s.vp) + r.leak
+	return s.c*r.slope(angle/r.omega(), s.vp) + r.leak
 }
 
 // slope returns how fast the capacitor's voltage rises at a time and voltage.

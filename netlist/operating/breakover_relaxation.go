@@ -40,9 +40,9 @@ type breakoverModel struct {
 	sign                                  float64 // +1 or -1: direction of the charge
 	line                                  *lineFeed
 	gains                                 gains
-	paced                                 bool // the times on the line are worked out
+	paced                                 bool        // the times on the line are worked out
 	smooth                                *smoothFeed // rectified and smoothed, taken for dc
-	blocked                               bool // a one-sided device stands the wrong way round
+	blocked                               bool        // a one-sided device stands the wrong way round
 }
 
 type breakoverState struct {

@@ -5,6 +5,32 @@ import (
 	"testing"
 )
 
+// fromTheLine writes the feed of a board on the line: straight, behind a rectifier or a bridge, or
+// smoothed.
+func (d *deckMaker) fromTheLine() {
+	d.b.WriteString(".model DR D\n")
+	ends, which := "vcc 0", d.IntN(40)
+	if which == 1 {
+		ends = "vcc n"
+	}
+	d.card("V1 %s SIN(0 %g %d)", ends, d.between(30, 400), 50+10*d.IntN(2))
+	from := "p"
+	switch which {
+	case 0:
+		d.card("D1 vcc p DR")
+	case 1:
+		d.card("D1 vcc p DR\nD2 n p DR\nD3 0 vcc DR\nD4 0 n DR")
+	case 2, 3, 4, 5, 6, 7, 8, 9:
+		d.card("D1 vcc p DR\nC9 p 0 %g", d.between(4.7e-6, 100e-6))
+	default:
+		from = "vcc"
+	}
+	d.resistor(from, "e", 1e4, 1e6)
+	if d.IntN(2) == 0 {
+		d.resistor("e", "0", 1e5, 1e7)
+	}
+}
+
 // randomBreakover writes a random breakover oscillator on dc or on the line,
 // sometimes with a thyristor behind it.
 func randomBreakover(seed uint64) string {
@@ -12,11 +38,7 @@ func randomBreakover(seed uint64) string {
 	d.card("random board")
 	line := d.IntN(4) == 0
 	if line {
-		d.card("V1 vcc 0 SIN(0 %g %d)", d.between(30, 400), 50+10*d.IntN(2))
-		d.resistor("vcc", "e", 1e4, 1e6)
-		if d.IntN(2) == 0 {
-			d.resistor("e", "0", 1e5, 1e7)
-		}
+		d.fromTheLine()
 	} else {
 		sign := [...]string{"", "-"}[d.IntN(2)*d.IntN(2)]
 		d.card("V1 vcc 0 %s%g", sign, 12+100*d.Float64())
