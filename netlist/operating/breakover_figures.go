@@ -86,6 +86,7 @@ func (m *breakoverModel) surgeWorking() string {
 // limits lists the comparisons. The nominal board was evaluated last.
 func (m *breakoverModel) limits() {
 	s := &m.s
+	m.reverseLimit()
 	if m.blocked {
 		m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min,
 			value: func() float64 { return -s.reach }, limit: func() float64 { return s.volts },
@@ -113,6 +114,24 @@ func (m *breakoverModel) limits() {
 		m.targetLimits()
 	}
 	m.guideByPeak()
+}
+
+// reverseLimit holds what stands the wrong way across a one-sided device against its rating.
+func (m *breakoverModel) reverseLimit() {
+	limit, mark, ok := m.rated("vr")
+	if !ok || m.line == nil && !m.blocked {
+		return
+	}
+	s := &m.s
+	m.compare(contest{name: "device_reverse_voltage", limitName: "vr", unit: "V", bound: Max, limit: limit, limitMark: mark,
+		bent: m.charging.bends, value: func() float64 {
+			if m.line == nil {
+				return max(-s.reach, 0)
+			}
+			return s.reverse
+		}, working: func() string {
+			return "highest voltage of the capacitor against the direction in which the device leads"
+		}})
 }
 
 // holdingNote says that the sheet promises no least holding current, "" where it does.
@@ -150,6 +169,10 @@ func (m *breakoverModel) unchecked() []Unchecked {
 		list = append(list, Unchecked{"timing-current-above-valley", missing("holding current", m.ratings)})
 	case m.holdingNote() != "":
 		list = append(list, Unchecked{"timing-current-above-valley", m.holdingNote() + ": below it the device may stay on all the same"})
+	}
+	if m.drift < 0 && m.line == nil {
+		list = append(list, Unchecked{"frequency-drift", missing("temperature coefficient of the breakover voltage", m.ratings) +
+			": only what the board's parts drift is judged"})
 	}
 	if _, _, ok := m.ratings.Limit("itrm"); !ok {
 		list = append(list, Unchecked{"emitter-surge-current", missing("repetitive peak current rating", m.ratings)})

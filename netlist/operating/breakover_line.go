@@ -39,7 +39,7 @@ func (m *breakoverModel) alternating(x []float64) {
 	s, f := &m.s, m.line
 	r := f.ride
 	f.crests(m.standing, x)
-	r.lower, r.farads, r.leak, r.sign = s.lower, s.c, m.leaking(x), m.sign
+	r.lower, r.farads, r.bleed, r.sign = s.lower, s.c, m.leaking(x)/s.vp, m.sign
 	m.firstCrest()
 	m.gains.ready = false
 	steady := r.settled()
@@ -118,7 +118,7 @@ func (m *breakoverModel) deliverable() float64 {
 		p := r.piece(0, 0)
 		angle = max(angle, p.phi+math.Asin(min((s.vp-p.offset)/math.Abs(p.swing), 1)))
 	}
-	return s.c*r.slope(angle/r.omega(), s.vp) + r.leak
+	return s.c*r.slope(angle/r.omega(), s.vp) + r.bleed*s.vp
 }
 
 // slope returns how fast the capacitor's voltage rises at a time and voltage.

@@ -43,9 +43,9 @@ func slow(seed uint64) bool { return seed%10 == 0 }
 // lineOracle integrates the capacitor's voltage with the classical Runge-Kutta method; the current of
 // the three networks is written down by hand.
 type lineOracle struct {
-	network                                 uint64 // straight, half wave, bridge
-	crest, hertz, ohms, bleed, leak, farads float64
-	drops                                   [2]float64 // in the two half cycles
+	network                           uint64 // straight, half wave, bridge
+	crest, hertz, ohms, bleed, farads float64
+	drops                             [2]float64 // in the two half cycles
 }
 
 func (o *lineOracle) rise(t, v float64) float64 {
@@ -57,7 +57,7 @@ func (o *lineOracle) rise(t, v float64) float64 {
 	case o.network > 0:
 		i = max(line-o.drops[0]-v, 0) / o.ohms
 	}
-	return (i - v*o.bleed - o.leak) / o.farads
+	return (i - v*o.bleed) / o.farads
 }
 
 // first returns when a voltage is reached from another, and the highest voltage met before a time.
@@ -128,7 +128,7 @@ func TestSettledCrestAgreesWithIntegration(t *testing.T) {
 		o, m := newLineOracle(t, b, text, seed), breakoverOf(t, text)
 		m.evaluate(b.x)
 		g := 1/o.ohms + o.bleed
-		want := o.crest/o.ohms/math.Hypot(g, 2*math.Pi*o.hertz*o.farads) - o.leak/g // by phasors
+		want := o.crest / o.ohms / math.Hypot(g, 2*math.Pi*o.hertz*o.farads) // by phasors
 		if o.network > 0 {
 			cycles := math.Ceil(12 / (o.bleed + 1e-12) * o.farads * o.hertz)
 			if cycles > 400 {
@@ -174,7 +174,7 @@ func newLineOracle(t *testing.T, b built, text string, seed uint64) *lineOracle 
 		}
 	}
 	if strings.Contains(text, "DB3") {
-		o.leak = b.named(t, "idrm") * math.Exp2(heat/leakRise)
+		o.bleed += b.named(t, "idrm") * math.Exp2(heat/leakRise) / b.m.cycle.vp
 	}
 	drop := func(k int) float64 { return b.named(t, fmt.Sprintf("drop of D%d", k)) - 2e-3*heat }
 	switch o.network {

@@ -10,7 +10,7 @@ type ride struct {
 	feed                  *lineFeed
 	charging              *charging
 	lower, farads         float64
-	leak                  float64 // current that the capacitor loses besides
+	bleed                 float64 // siemens across the capacitor: what leaks, as a conductance
 	sign, turn            float64 // direction of the charge; which crest comes first
 	here, driven, swung   []float64
 	level, byVolts, bySin []float64 // room of each diode: level + byVolts v + bySin sin(w t)
@@ -59,7 +59,8 @@ func (r *ride) piece(t, volts float64) response {
 	}
 	crest := r.idle() - first
 	c.held = math.NaN()
-	return newResponse(r.omega(), ohms*r.farads, first-crest*sin-r.leak*ohms, crest).starting(t, volts)
+	share := 1 / (1 + r.bleed*ohms)
+	return newResponse(r.omega(), share*ohms*r.farads, share*(first-crest*sin), share*crest).starting(t, volts)
 }
 
 // room works out how the room of every diode goes with the capacitor's voltage and the

@@ -10,9 +10,9 @@ var breakoverNotReached = &rule.Rule{
 	Title: "The capacitor never gets to the breakover voltage of the device.",
 	Why: "A diac, silicon switch or neon lamp leads nothing until its breakover voltage stands across it. " +
 		"Where the charging network cannot bring the capacitor there with the highest device, the lowest " +
-		"supply and the heaviest tap, the stage is silent. On the line, resistor and capacitor divide the " +
-		"crest as well.",
-	Formula: "dc: V_th > V_BO(max); line: crest/sqrt(1 + (2 pi f R C)^2) > V_BO(max)",
+		"supply, the heaviest tap and the greatest leakage, the stage is silent. On the line, resistor and " +
+		"capacitor divide the crest as well; behind rectifiers the highest voltage of a settled cycle counts.",
+	Formula: "dc: V_th - I_leak R_th > V_BO(max); line: crest/sqrt(1 + (2 pi f R C)^2) > V_BO(max)",
 	Source: "first-order network on a sine: any textbook of circuit analysis; V_BO: data sheets " +
 		"(DB3: 28 .. 36 V)",
 	Failing: `Beacon strobe trigger
