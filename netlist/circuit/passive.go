@@ -62,8 +62,20 @@ func (p *placing) passiveValue(e *Element, words []syntax.Value) {
 	if ok {
 		p.setValue(e, v)
 	} else if !named {
-		p.fail(p.card.e.Name, "%s has no value", p.shown())
+		p.fail(p.card.e.Name, "%s has no value%s", p.shown(), p.swallowed())
 	}
+}
+
+// swallowed says that a comment begins where the value should stand, as a
+// placeholder $NAME makes one.
+func (p *placing) swallowed() string {
+	text := p.card.deck.File.Text
+	fields := p.card.e.Fields
+	line, _, _ := strings.Cut(text[fields[len(fields)-1].End:], "\n")
+	if word := strings.Fields(line); len(word) > 0 && word[0][0] == '$' {
+		return "; " + source.Visible(word[0]) + " begins a comment"
+	}
+	return ""
 }
 
 // isValue tells a value from the name of a model.

@@ -2,6 +2,7 @@ package syntax
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"github.com/alecthomas/participle/v2/lexer"
@@ -42,6 +43,10 @@ func (t *tail) Parse(lex *lexer.PeekingLexer) error {
 		case tokenClose:
 			return bad(token, "a closing bracket without an opening one")
 		default:
+			if token.Value == "=" && t.table() {
+				lex.Next()
+				continue
+			}
 			v, err := readValue(lex)
 			if err != nil {
 				return err
@@ -49,6 +54,12 @@ func (t *tail) Parse(lex *lexer.PeekingLexer) error {
 			t.fields = append(t.fields, v)
 		}
 	}
+}
+
+// table reports a controlled source with a table, TABLE {expression} = (x,y) ...,
+// whose equals sign stands behind no name.
+func (t *tail) table() bool {
+	return slices.ContainsFunc(t.fields, func(v Value) bool { return strings.EqualFold(v.Text, "table") })
 }
 
 // bracket reads ( ... ): the arguments of a waveform whose name stands just

@@ -22,7 +22,7 @@ func valueSuffixSuspect() *rule.Rule {
 		Formula: "resistor above 0 and below 5 milliohm, or below 0.5 ohm where it sets a stage or lies " +
 			"across more than " +
 			"1 kW of supply; capacitor below 0.05 pF, or from 0.5 F up without volts=; inductor below 1 pH or " +
-			"from 1 kH up",
+			"from 1 kH up (a test rig's 1T is left alone)",
 		Source:  "suffixes: SPICE2 input format; limits: " + practice,
 		Failing: strings.Replace(board("Tram point heater"), "R1 vcc e 100k", "R1 vcc e 1M", 1),
 		Mended:  board("Tram point heater"),
@@ -93,7 +93,7 @@ func (s *sense) absurd(e *circuit.Element) string {
 		return "no timing or filter capacitor is that large; a suffix is missing (volts= says that it is meant)"
 	case e.Kind == circuit.Inductor && v < 1e-12:
 		return "no coil is that small; F behind a number is femto"
-	case e.Kind == circuit.Inductor && v >= 1e3:
+	case e.Kind == circuit.Inductor && v >= 1e3 && v < 1e9:
 		return "no coil is that large; a suffix is missing"
 	}
 	return ""

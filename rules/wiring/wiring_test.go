@@ -56,7 +56,7 @@ func TestSoundBoardsAreLeftAlone(t *testing.T) {
 		"a shunt of 10 milliohm":    "RL vcc a 100\nR9 a 0 10m\n",
 		"a shunt, upper case":       "RL VCC A 100\nR9 A 0 10M\n",
 		"a supercapacitor, meant":   "C9 vcc 0 1\n*> C9 volts=25\n",
-		"a test jig":                "C9 vcc x 1T\nR9 x 0 1k\n",
+		"a test jig":                "C9 vcc x 1T\nR9 x 0 1k\nL9 vcc y 1T\nR8 y 0 1k\n",
 		"1 % values":                "R9 vcc 0 48.7k\n*> R9 tol=1%\n",
 		"old tolerance, E24 values": "R9 vcc 0 51k\n*> R9 tol=20%\n",
 		"insides of a device model": "X9 vcc 0 dev\n.subckt dev p m\nR1 p x 3217\nC1 x m 17.3p\nR2 x m 1meg\n.ends\n",
