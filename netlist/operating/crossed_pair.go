@@ -39,12 +39,13 @@ var (
 // crossedPair adds the figures of the two transistors.
 func (m *putModel) crossedPair() error {
 	pnp, npn := m.stage.Anchor, m.stage.Partner
-	m.vt = points{[]float64{10e3}, []int{m.baseEmitter(pnp)}, false}
+	m.vt = anywhere(m.baseEmitter(pnp))
 	m.pair = &pairFigures{m: m, up: m.gain(pnp), vbe: m.baseEmitter(npn), down: m.gain(npn)}
 	m.pair.start = m.assumed("I_0", "A", assumedPairStart, "current at which the gains reach one together, assumed")
 	m.vv = m.assumed("vv", "V", assumedPairValley, "valley voltage of a crossed pair, assumed")
 	m.on = m.assumed("ron", "ohm", assumedPairOn, "on-resistance of a crossed pair, assumed")
 	m.igao = -1
+	m.drift = m.add(trait{name: "vbe_tc", unit: "V/K"}, quantity.Exact(diodeDrift))
 	var err error
 	m.pair.across, err = m.setting(m.stage.Parts[stage.GateShunt], m.stage.Nodes["diverted"])
 	return err

@@ -114,12 +114,37 @@ func (d drifting) comparisons(target *quantity.Spread) []Comparison {
 	x := d.nominal()
 	low, high := d.over(x)
 	add := func(name string, bound Bound, value, limit float64) {
-		list = append(list, Comparison{Name: name, Value: value, Limit: limit, LimitName: "target", Bound: bound,
-			Unit: "Hz", Working: nominal.Working, Certain: true})
+		c := Comparison{Name: name, Value: value, Limit: limit, LimitName: "target", Bound: bound,
+			Unit: "Hz", Working: nominal.Working}
+		c.Because = d.memoryOf(c)
+		c.Certain = c.Because == ""
+		list = append(list, c)
 	}
 	add("frequency_drift_lowest", Min, low, target.Low)
 	add("frequency_drift_highest", Max, high, target.High)
 	return list
+}
+
+// memoryOf returns the note of a figure from memory without which a broken end of the
+// target would be kept: with half or twice of it; "" where there is none.
+func (d drifting) memoryOf(c Comparison) string {
+	if !c.Fails() {
+		return ""
+	}
+	for i, t := range d.traits {
+		if !t.memory {
+			continue
+		}
+		for _, factor := range [2]float64{0.5, 2} {
+			x := d.nominal()
+			x[i] *= factor
+			low, high := d.over(x)
+			if c.Bound == Min && low >= c.Limit || c.Bound == Max && high <= c.Limit {
+				return t.note
+			}
+		}
+	}
+	return ""
 }
 
 // nominal returns the nominal point.

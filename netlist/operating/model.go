@@ -47,6 +47,8 @@ type contest struct {
 	// verdict a doubt at most.
 	limitMark part.Mark
 	because   string
+	// there says the same of the point at which the contest fails, "" for nothing.
+	there func() string
 	// surely is the value at or below which a least limit is broken whatever it is.
 	surely  float64
 	working func() string
@@ -239,8 +241,12 @@ func (m *model) certainty(k int, at []float64) (bool, string) {
 	c := &m.contests[k]
 	m.evaluate(at)
 	nothing := c.bound == Min && c.value() <= c.surely // fails whatever the limit
-	if c.because != "" && !nothing {
-		return false, c.because
+	because := c.because
+	if because == "" && c.there != nil {
+		because = c.there()
+	}
+	if because != "" && !nothing {
+		return false, because
 	}
 	if c.limitMark >= part.Memory && !nothing {
 		return false, "the limit is " + markWords(c.limitMark)

@@ -19,7 +19,10 @@ func (m *putModel) figures() {
 		return "R_G, the resistance of the divider as the gate sees it"
 	})
 	m.figure("offset_voltage", "V", func() float64 { return s.vt }, func() string {
-		return fmt.Sprintf("V_T at R_G = %s, straight over log R_G between the sheet's points", show(s.ohms, "ohm"))
+		if m.pair != nil {
+			return "V_BE of the pnp"
+		}
+		return fmt.Sprintf("V_T at R_G = %s, straight over log R_G between the sheet's points, -2 mV/K (memory)", show(s.ohms, "ohm"))
 	})
 	m.figure("peak_voltage", "V", func() float64 { return s.vp }, func() string {
 		return fmt.Sprintf("V_P = V_S + V_T = %s + %s", show(s.vp-s.vt, "V"), show(s.vt, "V"))
@@ -57,8 +60,12 @@ func (m *putModel) carried(name string, p *points) string {
 	case len(p.at) == 1:
 		return fmt.Sprintf("%s of the sheet at R_G = %s", name, show(p.ohms[0], "ohm"))
 	}
-	return fmt.Sprintf("%s at R_G = %s, straight in logarithms between the sheet's points at %s and %s", name,
-		show(m.s.ohms, "ohm"), show(p.ohms[0], "ohm"), show(p.ohms[len(p.ohms)-1], "ohm"))
+	how := "straight in logarithms between"
+	if p.beyond(m.s.ohms) {
+		how = "which lies beyond"
+	}
+	return fmt.Sprintf("%s at R_G = %s, %s the sheet's points at %s and %s", name,
+		show(m.s.ohms, "ohm"), how, show(p.ohms[0], "ohm"), show(p.ohms[len(p.ohms)-1], "ohm"))
 }
 
 // surge returns the greatest anode current, limited by resistance alone.
@@ -89,26 +96,42 @@ func (m *putModel) limits() {
 		m.targetLimits()
 		return
 	}
-	ip, iv := m.verdictOn(&m.ip, "peak"), m.verdictOn(&m.iv, "valley")
 	if !m.promises(&m.iv) {
 		m.iv = points{} // nothing is promised there
 		m.evaluate(m.nominal())
 	}
-	if m.vt.beyond(m.s.ohms) && len(m.vt.ohms) > 1 {
-		m.timeBecause = "the sheet gives no offset voltage at a gate resistance of " + show(m.s.ohms, "ohm")
-	}
-	m.windowLimits(ip, iv)
+	m.windowLimits("", "")
 	m.dividerLimits()
 	m.ratingLimits()
 	m.targetLimits()
+	m.withinTheSheet()
 }
 
-// verdictOn says why a verdict on a current is no more than a doubt.
-func (m *putModel) verdictOn(p *points, which string) string {
-	if p.beyond(m.s.ohms) {
-		return fmt.Sprintf("the sheet gives no %s current at a gate resistance of %s", which, show(m.s.ohms, "ohm"))
+// withinTheSheet makes doubts of verdicts that rest on a figure beyond the sheet's
+// gate resistances, on the board where they fall.
+func (m *putModel) withinTheSheet() {
+	for i := range m.contests {
+		c := &m.contests[i]
+		switch c.name {
+		case "charging_current_at_peak", "charging_current_after_leakage":
+			c.there = m.beyond(&m.ip, "peak current")
+		case "charging_current_at_valley", "charging_current_at_valley_derated":
+			c.there = m.beyond(&m.iv, "valley current")
+		case "frequency_lowest", "frequency_highest", "period_shortest", "period_longest":
+			c.there = m.beyond(&m.vt, "offset voltage")
+		}
 	}
-	return ""
+}
+
+// beyond says why a verdict on a figure is no more than a doubt at the last evaluated
+// point, "" where nothing does.
+func (m *putModel) beyond(p *points, what string) func() string {
+	return func() string {
+		if !p.beyond(m.s.ohms) {
+			return ""
+		}
+		return fmt.Sprintf("the sheet gives no %s at a gate resistance of %s", what, show(m.s.ohms, "ohm"))
+	}
 }
 
 // reach is how far, as a factor, beyond the last gate resistance at which a least
@@ -142,7 +165,7 @@ func (m *putModel) dividerLimits() {
 		return
 	}
 	because := "outside the gate resistances of the sheet nothing is published"
-	m.compare(contest{name: "gate_source_resistance_least", limitName: "sheet_least", unit: "ohm", bound: Min, because: because,
+	m.compare(contest{name: "gate_source_resistance_least", limitName: "sheet_least", unit: "ohm", bound: Min, because: because, surely: -1,
 		value: func() float64 { return s.ohms }, limit: func() float64 { return low / 1.1 }, working: working})
 	m.compare(contest{name: "gate_source_resistance_greatest", limitName: "sheet_greatest", unit: "ohm", bound: Max, because: because,
 		value: func() float64 { return s.ohms }, limit: func() float64 { return high * 1.1 }, working: working})

@@ -35,6 +35,7 @@ type putModel struct {
 	ip, iv points
 	vv, on int     // valley voltage, on-resistance
 	igao   int     // gate to anode leakage, -1 where unknown
+	drift  int     // of the offset voltage
 	valley float64 // the valley voltage before it is bounded by the peak
 	gateOf []float64
 	at0    putNodes
@@ -58,8 +59,9 @@ type putState struct {
 type points struct {
 	ohms []float64
 	at   []int // variables
-	// log says that the figure goes straight in logarithms.
-	log bool
+	log  bool  // the figure goes straight in logarithms
+	// anywhere says that the figure counts at any gate resistance: it is assumed.
+	anywhere bool
 }
 
 // offsetDrift is the drift of the offset voltage V_T in V/K, that of a silicon
@@ -137,8 +139,10 @@ func (m *putModel) device() {
 	m.iv = m.points("iv", "A", "200", "10k", "100k", "1meg")
 	m.iv.log = true
 	if len(m.vt.at) == 0 {
-		m.vt = points{[]float64{10e3}, []int{m.assumed("vt", "V", assumedOffset, "offset voltage not published, assumed")}, false}
+		m.vt = anywhere(m.assumed("vt", "V", assumedOffset, "offset voltage not published, assumed"))
 	}
+	m.drift = m.add(trait{name: "vt_tc", unit: "V/K", memory: true,
+		note: "the drift of the offset voltage is from memory"}, quantity.Exact(offsetDrift))
 	var ok bool
 	if m.igao, ok = m.rating(r, "igao", "A"); !ok {
 		m.igao = -1
@@ -169,6 +173,11 @@ func (m *putModel) points(symbol, unit string, suffixes ...string) points {
 		}
 	}
 	return p
+}
+
+// anywhere makes points of one variable that counts at any gate resistance.
+func anywhere(index int) points {
+	return points{ohms: []float64{10e3}, at: []int{index}, anywhere: true}
 }
 
 // sheetResistance returns the gate resistance in ohm that a symbol's suffix means.
@@ -271,7 +280,7 @@ func (p *points) value(x []float64, ohms float64, greatest bool) float64 {
 // tenth allowed; of a single point, whether it is another one.
 func (p *points) beyond(ohms float64) bool {
 	k := len(p.ohms)
-	return k > 0 && (ohms < p.ohms[0]/1.1 || ohms > p.ohms[k-1]*1.1)
+	return k > 0 && !p.anywhere && (ohms < p.ohms[0]/1.1 || ohms > p.ohms[k-1]*1.1)
 }
 
 // at works the oscillator out at one point of the box.
@@ -287,7 +296,7 @@ func (m *putModel) at(x []float64) {
 	s.standby = mesh.solver.Voltage(n.cathode) - s.lower
 	mesh.solver.Transfer(n.gate, m.gateOf)
 	s.ohms = m.gateOf[n.gate]
-	s.vt = max(m.vt.value(x, s.ohms, true)+offsetDrift*s.heat, 0)
+	s.vt = max(m.vt.value(x, s.ohms, true)+x[m.drift]*s.heat, 0)
 	peak := m.charging.meet(func() (float64, float64) {
 		s.vth, s.rth = m.charging.thevenin()
 		pull := m.charging.transfer[n.gate] / s.rth

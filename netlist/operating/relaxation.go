@@ -27,9 +27,8 @@ type relaxation struct {
 	mouth    network.Node // the outlet in pulse
 	cycle    *cycle       // the result at the last evaluated point
 
-	terminal    string // where the device takes the charge in, in words
-	leaks       bool   // the device leaks besides the capacitors
-	timeBecause string // why a verdict on a time is no more than a doubt, "" for nothing
+	terminal string // where the device takes the charge in, in words
+	leaks    bool   // the device leaks besides the capacitors
 	// bentWindow says that the valley side of the window bends too.
 	bentWindow bool
 

@@ -183,7 +183,7 @@ func (m *relaxation) targetLimits() {
 	working := func() string { return "T = " + show(period(), "s") + ", f = " + show(frequency(), "Hz") }
 	add := func(name, unit string, bound Bound, value func() float64, limit float64) {
 		m.compare(contest{name: name, limitName: "target", unit: unit, bound: bound, value: value, gated: true,
-			limit: func() float64 { return limit }, because: m.timeBecause, working: working})
+			limit: func() float64 { return limit }, working: working})
 	}
 	if t.Frequency != nil {
 		add("frequency_lowest", "Hz", Min, frequency, t.Frequency.Low)
