@@ -120,6 +120,7 @@ func (a *Account) breakover(w *circuit.Wiring, s *stage.Stage) {
 func (a *Account) times(m *relaxation) {
 	a.take(&m.model)
 	a.timing = m
+	a.Facts["capacitor-leaks"] = m.caps.leaks()
 	a.drift(&drifting{&m.model, m.frequency}, a.Stage)
 }
 

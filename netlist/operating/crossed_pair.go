@@ -44,7 +44,7 @@ func (m *putModel) crossedPair() error {
 	m.pair.start = m.assumed("I_0", "A", assumedPairStart, "current at which the gains reach one together, assumed")
 	m.vv = m.assumed("vv", "V", assumedPairValley, "valley voltage of a crossed pair, assumed")
 	m.on = m.assumed("ron", "ohm", assumedPairOn, "on-resistance of a crossed pair, assumed")
-	m.igao = -1
+	m.igao, m.vo = -1, -1
 	m.drift = m.add(trait{name: "vbe_tc", unit: "V/K"}, quantity.Exact(diodeDrift))
 	var err error
 	m.pair.across, err = m.setting(m.stage.Parts[stage.GateShunt], m.stage.Nodes["diverted"])

@@ -33,7 +33,8 @@ type putModel struct {
 	relaxation
 	vt     points // offset voltage
 	ip, iv points
-	vv, on int     // valley voltage, on-resistance
+	vv, on int     // valley voltage, on-resistance (its share of the greatest where V_O is known)
+	vo     int     // V_O of the sheet, -1 where unknown
 	igao   int     // gate to anode leakage, -1 where unknown
 	drift  int     // of the offset voltage
 	valley float64 // the valley voltage before it is bounded by the peak
@@ -75,6 +76,10 @@ var (
 	// assumedPUTOn is the resistance of a conducting PUT.
 	assumedPUTOn = quantity.Spread{Low: 1, Nominal: 5, High: 45}
 )
+
+// leakDoubles is by how many degrees I_GAO doubles (2N6027 sheet: typically 1 nA at 25,
+// 3 nA at 75 deg C).
+const leakDoubles = 31.5
 
 // leastOn is the least resistance that a conducting device is taken to have.
 const leastOn = 0.5
@@ -194,29 +199,33 @@ func sheetResistance(suffix string) float64 {
 }
 
 // onResistance adds the resistance of the conducting device, read from the output
-// voltage V_O of the sheet (0.2 uF on 20 V into 20 ohm) as R (V/V_O - 1). The
+// voltage V_O of the sheet (0.2 uF on 20 V into 20 ohm) as R ((V - V_V)/V_O - 1). The
 // capacitor of that circuit holds no more than the supply, whatever its divider:
 // the least V_O gives the greatest resistance. The typical one is read with 13 V
-// on the capacitor (divider of 27 and 16 kohm; from memory).
+// on the capacitor (divider of 27 and 16 kohm; from memory), and a quarter of that is
+// assumed to be the least. The variable is the share of the greatest resistance.
 func (m *putModel) onResistance() {
-	const volts, load, typical = 20, 20, 13
+	const typical = 13
 	least, mark, ok := m.ratings.Limit("vo")
-	if !ok {
+	if m.vo = -1; !ok {
 		m.on = m.assumed("ron", "ohm", assumedPUTOn, "on-resistance not published, assumed")
 		return
 	}
-	t := trait{name: "ron", unit: "ohm", doubtLow: true, note: "least on-resistance assumed at a quarter of the typical one"}
+	t := trait{name: "vo", unit: "V"}
 	if mark >= part.Memory {
 		t.memory, t.note = true, fmt.Sprintf("vo of %s is from memory", m.ratings.Name)
 	}
-	s := quantity.Spread{High: max(load*(volts/least-1), leastOn)}
-	s.Nominal, s.Low = s.High/2, s.High/8
-	if v, _, ok := m.ratings.Spread("vo"); ok && v.Nominal > least && v.Nominal < typical {
-		s.Nominal = max(load*(typical/v.Nominal-1), leastOn)
-		s.Low = max(s.Nominal/4, leastOn)
+	m.vo = m.add(t, quantity.Exact(least))
+	share, valley := 0.5, m.box[m.vv].Nominal
+	if v, _, ok := m.ratings.Spread("vo"); ok && v.Nominal > least && v.Nominal < typical-valley {
+		share = ((typical-valley)/v.Nominal - 1) / ((sheetVolts-valley)/least - 1)
 	}
-	m.on = m.add(t, s)
+	m.on = m.add(trait{name: "ron_share", doubtLow: true, note: "least on-resistance assumed at a quarter of the typical one"},
+		quantity.Spread{Low: share / 4, Nominal: share, High: 1})
 }
+
+// The sheet's circuit for V_O.
+const sheetVolts, sheetLoad = 20, 20
 
 // networks readies the standing mesh, what hangs on the cathode, and the
 // capacitors.
@@ -317,7 +326,7 @@ func (m *putModel) at(x []float64) {
 	m.path(x)
 	s.leak = m.caps.leakage(x, s.vp)
 	if m.igao >= 0 {
-		s.leak += x[m.igao] * math.Exp2(s.heat/10)
+		s.leak += x[m.igao] * math.Exp2(s.heat/leakDoubles)
 	}
 	m.fill()
 }
@@ -327,6 +336,9 @@ func (m *putModel) at(x []float64) {
 func (m *putModel) path(x []float64) {
 	s := &m.s
 	s.on, s.drop = x[m.on], s.vv
+	if m.vo >= 0 {
+		s.on = max(s.on*sheetLoad*((sheetVolts-x[m.vv])/x[m.vo]-1), leastOn)
+	}
 	m.outside(x)
 	s.discharge = (s.on + s.r1 + s.re) * s.c * math.Log(s.vp/s.vv)
 }

@@ -11,7 +11,8 @@ var capacitorLeak = &rule.Rule{
 	Title: "The capacitor's own leakage takes the current that should fire the stage.",
 	Why: "A leaking capacitor draws its leakage from the timing resistor. At the peak only the rest is " +
 		"left for the emitter; where that is less than the peak current, the ramp stops short and the " +
-		"stage is silent, at first on hot days, since leakage doubles every 10 K.",
+		"stage is silent, at first on hot days, since leakage doubles every 10 K. What a programmable unijunction " +
+		"leaks from gate to anode counts besides, and alone where the capacitor is taken as free of leakage.",
 	Formula: "(V_th - V_P)/R_th - I_leak > I_P; I_leak as declared, or 0.01 C V or 3 uA for an electrolytic, " +
 		"doubling every 10 K",
 	Source: "leakage: catalogue figure of the makers; doubling: common practice, no source",
@@ -40,12 +41,17 @@ R3 b1 0 22
 			if k, ok := a.Comparison("charging_current_at_peak"); ok && (k.Fails() || k.Tight()) {
 				return // too little current without any leakage
 			}
-			p.Judge(a, rule.Case{
+			c := rule.Case{
 				Comparison: "charging_current_after_leakage",
 				Place:      []stage.Role{stage.TimingCapacitor}, Mend: []stage.Role{stage.TimingResistor},
 				Fails: "the capacitor's leakage may keep the stage from firing",
 				Value: "the charging current at the peak less the leakage", Limit: "the {device} needs",
-			})
+			}
+			if !a.Facts["capacitor-leaks"] { // the device does, alone
+				c.Place, c.Fails = timing, "the leakage of the {device} itself may keep the stage from firing"
+				c.Value = "the charging current at the peak less that leakage"
+			}
+			p.Judge(a, c)
 		})
 	},
 }
