@@ -9,7 +9,8 @@ import (
 func (m *breakoverModel) figures() {
 	s := &m.s
 	m.figure("supply_voltage", "V", func() float64 { return s.upper - s.lower }, func() string {
-		return fmt.Sprintf("feeding rail %s less the device's rail %s", show(s.upper, "V"), show(s.lower, "V"))
+		return fmt.Sprintf("feeding rail %s less the device's rail %s",
+			show(s.upper, "V"), show(s.lower, "V"))
 	})
 	m.figure("capacitor_voltage_crest", "V", func() float64 { return s.reach }, m.reachWorking)
 	m.last().bent = m.charging.bends
@@ -51,9 +52,11 @@ func (m *breakoverModel) lineFigures() {
 		m.figure(name, unit, paced(of), func() string { return working })
 		m.last().bent, m.last().gated = true, true
 	}
-	rate("first_breakover_time", "s", &s.first, "from the zero crossing, empty capacitor, to the first breakover")
+	rate("first_breakover_time", "s", &s.first,
+		"from the zero crossing, empty capacitor, to the first breakover")
 	if m.charging.bends {
-		rate("pulse_interval", "s", &s.period, "from the first breakover to the next; it moves in steps of the line's cycle")
+		rate("pulse_interval", "s", &s.period,
+			"from the first breakover to the next; it moves in steps of the line's cycle")
 	}
 	rate("pulses_per_half_cycle", "", &s.pulses,
 		"breakovers before the line crosses zero again; the fraction says how far the last ramp gets")
@@ -79,8 +82,8 @@ func (m *breakoverModel) surge() float64 {
 
 func (m *breakoverModel) surgeWorking() string {
 	s := &m.s
-	return fmt.Sprintf("(V_BO - V_V)/(R_on + R_K) = (%s - %s)/(%s + %s + %s)", show(s.vp, "V"), show(s.drop, "V"),
-		show(s.on, "ohm"), show(s.r1, "ohm"), show(s.re, "ohm"))
+	return fmt.Sprintf("(V_BO - V_V)/(R_on + R_K) = (%s - %s)/(%s + %s + %s)",
+		show(s.vp, "V"), show(s.drop, "V"), show(s.on, "ohm"), show(s.r1, "ohm"), show(s.re, "ohm"))
 }
 
 // limits lists the comparisons. The nominal board was evaluated last.
@@ -88,13 +91,17 @@ func (m *breakoverModel) limits() {
 	s := &m.s
 	m.reverseLimit()
 	if m.blocked {
+		volts := m.box[m.vbo].Nominal // whatever it is: the verdict does not rest on it
 		m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min,
-			value: func() float64 { return -s.reach }, limit: func() float64 { return s.volts },
-			working: func() string { return "the device conducts in one direction only and stands the wrong way round" }})
+			value: func() float64 { return -s.reach }, limit: func() float64 { return volts },
+			working: func() string {
+				return "the device conducts in one direction only and stands the wrong way round"
+			}})
 		return
 	}
-	m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min, bent: m.charging.bends,
-		value: func() float64 { return s.reach - (s.vp - s.volts) }, limit: func() float64 { return s.volts }, working: m.reachWorking})
+	m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min,
+		bent: m.charging.bends, working: m.reachWorking,
+		value: func() float64 { return s.reach - (s.vp - s.volts) }, limit: func() float64 { return s.volts }})
 	if m.line != nil {
 		s.iv = math.NaN() // every zero crossing lets go
 	}
@@ -102,13 +109,14 @@ func (m *breakoverModel) limits() {
 	for i := range m.contests {
 		if c := &m.contests[i]; m.line != nil && c.limitName == "peak_current_required" {
 			c.working = func() string {
-				return show(s.atPeak, "A") + " from the line with the capacitor at V_BO, at the crest or when the capacitor gets there"
+				return show(s.atPeak, "A") +
+					" from the line with the capacitor at V_BO, at the crest or when the capacitor gets there"
 			}
 		}
 	}
 	if limit, mark, ok := m.rated("itrm"); ok {
-		m.compare(contest{name: "discharge_peak_current", limitName: "itrm", unit: "A", bound: Max, value: m.surge, bent: true,
-			limit: limit, limitMark: mark, working: m.surgeWorking})
+		m.compare(contest{name: "discharge_peak_current", limitName: "itrm", unit: "A", bound: Max,
+			value: m.surge, bent: true, limit: limit, limitMark: mark, working: m.surgeWorking})
 	}
 	if m.line == nil {
 		m.targetLimits()
@@ -123,8 +131,8 @@ func (m *breakoverModel) reverseLimit() {
 		return
 	}
 	s := &m.s
-	m.compare(contest{name: "device_reverse_voltage", limitName: "vr", unit: "V", bound: Max, limit: limit, limitMark: mark,
-		bent: m.charging.bends, value: func() float64 {
+	m.compare(contest{name: "device_reverse_voltage", limitName: "vr", unit: "V", bound: Max,
+		limit: limit, limitMark: mark, bent: m.charging.bends, value: func() float64 {
 			if m.line == nil {
 				return max(-s.reach, 0)
 			}
@@ -155,27 +163,33 @@ func (m *breakoverModel) guideByPeak() {
 
 // unchecked lists the rules that a missing rating keeps from being judged.
 func (m *breakoverModel) unchecked() []Unchecked {
+	if m.blocked {
+		return []Unchecked{{Because: "it never fires: no more of it is judged"}}
+	}
 	var list []Unchecked
 	if m.ibo < 0 {
 		list = append(list, Unchecked{"timing-current-below-peak", missing("breakover current", m.ratings)})
 	}
 	switch {
 	case m.line != nil:
-		list = append(list, Unchecked{"timing-current-above-valley", "every zero crossing of the line lets go; whether the device " +
-			"stays on until then is not judged, and pulses are counted as if it did not"})
+		list = append(list, Unchecked{"timing-current-above-valley", "every zero crossing of the line lets go; " +
+			"whether the device stays on until then is not judged, and pulses are counted as if it did not"})
 	case m.isOneShot():
 		list = append(list, Unchecked{"timing-current-above-valley", oneShotNote})
 	case m.ih < 0:
 		list = append(list, Unchecked{"timing-current-above-valley", missing("holding current", m.ratings)})
 	case m.holdingNote() != "":
-		list = append(list, Unchecked{"timing-current-above-valley", m.holdingNote() + ": below it the device may stay on all the same"})
+		list = append(list, Unchecked{"timing-current-above-valley",
+			m.holdingNote() + ": below it the device may stay on all the same"})
 	}
 	if m.drift < 0 && m.line == nil {
-		list = append(list, Unchecked{"frequency-drift", missing("temperature coefficient of the breakover voltage", m.ratings) +
-			": only what the board's parts drift is judged"})
+		list = append(list, Unchecked{"frequency-drift",
+			missing("temperature coefficient of the breakover voltage", m.ratings) +
+				": only what the board's parts drift is judged"})
 	}
 	if _, _, ok := m.ratings.Limit("itrm"); !ok {
-		list = append(list, Unchecked{"emitter-surge-current", missing("repetitive peak current rating", m.ratings)})
+		list = append(list, Unchecked{"emitter-surge-current",
+			missing("repetitive peak current rating", m.ratings)})
 	}
 	if t := m.stage.Anchor.Intent; m.line != nil && (t.Frequency != nil || t.Period != nil) {
 		list = append(list, Unchecked{"frequency-off-target", "the line sets the rate of the stage"})

@@ -24,8 +24,10 @@ func (m *breakoverModel) onTheLine() error {
 		m.line.ride = &ride{feed: m.line, charging: m.charging, sign: 1, turn: 1}
 		return nil
 	}
-	if m.standing.smoothing(append(slices.Clone(own), reservoir)) != nil || !contains(m.stage.Parts[stage.Reservoir], reservoir) {
-		return fmt.Errorf("%s stands in what the line charges it through, which is not worked out", reservoir.Designator)
+	second := m.standing.smoothing(append(slices.Clone(own), reservoir))
+	if second != nil || !contains(m.stage.Parts[stage.Reservoir], reservoir) {
+		return fmt.Errorf("%s stands in what the line charges it through, which is not worked out",
+			reservoir.Designator)
 	}
 	var err error
 	m.smooth, err = m.newSmoothFeed(reservoir)

@@ -94,7 +94,9 @@ func (m *breakoverModel) device() error {
 	m.ibo, m.ih, m.vo = optional("ibo", "A"), optional("ih", "A"), -1
 	m.drift, m.idle = optional("vbo_tc", "1/K"), optional("idrm", "A")
 	if least, mark, ok := r.Limit("vo"); ok {
-		m.vo = m.add(trait{name: "vo", unit: "V", memory: mark >= part.Memory, note: markNote("vo", r.Name, mark >= part.Memory)}, quantity.Exact(least))
+		memory := mark >= part.Memory
+		m.vo = m.add(trait{name: "vo", unit: "V", memory: memory, note: markNote("vo", r.Name, memory)},
+			quantity.Exact(least))
 	}
 	m.valley()
 	m.onResistance()
@@ -132,7 +134,8 @@ func (m *breakoverModel) valley() {
 	} else if m.vo >= 0 {
 		least, note = min(m.box[m.vo].Low/vbo, 0.6), "greatest step back at breakover assumed"
 	}
-	m.swing = m.add(trait{name: "swing", doubtHigh: true, note: note}, quantity.Spread{Low: least, Nominal: (least + 0.65) / 2, High: 0.65})
+	m.swing = m.add(trait{name: "swing", doubtHigh: true, note: note},
+		quantity.Spread{Low: least, Nominal: (least + 0.65) / 2, High: 0.65})
 }
 
 // siliconSwitch is the breakover voltage in volt below which a device is taken for
@@ -283,6 +286,10 @@ func (m *breakoverModel) at(x []float64) {
 // 25, 10 uA at 85 deg C).
 const leakRise = 18
 
+// someLeak is a current in ampere that any board leaks: with nothing drawn at all, a
+// rectifier neither leads nor blocks.
+const someLeak = 1e-9
+
 // leaking returns what the capacitors and the device lead away at the peak. Within
 // the breakover current the device's share is counted already.
 func (m *breakoverModel) leaking(x []float64) float64 {
@@ -296,7 +303,11 @@ func (m *breakoverModel) leaking(x []float64) float64 {
 func (m *breakoverModel) direct(x []float64) {
 	s := &m.s
 	peak, valley := s.lower+m.sign*s.vp, s.lower+m.sign*s.vv
-	m.charging.draw(m.sign * m.leaking(x))
+	leak := m.leaking(x)
+	if m.charging.bends {
+		leak = max(leak, someLeak)
+	}
+	m.charging.draw(m.sign * leak)
 	s.reach = m.sign * (m.standing.solver.Voltage(m.charging.node) - s.lower)
 	p := m.charging.tangent(peak)
 	s.vth, s.rth = p.vth, p.rth

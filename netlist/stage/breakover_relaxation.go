@@ -113,7 +113,9 @@ func (u *breakoverReading) sourceNets(stop func(circuit.NodeID) bool) []circuit.
 // rectified takes for the upper rail the net behind which the rectifiers of a floating source (a
 // transformer's winding, a line with its bridge) stand.
 func (u *breakoverReading) rectified() bool {
-	floats := slices.ContainsFunc(u.atNode.Elements, func(e *circuit.Element) bool { return e.Kind == circuit.VoltageSource })
+	floats := slices.ContainsFunc(u.atNode.Elements, func(e *circuit.Element) bool {
+		return e.Kind == circuit.VoltageSource
+	})
 	for _, e := range u.atNode.Elements {
 		if e.Kind != circuit.Diode || !floats {
 			continue
@@ -197,6 +199,7 @@ func (u *breakoverReading) smoothed() bool {
 func (u *breakoverReading) gate() {
 	gate, ok := u.stage.Anchor.Pin("gate")
 	if ok && len(u.w.On(gate)) > 1 {
-		u.stage.Beside = append(u.stage.Beside, "its gate is wired; what that does to the breakover voltage is not worked out")
+		u.stage.Beside = append(u.stage.Beside,
+			"its gate is wired; what that does to the breakover voltage is not worked out")
 	}
 }
