@@ -18,12 +18,17 @@ const (
 	tokenString                            // "text"
 	tokenIntent                            // a *> line, whole
 	tokenBad                               // an unclosed brace or quote
+	tokenLong                              // the first word that is too many for one card
 )
 
 // symbols names the tokens for the grammars.
 var symbols = map[string]lexer.TokenType{"EOF": lexer.EOF, "End": tokenEnd, "Dot": tokenDot, "Word": tokenWord,
 	"Key": tokenKey, "Open": tokenOpen, "Close": tokenClose, "Expr": tokenExpr, "String": tokenString,
-	"Intent": tokenIntent, "Bad": tokenBad}
+	"Intent": tokenIntent, "Bad": tokenBad, "Long": tokenLong}
+
+// mostWords is how many words, brackets and expressions one card may have; the
+// longest waveforms that people write stay far below.
+const mostWords = 100_000
 
 // scanner turns the text into tokens, one logical line after the other. Tokens
 // carry the offsets of the text itself: no joined copy exists.
@@ -32,6 +37,8 @@ type scanner struct {
 	at     int
 	line   int // physical line of at, from 0
 	tokens []lexer.Token
+	// cardAt is where the tokens of the present card begin.
+	cardAt int
 	// intents are *> lines met inside a continued card; they follow it.
 	intents  []lexer.Token
 	depth    int // open parentheses of the present card
@@ -146,6 +153,7 @@ func (s *scanner) card() {
 	if s.text[s.at] == '+' {
 		s.at++ // a continuation of nothing is read as a card of its own
 	}
+	s.cardAt = len(s.tokens)
 	first := true
 	for {
 		end := s.fields(first)
@@ -198,10 +206,22 @@ func (s *scanner) fields(first bool) int {
 			s.noteComment(s.at, s.line)
 			return end
 		}
+		if len(s.tokens)-s.cardAt >= mostWords {
+			s.tooMany()
+			return end
+		}
 		s.token(first)
 		first = false
 		end = s.at
 	}
+}
+
+// tooMany passes over the rest of a line whose card has words enough.
+func (s *scanner) tooMany() {
+	if s.tokens[len(s.tokens)-1].Type != tokenLong {
+		s.emit(tokenLong, s.at, s.at+1)
+	}
+	s.skipLine()
 }
 
 // token scans one token that starts here.

@@ -250,3 +250,11 @@ func BenchmarkParse(b *testing.B) {
 		})
 	}
 }
+
+// A card of more words than any board needs is told and not kept.
+func TestTooManyWordsOnOneCard(t *testing.T) {
+	d := parse("title\nX1" + strings.Repeat(" n", 150_000) + "\n+ more\n+ and more\nR1 a b 1k\n")
+	if got := dump(d); got != "R1 a b 1k; ! 2:200002 more than 100000 words on one card; the rest of it is not read;" {
+		t.Error(got)
+	}
+}

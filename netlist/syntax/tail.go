@@ -173,6 +173,8 @@ func readValue(lex *lexer.PeekingLexer) (Value, error) {
 		return Value{Word: w, Expr: expr}, nil
 	case tokenBad:
 		return Value{}, unclosed(t)
+	case tokenLong:
+		return Value{}, bad(t, fmt.Sprintf("more than %d words on one card; the rest of it is not read", mostWords))
 	case tokenWord, tokenDot:
 		return Value{Word: wordOf(t)}, nil
 	}

@@ -41,7 +41,11 @@ func terminals(e *circuit.Element) string {
 // shorted says what two terminals on one node do to a part; grade 0 where there
 // are none or they do no harm.
 func shorted(e *circuit.Element) (rule.Grade, string) {
-	if _, ok := twice(e.Nodes); !ok || circuit.IsLink(e) {
+	grade, what := harm(e.Kind) // parts of these kinds have few terminals, others may have thousands
+	if grade == 0 || circuit.IsLink(e) {
+		return 0, ""
+	}
+	if _, ok := twice(e.Nodes); !ok {
 		return 0, ""
 	}
 	if one, ok := e.Pin("1"); ok && e.Kind == circuit.Diac {
@@ -49,7 +53,12 @@ func shorted(e *circuit.Element) (rule.Grade, string) {
 			return 0, "" // the gate of a silicon switch tied to one of its ends
 		}
 	}
-	switch e.Kind {
+	return grade, what
+}
+
+// harm is what a part of this kind suffers from two terminals on one node.
+func harm(k circuit.Kind) (rule.Grade, string) {
+	switch k {
 	case circuit.UJT, circuit.PUT, circuit.SCR, circuit.Triac:
 		return rule.Hold, "it cannot work"
 	case circuit.VoltageSource:
