@@ -35,7 +35,7 @@ func limits() []limit {
 // limitsHelp says what they are, for the help text.
 func limitsHelp() string {
 	var b strings.Builder
-	b.WriteString("Limits (--limit NAME=N moves one; brackets in an expression stay within 200):\n")
+	b.WriteString("Limits (--limit NAME=N moves one; brackets in an expression stay within 200, a card within\n100000 words):\n")
 	for _, l := range limits() {
 		fmt.Fprintf(&b, "  %-18s %s\n", l.name, l.help)
 	}

@@ -15,7 +15,7 @@ func (p *placing) expand(nodes []syntax.Value, name syntax.Value, sub *scope) {
 			source.Visible(sub.name), len(sub.pins))
 		return
 	}
-	if p.tooDeep(sub) {
+	if p.tooDeep(sub) || p.tooMany(sub) {
 		return
 	}
 	prefix := p.in.prefix + p.card.e.Name.Text + "."
@@ -61,6 +61,45 @@ func (p *placing) tooDeep(sub *scope) bool {
 		return true
 	}
 	return false
+}
+
+// hopeless is by what factor a subcircuit has to pass the limit of elements
+// before it is not even begun: the count is rough, since parts whose insides are
+// a model stay one element and cards may stand in branches of an .if.
+const hopeless = 10
+
+// tooMany refuses a use of a subcircuit that would unfold without end, before
+// any of it takes time or memory. The rest of the board is still read.
+func (p *placing) tooMany(sub *scope) bool {
+	limit := p.b.opts.Limits.elements()
+	if sub.unfolded(p.b.opts.Limits.depth()) <= hopeless*float64(limit) {
+		return false
+	}
+	p.fail(p.card.e.Name, "%s unfolds to more than %d elements; it is not read", p.shown(), limit)
+	return true
+}
+
+// unfolded counts the elements, and uses of subcircuits, that one use makes.
+func (s *scope) unfolded(depth int) float64 {
+	if s.count > 0 || depth <= 0 {
+		return max(s.count, 1)
+	}
+	s.count = 1 // what a use of itself inside counts
+	total := 1.0
+	for i := range s.cards {
+		c := &s.cards[i]
+		if c.guard != nil {
+			continue
+		}
+		total++
+		if n := len(c.e.Fields); n > 0 && c.e.Name.Text[0]|0x20 == 'x' {
+			if sub := s.findSubckt(c.e.Fields[n-1].Text); sub != nil {
+				total += sub.unfolded(depth - 1)
+			}
+		}
+	}
+	s.count = total
+	return total
 }
 
 // connect ties the pins of an instance to the nodes outside.

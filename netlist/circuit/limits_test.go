@@ -37,9 +37,21 @@ func TestEmptySubcircuitsAreBombsToo(t *testing.T) {
 	b.WriteString("X1 a s29\n")
 	deck := syntax.Parse(source.New("t.cir", "title\n"+b.String()), true)
 	_, problems := circuit.Build(deck, circuit.Options{Limits: circuit.Limits{Elements: 1000}})
-	want := "the subcircuits unfold to far more than a board can hold; the rest is not read"
+	want := "X1 unfolds to more than 1000 elements; it is not read"
 	if len(problems) != 1 || problems[0].Message != want {
 		t.Errorf("told %v", problems)
+	}
+}
+
+// A bomb takes nothing with it: the rest of the board is read.
+func TestTheBoardBesideABombIsRead(t *testing.T) {
+	text := "X1 a s9\nR1 a 0 1k\nX2 a s0\n.subckt s0 a\nR1 a 0 1\n.ends\n"
+	for i := 1; i < 10; i++ {
+		text += fmt.Sprintf(".subckt s%d a\n%s.ends\n", i, strings.Repeat(fmt.Sprintf("X1 a s%d\n", i-1), 100))
+	}
+	c, problems := build(text)
+	if len(problems) != 1 || len(c.Elements) != 2 {
+		t.Errorf("%d elements, %v", len(c.Elements), problems)
 	}
 }
 

@@ -31,6 +31,7 @@ type scope struct {
 	names    *index // designators, with their first cards
 	named    []*cardRef
 	words    int          // of all its cards
+	count    float64      // elements that one use makes, roughly; 0 until counted
 	insides  *deviceGuess // what its insides look like; worked out on first use
 }
 
