@@ -88,6 +88,10 @@ func (m *breakoverModel) firstCrest() {
 		r.turn = -1
 		s.vth, s.rth = m.charging.thevenin()
 	}
+	if m.charging.bends { // as it is while its rectifiers lead
+		r.piece(0.25/m.line.hertz, s.vv)
+		s.rth = m.charging.transfer[m.charging.node]
+	}
 }
 
 // count works out how many breakovers fall into the first half cycle, as if the device let go
