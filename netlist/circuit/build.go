@@ -99,7 +99,7 @@ type builder struct {
 }
 
 func (b *builder) problem(at source.Span, format string, args ...any) {
-	b.problems = append(b.problems, source.Problem{Span: at, Message: fmt.Sprintf(format, args...)})
+	b.problems = append(b.problems, source.Problem{Span: at, Message: source.Brief(fmt.Sprintf(format, args...))})
 }
 
 // once reports a trouble of a kind the first time only.

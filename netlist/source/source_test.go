@@ -5,6 +5,7 @@ import (
 	"path/filepath"
 	"strings"
 	"testing"
+	"unicode/utf8"
 
 	"standoff/netlist/source"
 )
@@ -96,5 +97,15 @@ func TestReadRefusesWhatIsNoFile(t *testing.T) {
 		if _, err := source.Read(path, source.Limits{FileBytes: 10}); err == nil || !strings.Contains(err.Error(), want) {
 			t.Errorf("%s: %v, want %q", path, err, want)
 		}
+	}
+}
+
+func TestBrief(t *testing.T) {
+	if got := source.Brief("R1: short"); got != "R1: short" {
+		t.Error(got)
+	}
+	got := source.Brief("R1: " + strings.Repeat("\u03a9", 50_000) + " is out of range")
+	if len(got) > 700 || !strings.HasPrefix(got, "R1: \u03a9") || !strings.HasSuffix(got, "out of range") || !utf8.ValidString(got) {
+		t.Errorf("%d bytes: %s", len(got), got)
 	}
 }

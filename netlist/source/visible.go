@@ -40,3 +40,15 @@ func Visible(text string) string {
 	}
 	return b.String()
 }
+
+// Brief cuts the middle out of a message that would fill a screen, as a word of
+// a hundred thousand letters makes it.
+func Brief(message string) string {
+	const most, head, tail = 600, 350, 200
+	if len(message) <= most {
+		return message
+	}
+	start := strings.ToValidUTF8(message[:head], "")
+	end := strings.ToValidUTF8(message[len(message)-tail:], "")
+	return fmt.Sprintf("%s ... (%d bytes) ... %s", start, len(message)-head-tail, end)
+}

@@ -48,7 +48,7 @@ type reader struct {
 type header struct{ statement, line int }
 
 func (d *Deck) problem(at Word, message string) {
-	d.Problems = append(d.Problems, source.Problem{Span: d.Span(at), Message: message})
+	d.Problems = append(d.Problems, source.Problem{Span: d.Span(at), Message: source.Brief(message)})
 }
 
 // flush parses the tokens scanned so far.
