@@ -185,6 +185,7 @@ type Circuit struct {
 	// Facts for the hygiene rules.
 	Repeats      []Repeat        // designators used twice in one scope
 	GroundNamed  bool            // some card uses node 0 or gnd
+	Micron       bool            // some transistor has the gate of a chip: l= or w= below 0.1 mm
 	UnusedModels []*part.Ratings // defined in the netlist, never used
 	Resets       []Reset         // intent keys given twice
 	// UnusedSubckts are the subcircuits of the board's own file that no card

@@ -49,7 +49,20 @@ func (p *placing) semiconductor(letter byte, fields []syntax.Value, at int) {
 		}
 	}
 	e.Roles = letterRoles(letter, at)
+	p.noteChip(letter)
 	p.add(e)
+}
+
+// noteChip notes that the netlist draws a chip, where femtofarads are at home:
+// the gate of a transistor is given in micrometres.
+func (p *placing) noteChip(letter byte) {
+	if letter != 'M' || p.b.circuit.Micron {
+		return
+	}
+	if v, ok := p.pair("l", "w"); ok {
+		size, err := p.value(v)
+		p.b.circuit.Micron = err == nil && size > 0 && size < 100e-6
+	}
 }
 
 // powerKind tells the channel of a power transistor, which stands in a flag.

@@ -51,7 +51,7 @@ type bought struct {
 }
 
 func boughtOn(p *rule.Pass) bought {
-	b := bought{p, &sense{pass: p}, map[string]bool{}, map[string]bool{"": true}}
+	b := bought{p, &sense{pass: p}, map[string]bool{}, map[string]bool{"": len(p.Accounts) > 0}}
 	for _, a := range p.Accounts {
 		b.staged[instance(a.Stage.Anchor.Designator)] = true
 		for _, e := range a.Stage.Parts[stage.Load] {

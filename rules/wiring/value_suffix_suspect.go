@@ -21,7 +21,8 @@ func valueSuffixSuspect() *rule.Rule {
 			"them otherwise.",
 		Formula: "resistor above 0 and below 5 milliohm, or below 0.5 ohm where it sets a stage or lies " +
 			"across more than " +
-			"1 kW of supply; capacitor below 0.05 pF, or from 0.5 F up without volts=; inductor below 1 pH or " +
+			"1 kW of supply; capacitor below 0.05 pF (left alone beside transistors measured in " +
+			"micrometres), or from 0.5 F up without volts=; inductor below 1 pH or " +
 			"from 1 kH up (a test rig's 1T is left alone)",
 		Source:  "suffixes: SPICE2 input format; limits: " + practice,
 		Failing: strings.Replace(board("Tram point heater"), "R1 vcc e 100k", "R1 vcc e 1M", 1),
@@ -87,7 +88,7 @@ func (s *sense) absurd(e *circuit.Element) string {
 	switch {
 	case e.Kind == circuit.Resistor && v > 0 && (v < 5e-3 || v < 0.5 && (s.sets(e) || s.burns(e))):
 		return "no resistor here is that small; M is milli, write MEG for mega"
-	case e.Kind == circuit.Capacitor && v < 0.05e-12:
+	case e.Kind == circuit.Capacitor && v < 0.05e-12 && !s.pass.Circuit.Micron:
 		return "no capacitor is that small; F behind a number is femto"
 	case e.Kind == circuit.Capacitor && v >= 0.5 && e.Intent.Volts == nil:
 		return "no timing or filter capacitor is that large; a suffix is missing (volts= says that it is meant)"

@@ -107,6 +107,22 @@ func TestFaultsAreFound(t *testing.T) {
 	}
 }
 
+// A chip has no bought values and holds femtofarads.
+func TestAChipIsLeftAlone(t *testing.T) {
+	list, _ := findings(t, "Inverter\nVDD vdd 0 1.8\nVA a 0 1\nMP y a vdd vdd PCH W=2u L=0.18u\nMN y a 0 0 NCH W=1u\n"+
+		"CL y 0 10f\nRL y 0 5123\n.model PCH pmos\n.model NCH nmos\n")
+	if len(list) > 0 {
+		t.Error(list)
+	}
+}
+
+func TestAPartCopiedManyTimesIsOneFault(t *testing.T) {
+	list, all := findings(t, small+strings.Repeat("R9 vcc 0 10k\n", 5))
+	if len(list) != 1 || all[0].Message != "R9 stands 5 times; the first is on line 8" {
+		t.Errorf("%v %+v", list, all)
+	}
+}
+
 // A fault inside a subcircuit is told once, not once for every instance.
 func TestAFaultInASubcircuitIsToldOnce(t *testing.T) {
 	list, _ := findings(t, small+".subckt s a\nR1 a spare 1k\nR2 a 0 1M\nR2 a 0 1k\nC1 a a 1u\n.ends\nX1 b1 s\nX2 b1 s\nX3 b1 s\n")
