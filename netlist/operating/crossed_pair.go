@@ -2,7 +2,9 @@ package operating
 
 import (
 	"fmt"
+	"slices"
 
+	"standoff/netlist/circuit"
 	"standoff/netlist/quantity"
 	"standoff/netlist/stage"
 )
@@ -47,8 +49,17 @@ func (m *putModel) crossedPair() error {
 	m.igao, m.vo = -1, -1
 	m.drift = m.add(trait{name: "vbe_tc", unit: "V/K"}, quantity.Exact(diodeDrift))
 	var err error
-	m.pair.across, err = m.setting(m.stage.Parts[stage.GateShunt], m.stage.Nodes["diverted"])
+	m.pair.across, err = m.setting(m.diverting(), m.stage.Nodes["diverted"])
 	return err
+}
+
+// diverting lists the resistors across the base of the npn; one across the pnp's lies
+// in the charging network.
+func (m *putModel) diverting() []*circuit.Element {
+	gate := m.w.Net(m.stage.Nodes["gate"])
+	return slices.DeleteFunc(slices.Clone(m.stage.Parts[stage.GateShunt]), func(e *circuit.Element) bool {
+		return m.w.Net(e.Nodes[0]) == gate || m.w.Net(e.Nodes[1]) == gate
+	})
 }
 
 // currents returns peak and valley current at a point; V_S and R_G are known.

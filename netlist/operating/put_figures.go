@@ -71,12 +71,12 @@ func (m *putModel) carried(name string, p *points) string {
 // surge returns the greatest anode current, limited by resistance alone.
 func (m *putModel) surge() float64 {
 	s := &m.s
-	return (s.vp - s.drop) / (s.on + s.r1 + s.re)
+	return (s.vp - s.drop - s.rise) / (s.on + s.r1 + s.re)
 }
 
 func (m *putModel) surgeWorking() string {
 	s := &m.s
-	return fmt.Sprintf("(V_P - V_F)/(R_on + R_K + R_A) = (%s - %s)/(%s + %s + %s)", show(s.vp, "V"), show(s.drop, "V"),
+	return fmt.Sprintf("(V_P - V_F)/(R_on + R_K + R_A) = (%s - %s)/(%s + %s + %s)", show(s.vp, "V"), show(s.drop+s.rise, "V"),
 		show(s.on, "ohm"), show(s.r1, "ohm"), show(s.re, "ohm"))
 }
 

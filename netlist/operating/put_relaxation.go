@@ -222,6 +222,9 @@ func (m *putModel) onResistance() {
 	}
 	m.on = m.add(trait{name: "ron_share", doubtLow: true, note: "least on-resistance assumed at a quarter of the typical one"},
 		quantity.Spread{Low: share / 4, Nominal: share, High: 1})
+	if f := m.ratings.Figures["vo"]; f.HasMin && f.HasMax && f.Min == f.Max {
+		m.box[m.on].Low, m.box[m.on].Nominal = 1, 1
+	}
 }
 
 // The sheet's circuit for V_O.
@@ -245,6 +248,7 @@ func (m *putModel) networks() error {
 	}
 	m.outlet, m.share, m.pulseFarads = n["cathode"], m.on, 0
 	m.keepOff = append(append([]*circuit.Element{}, m.stage.Parts[stage.TimingResistor]...), m.stage.Parts[stage.GateDivider]...)
+	m.keepOff = append(m.keepOff, m.stage.Parts[stage.GateShunt]...)
 	if err := m.readyToEmpty(); err != nil {
 		return err
 	}
@@ -313,10 +317,11 @@ func (m *putModel) at(x []float64) {
 		return peak, (s.vth - peak) / s.rth
 	})
 	s.vp = peak - s.lower
-	m.valley = x[m.vv]
+	m.outside(x)
+	m.valley = x[m.vv] + s.rise
 	s.vv = min(m.valley, 0.9*s.vp) // a valley above the peak is no valley
 	s.atPeak = (s.vth - peak) / s.rth
-	s.atValley = m.sourceAtBothEnds(s.lower + s.vv)
+	s.atValley = m.whileOn(s.lower+s.vv, m.sourceAtBothEnds(s.lower+s.vv))
 	s.fires = s.atPeak > 0 && s.vp > 0
 	s.ip, s.iv = m.ip.value(x, s.ohms, true), m.iv.value(x, s.ohms, false)
 	if m.pair != nil {
@@ -331,14 +336,32 @@ func (m *putModel) at(x []float64) {
 	m.fill()
 }
 
+// whileOn returns the current that holds the device on at the valley, given the one
+// with the device off there: a conducting device pulls its gate down, and with it
+// what hangs between gate and anode and a soft rail. The gate is taken at the anode's
+// voltage, the most that it can have.
+func (m *putModel) whileOn(volts, off float64) float64 {
+	gate, node, across := m.at0.gate, m.charging.node, m.charging.transfer
+	m.standing.solver.Transfer(gate, m.gateOf)
+	own := m.gateOf[gate]
+	above := m.charging.idle(gate) - volts // of the open gate, nothing drawn
+	if own <= 0 || above <= across[gate]*off {
+		return off
+	}
+	ohms := across[node] - m.gateOf[node]*across[gate]/own
+	if ohms <= 0 {
+		return off
+	}
+	return (m.charging.idle(node) - volts - m.gateOf[node]*above/own) / ohms
+}
+
 // path works out the discharge: the drop of the conducting device, taken as the
 // valley voltage, and the resistances.
 func (m *putModel) path(x []float64) {
 	s := &m.s
-	s.on, s.drop = x[m.on], s.vv
+	s.on, s.drop = x[m.on], max(s.vv-s.rise, 0)
 	if m.vo >= 0 {
 		s.on = max(s.on*sheetLoad*((sheetVolts-x[m.vv])/x[m.vo]-1), leastOn)
 	}
-	m.outside(x)
 	s.discharge = (s.on + s.r1 + s.re) * s.c * math.Log(s.vp/s.vv)
 }

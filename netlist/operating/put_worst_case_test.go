@@ -48,7 +48,16 @@ func randomPUT(seed uint64) string {
 	} else {
 		d.card("X1 e g k %s", [...]string{"2N6027", "2N6028", "BRY56A", "D13T1"}[d.IntN(4)])
 	}
-	d.resistor("k", "0", 10, 100)
+	switch d.IntN(8) {
+	case 0: // a lamp diode lights with the pulse
+		d.card("D9 k kd DX\n.model DX D")
+		d.resistor("kd", "0", 10, 100)
+	case 1: // a resistor from gate to anode
+		d.resistor("g", "e", 1e6, 1e7)
+		fallthrough
+	default:
+		d.resistor("k", "0", 10, 100)
+	}
 	low := d.IntN(60) - 30
 	d.card("*> board ambient=%d..%d", low, low+d.IntN(70))
 	if d.IntN(3) == 0 {

@@ -24,8 +24,9 @@ type relaxation struct {
 	caps     *capacitorNet
 	pulse    *mesh // what the discharge flows into
 	spread   []float64
-	mouth    network.Node // the outlet in pulse
-	cycle    *cycle       // the result at the last evaluated point
+	mouth    network.Node   // the outlet in pulse
+	spout    network.Branch // the pulse, where diodes stand in its way
+	cycle    *cycle         // the result at the last evaluated point
 
 	terminal string // where the device takes the charge in, in words
 	leaks    bool   // the device leaks besides the capacitors
@@ -54,6 +55,7 @@ type cycle struct {
 	atPeak, atValley          float64 // charging current
 	ip, iv                    float64 // what the device asks for at the peak, and lets go below; NaN where unknown
 	drop, on, r1, re          float64 // discharge path: constant drop, device, what hangs on the outlet, lead
+	rise                      float64 // threshold of diodes behind the outlet
 	charge, discharge, period float64
 	ramp                      float64 // nonlinearity of the ramp
 	leak                      float64
@@ -141,6 +143,9 @@ func (m *relaxation) readyToEmpty() error {
 	if err != nil {
 		return err
 	}
+	if m.pulse.bends {
+		m.spout = m.pulse.net.Current(0, m.pulse.node(m.outlet))
+	}
 	if err := m.pulse.compile(); err != nil {
 		return err
 	}
@@ -158,13 +163,33 @@ func (m *relaxation) outside(x []float64) {
 	m.pulse.solver.Solve()
 	m.pulse.solver.Transfer(m.mouth, m.spread)
 	s.r1 = m.spread[m.mouth]
+	s.rise = 0
+	if s.r1 > noPath && m.pulse.bends {
+		m.throughDiodes()
+	}
 	if s.r1 > noPath {
-		s.r1 = 0 // the outlet hangs on a gate alone: the gate carries the pulse
+		s.r1, s.rise = 0, 0 // the outlet hangs on a gate alone: the gate carries the pulse
 	}
 	s.re = 0
 	for _, e := range m.stage.Parts[stage.EmitterSeries] {
 		s.re += m.value(m.slots[e], x)
 	}
+}
+
+// pulseAmperes is the current in ampere with which diodes in the way of the pulse are
+// made to lead.
+const pulseAmperes = 0.01
+
+// throughDiodes works out resistance and threshold of what hangs on the outlet where
+// only a pulse opens the way.
+func (m *relaxation) throughDiodes() {
+	s, solver := m.cycle, m.pulse.solver
+	solver.Values[m.spout] = pulseAmperes
+	solver.Solve()
+	solver.Transfer(m.mouth, m.spread)
+	s.r1 = m.spread[m.mouth]
+	s.rise = solver.Voltage(m.mouth) - solver.Voltage(m.pulse.node(m.stage.Nodes["lower"])) - s.r1*pulseAmperes
+	solver.Values[m.spout] = 0
 }
 
 // fill works out charge time, period and nonlinearity from the peak and valley

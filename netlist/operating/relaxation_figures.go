@@ -55,7 +55,7 @@ func (m *relaxation) peakWorking() string {
 
 func (m *relaxation) valleyWorking() string {
 	s := m.cycle
-	if m.charging.bends {
+	if straight := (s.vth - s.lower - s.vv) / s.rth; m.charging.bends || math.Abs(s.atValley-straight) > 1e-6*math.Abs(straight) {
 		return show(s.atValley, "A") + " from the charging network at V_V = " + show(s.vv, "V")
 	}
 	return fmt.Sprintf("(V_th - V_V)/R_th = (%s - %s)/%s = %s", show(s.vth-s.lower, "V"), show(s.vv, "V"),

@@ -1,6 +1,10 @@
 package stage
 
-import "standoff/netlist/circuit"
+import (
+	"slices"
+
+	"standoff/netlist/circuit"
+)
 
 // put recognises the relaxation oscillator around a programmable unijunction: a
 // capacitor at the anode (or behind a resistor there), the gate on a divider of
@@ -43,15 +47,20 @@ func (u *rampReading) divider() string {
 	if len(list) == 0 && !u.w.IsFixed(u.control) {
 		return "nothing sets the voltage of its gate"
 	}
-	u.stage.add(GateDivider, list...)
+	u.stage.add(GateDivider, without(list, u.stage.Parts[GateShunt])...)
 	return ""
 }
 
-// lead collects the resistors from the outlet to the lower rail.
+// lead collects the resistors from the outlet to the lower rail, diodes (a lamp diode,
+// say) may stand between.
 func (u *rampReading) lead() {
-	area := u.w.Walk([]circuit.NodeID{u.outlet}, isDirect, func(n circuit.NodeID) bool {
+	area := u.w.Walk([]circuit.NodeID{u.outlet}, leadsPulse, func(n circuit.NodeID) bool {
 		return u.isRail(n) || n == u.node || n == u.terminal || n == u.control || u.isGate(n)
 	})
 	own := without(without(area.Elements, u.stage.Parts[GateDivider]), u.stage.Parts[TimingResistor])
-	u.stage.add(BaseOne, prune(u.w, own, func(n circuit.NodeID) bool { return n == u.outlet || u.isRail(n) })...)
+	own = prune(u.w, own, func(n circuit.NodeID) bool { return n == u.outlet || u.isRail(n) })
+	u.stage.add(BaseOne, slices.DeleteFunc(own, func(e *circuit.Element) bool { return !isDirect(e) })...)
 }
+
+// leadsPulse reports whether an element can carry the pulse to the lower rail.
+func leadsPulse(e *circuit.Element) bool { return isDirect(e) || e.Kind == circuit.Diode }

@@ -212,12 +212,24 @@ func (u *rampReading) charging() string {
 				fed = true
 			}
 		}
-		u.stage.add(chargingRole(e), e)
+		role := chargingRole(e)
+		if u.isAcross(e) {
+			role = GateShunt
+		}
+		u.stage.add(role, e)
 	}
 	if !fed {
 		return "nothing charges the capacitor"
 	}
 	return ""
+}
+
+// isAcross reports whether an element is a resistor from the gate to the anode or its
+// capacitor.
+func (u *rampReading) isAcross(e *circuit.Element) bool {
+	far := u.w.Other(e, u.control)
+	return u.stage.Kind == PUTOscillator && isResistor(e) && (far == u.node || far == u.terminal) &&
+		(u.w.Net(e.Nodes[0]) == u.control || u.w.Net(e.Nodes[1]) == u.control)
 }
 
 // chargingRole names what an element of the charging network is.
