@@ -99,6 +99,30 @@ var rewritings = map[string]func(title string, lines []line) string{
 		}
 		return joinDeck(title, out)
 	},
+	"renamed designators": func(title string, lines []line) string {
+		names := map[string]string{}
+		for _, l := range lines {
+			if l.element != nil {
+				names[strings.ToLower(l.fields[0])] = l.fields[0] + "_b2"
+			}
+		}
+		var out []string
+		for _, l := range lines {
+			f := slices.Clone(l.fields)
+			for i := range f {
+				nodes := 0
+				if l.element != nil {
+					nodes = len(l.element.Nodes)
+				}
+				intent := f[0] == "*>" && (i == 1 || i == 3 && f[1] == "waive")
+				if name, ok := names[strings.ToLower(f[i])]; ok && (i == 0 || intent || l.element != nil && i > nodes) {
+					f[i] = name
+				}
+			}
+			out = append(out, strings.Join(f, " "))
+		}
+		return joinDeck(title, out)
+	},
 	"shuffled cards": func(title string, lines []line) string {
 		list := texts2(lines)
 		r := rand.New(rand.NewPCG(7, 7))
