@@ -12,7 +12,7 @@ func (m *breakoverModel) figures() {
 		return fmt.Sprintf("feeding rail %s less the device's rail %s",
 			show(s.upper, "V"), show(s.lower, "V"))
 	})
-	m.figure("capacitor_voltage_crest", "V", func() float64 { return s.reach }, m.reachWorking)
+	m.figure("capacitor_voltage_crest", "V", func() float64 { return m.extent().reach }, m.reachWorking)
 	m.last().bent = m.charging.bends
 	m.figure("peak_voltage", "V", func() float64 { return s.vp }, func() string {
 		return fmt.Sprintf("V_BO = %s across the device", show(s.volts, "V"))
@@ -38,7 +38,7 @@ func (m *breakoverModel) lineFigures() {
 	m.figure("timing_capacitance", "F", func() float64 { return s.c }, func() string {
 		return "all capacitors from the breakover device to the rails"
 	})
-	m.figure("breakover_margin", "V", func() float64 { return s.reach - s.vp }, func() string {
+	m.figure("breakover_margin", "V", func() float64 { return m.extent().reach - s.vp }, func() string {
 		return "crest of the capacitor's voltage less V_BO"
 	})
 	m.last().gate, m.last().bent = true, m.charging.bends
@@ -56,7 +56,7 @@ func (m *breakoverModel) lineFigures() {
 		"from the zero crossing, empty capacitor, to the first breakover")
 	if m.charging.bends {
 		rate("pulse_interval", "s", &s.period,
-			"from the first breakover to the next; it moves in steps of the line's cycle")
+			"from the valley, at the zero crossing, to the next breakover; it moves in steps of the line's cycle")
 	}
 	rate("pulses_per_half_cycle", "", &s.pulses,
 		"breakovers before the line crosses zero again; the fraction says how far the last ramp gets")
@@ -101,7 +101,7 @@ func (m *breakoverModel) limits() {
 	}
 	m.compare(contest{name: "capacitor_voltage_crest", limitName: "vbo", unit: "V", bound: Min,
 		bent: m.charging.bends, working: m.reachWorking,
-		value: func() float64 { return s.reach - (s.vp - s.volts) }, limit: func() float64 { return s.volts }})
+		value: func() float64 { return m.extent().reach - (s.vp - s.volts) }, limit: func() float64 { return s.volts }})
 	if m.line != nil {
 		s.iv = math.NaN() // every zero crossing lets go
 	}
@@ -136,7 +136,7 @@ func (m *breakoverModel) reverseLimit() {
 			if m.line == nil {
 				return max(-s.reach, 0)
 			}
-			return s.reverse
+			return m.extent().reverse
 		}, working: func() string {
 			return "highest voltage of the capacitor against the direction in which the device leads"
 		}})

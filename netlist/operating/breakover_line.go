@@ -44,16 +44,22 @@ func (m *breakoverModel) alternating(x []float64) {
 	r.lower, r.farads, r.bleed, r.sign = s.lower, s.c, m.leaking(x)/s.vp, m.sign
 	m.firstCrest()
 	m.gains.ready = false
-	steady := r.settled()
-	s.reach, s.reverse = steady.most, max(-steady.least, 0)
-	m.paced = false
+	m.paced, m.reached = false, false
 	s.first, s.pulses, s.period = math.Inf(1), 0, math.Inf(1)
 	s.charge, s.ramp = math.Inf(1), 1
-	if !m.charging.bends {
-		m.pace()
-	}
 	s.atPeak = m.deliverable()
-	s.fires = s.reach > s.vp && s.atPeak > 0
+	s.fires = s.atPeak > 0
+}
+
+// extent works out, when it is asked for, how high the capacitor gets while nothing breaks over,
+// and how low.
+func (m *breakoverModel) extent() *breakoverState {
+	if m.line != nil && !m.reached {
+		m.reached = true
+		steady := m.line.ride.settled()
+		m.s.reach, m.s.reverse = steady.most, max(-steady.least, 0)
+	}
+	return &m.s
 }
 
 // pace works out, when it is asked for, when the stage breaks over.
@@ -70,7 +76,7 @@ func (m *breakoverModel) pace() {
 	}
 	s.charge, s.ramp, s.period = s.first, 0, 0.5/m.line.hertz
 	if m.charging.bends {
-		s.period = r.climb(s.first+s.discharge, s.vv, s.vp, &m.gains) - s.first
+		s.period = r.climb(0, s.vv, s.vp, &m.gains) + s.discharge
 	}
 }
 

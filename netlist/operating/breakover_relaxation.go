@@ -40,7 +40,7 @@ type breakoverModel struct {
 	sign                                  float64 // +1 or -1: direction of the charge
 	line                                  *lineFeed
 	gains                                 gains
-	paced                                 bool        // the times on the line are worked out
+	paced, reached                        bool        // the times on the line are worked out, the extent is
 	smooth                                *smoothFeed // rectified and smoothed, taken for dc
 	blocked                               bool        // a one-sided device stands the wrong way round
 }

@@ -9,7 +9,7 @@ import (
 // smoothed.
 func (d *deckMaker) fromTheLine() {
 	d.b.WriteString(".model DR D\n")
-	ends, which := "vcc 0", d.IntN(40)
+	ends, which := "vcc 0", d.IntN(30)
 	if which == 1 {
 		ends = "vcc n"
 	}
@@ -36,7 +36,7 @@ func (d *deckMaker) fromTheLine() {
 func randomBreakover(seed uint64) string {
 	d := &deckMaker{Rand: rand.New(rand.NewPCG(seed, 5))}
 	d.card("random board")
-	line := d.IntN(4) == 0
+	line := d.IntN(8) == 0
 	if line {
 		d.fromTheLine()
 	} else {

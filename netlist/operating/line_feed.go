@@ -144,9 +144,9 @@ func (r response) steps(from, to float64, f func(t float64) bool) (before, after
 	return 0, 0, false
 }
 
-// bisect narrows down when a condition sets in.
+// bisect narrows down when a condition sets in, to far less than a microsecond.
 func bisect(before, after float64, f func(t float64) bool) float64 {
-	for range 45 {
+	for range 26 {
 		middle := before/2 + after/2
 		if f(middle) {
 			after = middle
@@ -157,22 +157,25 @@ func bisect(before, after float64, f func(t float64) bool) float64 {
 	return after
 }
 
-// reaches returns when the response passes a voltage upwards between two times.
-func (r response) reaches(volts, from, to float64) (float64, bool) {
-	above := func(t float64) bool { return r.at(t) >= volts }
-	before, after, found := r.steps(from, to, above)
-	if !found {
-		return 0, false
+// root narrows down when the response passes a voltage upwards between two times (regula
+// falsi, Illinois).
+func (r *response) root(volts, before, after float64) float64 {
+	below, above := r.at(before)-volts, r.at(after)-volts
+	for range 40 {
+		if after-before <= 1e-12*after || above <= 1e-10*volts {
+			break
+		}
+		middle := after - above*(after-before)/(above-below)
+		if !(middle > before && middle < after) {
+			break
+		}
+		if miss := r.at(middle) - volts; miss >= 0 {
+			after, above = middle, miss
+			below /= 2
+		} else {
+			before, below = middle, miss
+			above /= 2
+		}
 	}
-	return bisect(before, after, above), true
-}
-
-// highest returns the highest voltage between two times, on a grid.
-func (r response) highest(from, to float64) float64 {
-	most := r.at(from)
-	r.steps(from, to, func(t float64) bool {
-		most = max(most, r.at(t))
-		return false
-	})
-	return most
+	return after
 }

@@ -119,15 +119,15 @@ func (r *ride) across(t, volts, until, stop float64) trip {
 		if n >= maxStretches {
 			end = until
 		}
-		if at, ok := p.reaches(stop, t, end); ok {
-			tr.at, tr.volts, tr.stopped, tr.most = at, stop, true, stop
-			return tr
-		}
-		p.steps(t, end, func(t float64) bool {
+		before, after, found := p.steps(t, end, func(t float64) bool {
 			v := p.at(t)
 			tr.most, tr.least = max(tr.most, v), min(tr.least, v)
-			return false
+			return v >= stop
 		})
+		if found {
+			tr.at, tr.volts, tr.stopped, tr.most = p.root(stop, before, after), stop, true, stop
+			return tr
+		}
 		t, volts = end, p.at(end)
 	}
 	tr.volts = volts
@@ -226,6 +226,11 @@ const (
 func (r *ride) climb(t, volts, goal float64, g *gains) float64 {
 	cycle := r.cycle()
 	shift := math.Floor(t/cycle) * cycle
+	if !r.charging.bends {
+		if p := r.piece(t, volts); p.offset+math.Abs(p.swing)+max(p.k, 0) < goal {
+			return math.Inf(1)
+		}
+	}
 	tr := r.across(t-shift, volts, cycle, goal)
 	rounds := 0
 	for n := 0; !tr.stopped; n++ {
