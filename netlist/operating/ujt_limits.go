@@ -27,11 +27,15 @@ func (m *ujtModel) derated() {
 	}
 }
 
-// valleyDerating returns the share of the valley current left when hot: 0.6 at
-// 85 deg C, straight from 25 deg C (memory). The same share is taken for a
-// base-two resistor of 470 ohm and more, where the sheet measured with less.
+// hotValley returns the share of a valley current left so many degrees over 25 deg C:
+// 0.6 at 85 deg C, straight in between (memory).
+func hotValley(heat float64) float64 { return 1 - 0.4*min(max(heat, 0), 60)/60 }
+
+// valleyDerating returns the share of the valley current left when hot. The share at
+// 85 deg C is taken too for a base-two resistor of 470 ohm and more, where the sheet
+// measured with less.
 func (m *ujtModel) valleyDerating() float64 {
-	hot := 1 - 0.4*min(max(m.s.heat, 0), 60)/60
+	hot := hotValley(m.s.heat)
 	if m.baseTwo() >= 470 {
 		return min(hot, 0.6)
 	}

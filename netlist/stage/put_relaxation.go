@@ -16,6 +16,15 @@ func (r *recogniser) put(anchor *circuit.Element, nets []circuit.NodeID) *Stage 
 	return u.stage
 }
 
+// unliftedPUT recognises one whose gate leads to the lower rail alone: wired as a stage, but
+// nothing lifts the gate.
+func (r *recogniser) unliftedPUT(anchor *circuit.Element, nets []circuit.NodeID) *Stage {
+	u := r.putReading(anchor, nets[0], nets[1], nets[2])
+	u.unlifted = true
+	u.read()
+	return u.stage
+}
+
 // putReading starts the reading of an oscillator around a device with anode, gate
 // and cathode.
 func (r *recogniser) putReading(anchor *circuit.Element, anode, gate, cathode circuit.NodeID) *rampReading {

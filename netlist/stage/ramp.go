@@ -18,6 +18,8 @@ type rampReading struct {
 	atOutlet, atControl, atNode      *circuit.Area
 	upperVolts, lowerVolts           float64
 	upperVoltsKnown, lowerVoltsKnown bool
+	// unlifted takes a control as it is that leads to the lower rail alone.
+	unlifted bool
 	// How a fault names the three.
 	terminalWords, outletWords, controlWords string
 }
@@ -87,7 +89,7 @@ func (u *rampReading) rails() string {
 	if fixed(u.control) {
 		u.upper = u.control
 		u.upperVolts, u.upperVoltsKnown = u.w.Potential(u.upper)
-	} else if !u.upperRail() {
+	} else if !u.upperRail() && !(u.unlifted && u.chargingRail()) {
 		return u.controlWords + " has no way to a supply"
 	}
 	if u.upper == u.lower {
@@ -144,6 +146,18 @@ func (u *rampReading) upperRail() bool {
 	}
 	if shared, ok := u.sharedRail(); ok && found {
 		u.upper = shared
+	}
+	return found
+}
+
+// chargingRail takes the most positive dc rail that the charging network reaches.
+func (u *rampReading) chargingRail() bool {
+	found := false
+	for _, n := range u.atNode.Nets {
+		v, dc := u.w.Potential(n)
+		if u.w.IsFixed(n) && n != u.lower && dc && (!found || v > u.upperVolts) {
+			u.upper, u.upperVolts, u.upperVoltsKnown, found = n, v, true, true
+		}
 	}
 	return found
 }

@@ -15,15 +15,18 @@ type topology struct {
 	roles []string
 	when  func(r *recogniser, e *circuit.Element) bool // nil: always
 	build func(r *recogniser, anchor *circuit.Element, nets []circuit.NodeID) *Stage
+	// last is a more lenient builder, tried where no terminal order makes a working stage;
+	// nil for none.
+	last func(r *recogniser, anchor *circuit.Element, nets []circuit.NodeID) *Stage
 }
 
 // topologies lists the timing stages first: a gate stage asks for its driver.
 var topologies = [...]topology{
-	{circuit.UJT, UJTOscillator, []string{"emitter", "base1", "base2"}, nil, (*recogniser).ujt},
-	{circuit.PUT, PUTOscillator, []string{"anode", "gate", "cathode"}, nil, (*recogniser).put},
-	{circuit.PNP, PUTOscillator, []string{"emitter", "base", "collector"}, (*recogniser).isCrossed, (*recogniser).crossedPair},
-	{circuit.Diac, BreakoverOscillator, []string{"1", "2"}, nil, (*recogniser).breakover},
-	{circuit.SCR, SCRGate, []string{"anode", "gate", "cathode"}, nil, (*recogniser).scr},
+	{circuit.UJT, UJTOscillator, []string{"emitter", "base1", "base2"}, nil, (*recogniser).ujt, nil},
+	{circuit.PUT, PUTOscillator, []string{"anode", "gate", "cathode"}, nil, (*recogniser).put, (*recogniser).unliftedPUT},
+	{circuit.PNP, PUTOscillator, []string{"emitter", "base", "collector"}, (*recogniser).isCrossed, (*recogniser).crossedPair, nil},
+	{circuit.Diac, BreakoverOscillator, []string{"1", "2"}, nil, (*recogniser).breakover, nil},
+	{circuit.SCR, SCRGate, []string{"anode", "gate", "cathode"}, nil, (*recogniser).scr, nil},
 }
 
 // Recognise returns the stages of a circuit: the timing stages first, then the
@@ -110,6 +113,11 @@ func (r *recogniser) ordered(e *circuit.Element, t *topology) *Stage {
 				return taken // two ways to read it: no verdict from wiring
 			}
 			other, order = s, candidate
+		}
+	}
+	if other == nil && t.last != nil {
+		if s := t.last(r, e, netsOf(r.w, e, roles, t.roles)); s.Gap == "" {
+			return s
 		}
 	}
 	if other == nil {

@@ -82,6 +82,8 @@ type Stage struct {
 	// Taps lists transistors that read the ramp with their base, and Apart parts that
 	// bring a signal in and are left out of the networks.
 	Taps, Apart []*circuit.Element
+	// Pullers lists transistors and switches that can pull the control (a gate) down.
+	Pullers []*circuit.Element
 	// Beside lists what hangs on the stage and is not worked out, in words.
 	Beside []string
 	// Order is set where terminal order and wiring do not agree.

@@ -87,6 +87,8 @@ func TestOtherTimingStages(t *testing.T) {
 			"X1: timing-resistor=R1 timing-capacitor=C1" + put + " gate-shunt=R9"},
 		{"programmable, lamp diode at the cathode", "put-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nX1 a g k 2N6027\nR2 vcc g 10k\nR3 g 0 15k\nR4 k d 47\nD1 d 0 DZ" + supply + models,
 			"X1: timing-resistor=R1 timing-capacitor=C1" + put},
+		{"programmable, gate at the lower rail alone", "put-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nX1 a g k 2N6027\nR3 g 0 15k\nR4 k 0 47" + supply,
+			"X1: timing-resistor=R1 timing-capacitor=C1 base-one=R4 gate-divider=R3 supply=V1"},
 		{"programmable, gate in the air", "put-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nX1 a g k 2N6027\nR4 k 0 47" + supply, "X1: the gate has no way to a supply"},
 		{"crossed pair", "put-oscillator", "R1 vcc a 100k\nC1 a 0 1u\nQ1 x g a QP\nQ2 g x k QN\nR5 x k 22k" + divider + models,
 			"Q1: timing-resistor=R1 timing-capacitor=C1 base-one=R4 gate-divider=R2,R3 supply=V1 gate-shunt=R5"},

@@ -71,6 +71,9 @@ func (u *rampReading) besideControl() {
 	area := u.w.Walk([]circuit.NodeID{u.control}, carriesDC, u.ends)
 	for _, e := range u.strangers(area, func(n circuit.NodeID) bool { return u.ends(n) && n != u.control }) {
 		if !slices.Contains(u.stage.Clamps, e) {
+			if u.pullsDown(e) {
+				u.stage.Pullers = append(u.stage.Pullers, e)
+			}
 			u.tell(e, "hangs on "+u.controlWords+"; what it does there is not worked out")
 		}
 	}
@@ -89,6 +92,28 @@ func (u *rampReading) besideControl() {
 			u.tell(e, "leads a signal to "+u.controlWords+" (synchronisation); the stage is worked out without it")
 		}
 	}
+}
+
+// pullsDown reports whether a transistor or switch can connect what it hangs on with the
+// lower rail.
+func (u *rampReading) pullsDown(e *circuit.Element) bool {
+	low := func(n circuit.NodeID) bool {
+		if n = u.w.Net(n); n == u.lower {
+			return true
+		}
+		return !u.ends(n) && u.w.Walk([]circuit.NodeID{n}, isResistor, u.ends).HasNet(u.w, u.lower)
+	}
+	switch e.Kind {
+	case circuit.NPN, circuit.NMOS, circuit.NJF:
+		for _, role := range [2]string{"emitter", "source"} {
+			if n, ok := e.Pin(role); ok && low(n) {
+				return true
+			}
+		}
+	case circuit.Switch:
+		return low(e.Nodes[0]) != low(e.Nodes[1])
+	}
+	return false
 }
 
 // tell names a part that is not worked out.

@@ -1,6 +1,7 @@
 package oscillator
 
 import (
+	"standoff/netlist/operating"
 	"standoff/netlist/stage"
 	"standoff/rules/rule"
 )
@@ -37,21 +38,40 @@ R3 g 0 22k
 R4 k 0 47
 .end
 `,
-	Check: each(rule.Case{
+	Check: func(p *rule.Pass) {
+		p.Timing(func(a *operating.Account) {
+			cases := dividerCases()
+			if k, ok := a.Comparison(cases[0].Comparison); ok && k.Fails() {
+				cases = cases[:1] // all else follows from that
+			}
+			for _, c := range cases {
+				p.Judge(a, c)
+			}
+		})
+	},
+}
+
+// dividerCases lists what can be wrong with a divider.
+func dividerCases() []rule.Case {
+	return []rule.Case{{
+		Comparison: "divider_gate_voltage", Place: divider, FailsOnly: true,
+		Fails: "the stage does not swing: nothing lifts the gate",
+		Value: "its voltage over the lower rail", Limit: "it needs more than",
+	}, {
 		Comparison: "divider_peak_voltage", Place: divider, Mend: divider, FailsOnly: true,
 		Fails: "the stage never fires: the divider holds the gate too high",
 		Value: "the peak voltage", Limit: "the capacitor reaches no more than",
-	}, rule.Case{
+	}, {
 		Comparison: "divider_least_voltage", Place: divider, Mend: divider, FailsOnly: true,
 		Fails: "the stage does not swing: the divider holds the gate too low",
 		Value: "the peak voltage over 0.9", Limit: "the valley lies at",
-	}, rule.Case{
+	}, {
 		Comparison: "gate_source_resistance_least", Place: divider, Mend: divider, FailsOnly: true,
 		Fails: "nobody knows what currents the stage needs",
 		Value: "the resistance of the divider", Limit: "the sheet begins at",
-	}, rule.Case{
+	}, {
 		Comparison: "gate_source_resistance_greatest", Place: divider, Mend: divider, FailsOnly: true,
 		Fails: "nobody knows what currents the stage needs",
 		Value: "the resistance of the divider", Limit: "the sheet ends at",
-	}),
+	}}
 }

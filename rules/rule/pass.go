@@ -41,6 +41,9 @@ func Words(a *operating.Account, text string) string {
 	switch a.Stage.Kind {
 	case stage.PUTOscillator:
 		device, terminal = "programmable unijunction", "anode"
+		if a.Stage.Partner != nil {
+			device = "crossed pair"
+		}
 	case stage.BreakoverOscillator:
 		device, terminal = "breakover device", "breakover device"
 	}
