@@ -22,8 +22,10 @@ func partUnknown() *rule.Rule {
 			"*> board ambient=15..40"),
 		Check: func(p *rule.Pass) {
 			unknownParts(p)
+			told := map[string]bool{}
 			for _, m := range p.Circuit.UnusedModels {
-				if p.File != nil && m.At.File == p.File {
+				if name := strings.ToLower(m.Name); p.File != nil && m.At.File == p.File && !told[name] {
+					told[name] = true
 					p.Report(rule.Finding{Grade: rule.Remark, At: m.At, Parts: []string{m.Name},
 						Message: fmt.Sprintf("the model %s is defined and never used", rule.Name(m.Name))})
 				}

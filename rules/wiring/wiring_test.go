@@ -97,6 +97,8 @@ func TestFaultsAreFound(t *testing.T) {
 		"in no series":              {"R9 vcc 0 99k\n", "value-not-preferred remark", "R9"},
 		"a 1 % value at 5 %":        {"R9 vcc 0 48.7k\n", "value-not-preferred remark", "R9"},
 		"a key given twice":         {"*> R1 tol=1%\n*> R1 tol=2%\n", "intent-repeated remark", "R1"},
+		"a key given three times":   {"*> R1 tol=1%\n*> R1 tol=2%\n*> r1 TOL=5%\n", "intent-repeated remark", "R1"},
+		"a model twice, never used": {".model DW d\n.model dw d\n", "part-unknown remark", "DW"},
 	} {
 		list, all := findings(t, small+row.more)
 		if got := strings.Join(list, ", "); got != row.want {
