@@ -86,7 +86,9 @@ func (m *putModel) surgeWorking() string {
 func (m *putModel) energy() float64 { return 0.5 * m.s.c * m.s.vp * m.s.vp }
 
 // power returns the mean power in the device: the charge of each pulse falls through its
-// drop, and the rest of the energy is shared out over the resistances of the path.
+// drop, and the rest of the energy is shared out over the resistances of the path. It is
+// held against no rating: a stage that lets go charges with less than I_V, so that no
+// more than I_V V_P arises.
 func (m *putModel) power() float64 {
 	s := &m.s
 	swing := s.vp - s.vv
@@ -97,10 +99,4 @@ func (m *putModel) powerWorking() string {
 	s := &m.s
 	return fmt.Sprintf("f C dV (V_F + dV/2 R_on/(R_on + R_K + R_A)), dV = V_P - V_V = %s, V_F = %s, f = %s",
 		show(s.vp-s.vv, "V"), show(s.drop, "V"), show(1/s.period, "Hz"))
-}
-
-// powerAllowed returns the rated power less its derating above 25 deg C.
-func (m *putModel) powerAllowed(rated float64) float64 {
-	slope, _, _ := m.ratings.Limit("pd_slope")
-	return max(rated-slope*max(m.s.heat, 0), 0)
 }

@@ -138,11 +138,6 @@ func (m *putModel) ratingLimits() {
 		m.contests[len(m.contests)-1].because = "at what moment " + m.stage.Pullers[0].Designator +
 			" pulls the gate down is not worked out"
 	}
-	if rated, mark, ok := m.ratings.Limit("pd"); ok {
-		m.compare(contest{name: "device_power", limitName: "device_power_allowed", unit: "W", bound: Max, bent: true,
-			gated: true, value: m.power, limit: func() float64 { return m.powerAllowed(rated) }, limitMark: mark,
-			working: m.powerWorking})
-	}
 }
 
 // cathodePulse returns how high the cathode rises over the lower rail.

@@ -11,10 +11,9 @@ var capacitorLarge = &rule.Rule{
 	Why: "The makers allow a capacitor to be discharged straight into the emitter only up to a size. A " +
 		"larger one needs enough resistance in the emitter or base-one lead to keep the pulse below the " +
 		"rated peak emitter current, or the junction is damaged a little at every pulse. For a programmable " +
-		"unijunction the makers limit the energy, and many discharges a second add up to its power.",
-	Formula: "C > C_direct of the sheet while R_B1 + R_E < V_P/I_E(pulse); PUT: C V_P^2/2 < energy of the sheet, " +
-		"f C dV (V_F + dV/2 R_on/R) < its power",
-	Source: "2N2646 data sheet: 2 A by discharge of at most 10 uF and 30 V; 2N6027 data sheet: 250 uJ",
+		"unijunction the makers limit the energy.",
+	Formula: "C > C_direct of the sheet while R_B1 + R_E < V_P/I_E(pulse); PUT: C V_P^2/2 < energy of the sheet",
+	Source:  "2N2646 data sheet: 2 A by discharge of at most 10 uF and 30 V; 2N6027 data sheet: 250 uJ",
 	Failing: `Slow flasher for a signpost
 V1 vcc 0 20
 R1 vcc e 47k
@@ -40,11 +39,6 @@ R3 b1 0 4.7
 		Place:      []stage.Role{stage.TimingCapacitor}, Mend: []stage.Role{stage.TimingCapacitor},
 		Fails: "every discharge strains the {device}",
 		Value: "the energy of the timing capacitor", Limit: "the maker allows",
-	}, rule.Case{
-		Comparison: "device_power", FailsOnly: true,
-		Place: []stage.Role{stage.TimingCapacitor}, Mend: []stage.Role{stage.TimingCapacitor, stage.TimingResistor},
-		Fails: "the discharges heat the {device} too much",
-		Value: "the mean power in it", Limit: "at the hottest ambient it may take",
 	}, rule.Case{
 		Comparison: "timing_capacitance_direct",
 		Place:      []stage.Role{stage.TimingCapacitor},
