@@ -2,10 +2,14 @@ package network
 
 import "math"
 
+// rounding is what a voltage may be off by, in volt.
+const rounding = 1e-9
+
 // Headroom appends, for every diode in the order of the network, how far the last
 // solution is from leaving the segment that the diode is on, in volt: above it and
-// below it, +Inf where the segment has no end. Negative means that it has left. While the diodes
-// stay, every entry goes straight with the values of sources.
+// below it, +Inf where the segment has no end. Negative means that it has left, by more
+// than a nanovolt: what a blocking diode leads may keep another one at its very end. While the
+// diodes stay, every entry goes straight with the values of sources.
 func (s *Solver) Headroom(to []float64) []float64 {
 	for i := range s.diodes {
 		d := &s.diodes[i]
@@ -13,11 +17,11 @@ func (s *Solver) Headroom(to []float64) []float64 {
 		v, threshold := s.Voltage(b.a)-s.Voltage(b.b), s.Values[d.branch]
 		switch d.segment {
 		case 1:
-			to = append(to, math.Inf(1), v-threshold)
+			to = append(to, math.Inf(1), v-threshold+rounding)
 		case -1:
-			to = append(to, -d.breakdown-v, math.Inf(1))
+			to = append(to, -d.breakdown-v+rounding, math.Inf(1))
 		default:
-			to = append(to, threshold-v, v+d.breakdown)
+			to = append(to, threshold-v+rounding, v+d.breakdown+rounding)
 		}
 	}
 	return to

@@ -25,6 +25,7 @@ type Solver struct {
 	solution []float64
 	shift    []float64 // offset of each node in volt
 	diodes   []diodeState
+	scale    float64   // share of the sources that counts, 1 but on the way to a solution
 	solved   []float64 // Values of the last consistent solution; empty where there is none
 }
 
@@ -47,6 +48,7 @@ const wire = 1e-3
 const blocking = 1e-12
 
 func (s *Solver) allocate() {
+	s.scale = 1
 	s.matrix = make([]float64, s.rows*s.rows)
 	s.rhs = make([]float64, s.rows)
 	s.solution = make([]float64, s.rows)
@@ -103,34 +105,34 @@ func (s *Solver) Solve() bool {
 	}
 	s.solved = s.solved[:0]
 	s.shifts()
-	sweeps := 4 + 8*len(s.diodes)
-	for sweep := range sweeps + oneByOne*len(s.diodes) {
-		s.assemble()
-		s.factorise()
-		copy(s.solution, s.rhs)
-		s.substitute(s.solution)
-		if !s.flip(sweep < sweeps) {
+	for range 4 + 8*len(s.diodes) {
+		s.held()
+		if !s.flip() {
 			s.solved = append(s.solved, s.Values...)
 			return true
 		}
 	}
-	return len(s.diodes) == 0
+	if s.trace() {
+		s.solved = append(s.solved, s.Values...)
+		return true
+	}
+	return false
 }
 
-// oneByOne is how many steps a diode is given where moving all of them at once goes
-// round in a circle: then only the first that disagrees moves (least-index
-// pivoting, which ends on any network without gain above one).
-const oneByOne = 32
+// held solves for the present Values and offsets with every diode on its segment.
+func (s *Solver) held() {
+	s.assemble()
+	s.factorise()
+	copy(s.solution, s.rhs)
+	s.substitute(s.solution)
+}
 
 // SolveHeld solves for the present Values with every diode on the segment of the last
 // solution, whether it agrees or not.
 func (s *Solver) SolveHeld() {
 	s.solved = s.solved[:0]
 	s.shifts()
-	s.assemble()
-	s.factorise()
-	copy(s.solution, s.rhs)
-	s.substitute(s.solution)
+	s.held()
 }
 
 // shifts works out how far each node lies above its root.
@@ -156,8 +158,8 @@ func (s *Solver) assemble() {
 		case resistor:
 			s.stamp(b, 1/max(s.Values[i], wire), 0)
 		case current:
-			s.inject(b.a, -s.Values[i])
-			s.inject(b.b, s.Values[i])
+			s.inject(b.a, -s.Values[i]*s.scale)
+			s.inject(b.b, s.Values[i]*s.scale)
 		}
 	}
 	for _, d := range s.diodes {
@@ -193,13 +195,16 @@ func (s *Solver) stampFollower(f follower, g, e float64) {
 }
 
 // line returns conductance and voltage offset of the segment a diode is on:
-// i = g (v - e).
+// i = g (v - e). What it leads when blocking flows on every segment, so that the
+// characteristic has no step.
 func (d *diodeState) line(threshold float64) (g, e float64) {
 	switch d.segment {
 	case 1:
-		return 1 / d.slope, threshold
+		g = 1 / d.slope
+		return g + blocking, threshold * g / (g + blocking)
 	case -1:
-		return 1 / d.breakdownSlope, -d.breakdown
+		g = 1 / d.breakdownSlope
+		return g + blocking, -d.breakdown * g / (g + blocking)
 	}
 	return blocking, 0
 }
@@ -269,30 +274,34 @@ func (s *Solver) substitute(v []float64) {
 	}
 }
 
-// flip moves every diode (or only the first) to the segment its voltage asks for
-// and reports whether any moved. A conducting diode stays while its current is
-// forward.
-func (s *Solver) flip(all bool) bool {
+// flip moves every diode to the segment its voltage asks for and reports whether any
+// moved. A conducting diode stays while its current is forward.
+func (s *Solver) flip() bool {
 	moved := false
 	for i := range s.diodes {
 		d := &s.diodes[i]
-		b := s.branches[d.branch]
-		v, threshold := s.Voltage(b.a)-s.Voltage(b.b), s.Values[d.branch]
-		segment := int8(0)
-		switch {
-		case v > threshold:
-			segment = 1
-		case v < -d.breakdown:
-			segment = -1
-		}
-		if segment != d.segment {
+		if segment := d.asked(s.across(d), s.Values[d.branch]); segment != d.segment {
 			d.segment, moved = segment, true
-			if !all {
-				return true
-			}
 		}
 	}
 	return moved
+}
+
+// across returns the voltage across a diode in the last solution.
+func (s *Solver) across(d *diodeState) float64 {
+	b := s.branches[d.branch]
+	return s.Voltage(b.a) - s.Voltage(b.b)
+}
+
+// asked returns the segment that belongs to a voltage.
+func (d *diodeState) asked(volts, threshold float64) int8 {
+	switch {
+	case volts > threshold:
+		return 1
+	case volts < -d.breakdown:
+		return -1
+	}
+	return 0
 }
 
 // Conducts reports whether a diode conducts forward in the last solution.
