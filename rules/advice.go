@@ -15,6 +15,7 @@ const (
 	trialsAFinding = 600
 	trialsABoard   = 2000
 	elementsTried  = 2_000_000 // elements of the board times trials
+	plainStages    = 4         // a board with stages that cost more than so many plain ones has fewer trials
 	trialsAtLeast  = 20        // a finding that may not have these is not looked at
 )
 
@@ -27,7 +28,7 @@ func advise(b *netlist.Board, findings []rule.Finding) {
 	if len(hunts) == 0 {
 		return
 	}
-	budget := min(trialsABoard, elementsTried/max(len(b.Circuit.Elements), 1))
+	budget := min(int(trialsABoard/max(effort(b)/plainStages, 1)), elementsTried/max(len(b.Circuit.Elements), 1))
 	served := max(1, min(len(hunts), budget/trialsAtLeast))
 	a := &adviser{board: b, now: judged(b, run(b, Options{}))}
 	a.trials = min(trialsAFinding, max(trialsAtLeast, budget/served))
@@ -35,6 +36,15 @@ func advise(b *netlist.Board, findings []rule.Finding) {
 		h.tell(nil, "no value was looked for: this board has more findings than can be tried out")
 	}
 	a.all(hunts[:served])
+}
+
+// effort is what working all stages of a board out costs, in plain stages.
+func effort(b *netlist.Board) float64 {
+	sum := 0.0
+	for _, a := range b.Accounts {
+		sum += a.Effort()
+	}
+	return sum
 }
 
 // gather makes one hunt for all findings of a rule on a stage: what clears one has

@@ -110,6 +110,29 @@ func (a *Account) Figures() []Figure {
 	return a.figures
 }
 
+// Effort returns how much working the stage out costs, a plain stage of fifteen
+// variables being 1: the search grows with the square of the variables, and looks
+// around more where the charging network bends.
+func (a *Account) Effort() float64 {
+	if a.model == nil {
+		return 0
+	}
+	free := 0.0
+	for _, v := range a.model.box {
+		if v.Low < v.High {
+			free++
+		}
+	}
+	effort := free * free / (15 * 15)
+	switch {
+	case a.model.scatter > 0:
+		return effort * 16
+	case a.model.grain > 0:
+		return effort * 6
+	}
+	return effort
+}
+
 // Nominal returns a figure on the nominal board; NaN where there is none of that
 // name.
 func (a *Account) Nominal(name string) float64 {
