@@ -126,9 +126,9 @@ func (a *Account) Effort() float64 {
 	effort := free * free / (15 * 15)
 	switch {
 	case a.model.scatter > 0:
-		return effort * 16
+		return effort * 64
 	case a.model.grain > 0:
-		return effort * 6
+		return effort * 16
 	}
 	return effort
 }
