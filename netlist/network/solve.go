@@ -74,16 +74,6 @@ func (s *Solver) SetDiode(b Branch, slope, breakdown, breakdownSlope float64) {
 	}
 }
 
-// Slope returns the slope resistance of a diode when it conducts, in ohm.
-func (s *Solver) Slope(b Branch) float64 {
-	for i := range s.diodes {
-		if s.diodes[i].branch == b {
-			return s.diodes[i].slope
-		}
-	}
-	return 0
-}
-
 // SetGain sets what share of a diode's current its followers carry, 0 .. below 1.
 func (s *Solver) SetGain(d Branch, gain float64) {
 	for i := range s.follow {

@@ -42,17 +42,6 @@ type meshBranch struct {
 	set    func(x []float64) float64 // works the value out, nil where the slot gives it
 }
 
-// diodeSlope is the slope resistance of a conducting diode in ohm: a silicon
-// diode changes by about 60 mV a decade (memory), less than 1 ohm above 30 mA.
-const diodeSlope = 1
-
-// diodeThreshold is the threshold of a silicon diode at 25 deg C in volt from
-// microamperes to tens of milliamperes, and its drift in V/K (common practice,
-// no source).
-var diodeThreshold = quantity.Spread{Low: 0.5, Nominal: 0.65, High: 0.8}
-
-const diodeDrift = -2e-3
-
 // newMesh takes in every element that the starting nets reach without crossing
 // a net that voltage sources fix, and the sources behind the fixed nets.
 func newMesh(b *bench, starts []circuit.NodeID, leaveOut func(*circuit.Element) bool) (*mesh, error) {
@@ -195,8 +184,7 @@ func (m *mesh) diode(e *circuit.Element, mb meshBranch) error {
 	}
 	s, known := m.bench.slots[e]
 	if !known {
-		index := m.bench.assumed("drop of "+e.Designator, "V", diodeThreshold, "silicon diode, assumed")
-		s = slot{index: index, tempco: -1}
+		s = slot{index: m.bench.drop(e), tempco: -1}
 		m.bench.slots[e] = s
 	}
 	mb.slot, mb.drift = s, diodeDrift
@@ -267,6 +255,9 @@ func (m *mesh) load(x []float64) {
 		if mb.zener >= 0 {
 			m.solver.SetDiode(mb.branch, diodeSlope, x[mb.zener], diodeSlope)
 		}
+	}
+	for i := range m.junctions {
+		m.junctions[i].shape(m.solver, x)
 	}
 }
 

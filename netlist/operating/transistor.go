@@ -35,10 +35,11 @@ func (m *mesh) transistor(e *circuit.Element) error {
 	nc, nb, ne := m.node(c), m.node(b), m.node(emitter)
 	forward := m.junction(e, v, [3]network.Node{nb, ne, nc})
 	forward.gain = m.bench.gain(e)
-	m.junctions = append(m.junctions, junctionAt{forward.branch, nb, ne})
+	j := junctionAt{branch: forward.branch, a: nb, c: ne, slope: leastSlope, own: m.bench.mismatched(e)}
 	if e.Kind == circuit.PNP {
-		m.junctions[len(m.junctions)-1] = junctionAt{forward.branch, ne, nb}
+		j.a, j.c = ne, nb
 	}
+	m.junctions = append(m.junctions, j)
 	back := m.junction(e, v, [3]network.Node{nb, nc, ne})
 	back.gain = m.bench.exactGain(e)
 	m.branches = append(m.branches, forward, back)
@@ -74,25 +75,23 @@ const thermal = 0.0257
 // differ at the same current and temperature, in volt (common practice, no source).
 var mismatch = quantity.Spread{Low: -0.01, High: 0.01}
 
-// junctionVolts returns the threshold of a transistor's junction: the base-emitter
-// voltage of its type with its drift, and what the single transistor differs by where
-// others of the type stand beside it. The slope resistance at the working point takes
-// kT/q of it.
+// junctionVolts returns the threshold of a transistor's junctions: the base-emitter
+// voltage of its type with its drift, less the kT/q that the slope resistance takes at
+// the working point.
 func (b *bench) junctionVolts(e *circuit.Element) func(x []float64) float64 {
-	kind, own := b.baseEmitter(e), -1
+	kind := b.baseEmitter(e)
+	return func(x []float64) float64 { return x[kind] + diodeDrift*(x[b.ambient]-25) - thermal }
+}
+
+// mismatched adds by how much the base-emitter voltage of a transistor differs from that of others
+// of its type that stand beside it; -1 where none does.
+func (b *bench) mismatched(e *circuit.Element) int {
 	for _, other := range b.active {
 		if other != e && other.Kind == e.Kind && other.PartName == e.PartName {
-			own = b.assumed("mismatch of "+e.Designator, "V", mismatch, "assumed")
-			break
+			return b.assumed("mismatch of "+e.Designator, "V", mismatch, "assumed")
 		}
 	}
-	return func(x []float64) float64 {
-		v := x[kind] + diodeDrift*(x[b.ambient]-25) - thermal
-		if own >= 0 {
-			v += x[own]
-		}
-		return v
-	}
+	return -1
 }
 
 // baseEmitter adds the base-emitter voltage of a type of transistor, once: the card's
@@ -115,10 +114,23 @@ func (b *bench) baseEmitter(e *circuit.Element) int {
 	return i
 }
 
-// junctionAt is a base-emitter junction in the solver: anode and cathode.
+// junctionAt is a base-emitter junction in the solver: anode and cathode, the slope resistance at
+// its working current, and the variable of its mismatch, -1 for none.
 type junctionAt struct {
 	branch network.Branch
 	a, c   network.Node
+	slope  float64
+	own    int
+}
+
+// shape sets the slope resistance of a junction at a point. A mismatch counts there: at the same
+// voltage the currents of two junctions stand in the ratio exp(mismatch q/kT), however large they are.
+func (j *junctionAt) shape(s *network.Solver, x []float64) {
+	slope := j.slope
+	if j.own >= 0 {
+		slope *= math.Exp(x[j.own] / thermal)
+	}
+	s.SetDiode(j.branch, slope, math.Inf(1), 1)
 }
 
 // Slope resistances of junctions lie between these, in ohm: those of 25 mA and of
@@ -135,13 +147,13 @@ func (c *charging) slopes(nominal []float64, lower network.Node) {
 		m.load(nominal)
 		c.draw(0)
 		c.seize(m.solver.Voltage(lower) + 1)
-		for _, j := range m.junctions {
+		for i := range m.junctions {
+			j := &m.junctions[i]
 			if !m.solver.Conducts(j.branch) {
 				continue
 			}
-			slope := m.solver.Slope(j.branch)
-			amperes := (m.solver.Voltage(j.a) - m.solver.Voltage(j.c) - m.solver.Values[j.branch]) / slope
-			m.solver.SetDiode(j.branch, min(max(thermal/max(amperes, 1e-12), leastSlope), greatestSlope), math.Inf(1), 1)
+			amperes := (m.solver.Voltage(j.a) - m.solver.Voltage(j.c) - m.solver.Values[j.branch]) / j.slope
+			j.slope = min(max(thermal/max(amperes, 1e-12), leastSlope), greatestSlope)
 		}
 	}
 	c.held = math.NaN()

@@ -20,7 +20,7 @@ type Symbol struct {
 
 // Symbols returns the symbols of a kind of part in the order of the sheets. The
 // kinds whose cards belong to SPICE have none, but for the diode: its symbols
-// are those that make a zener of it.
+// are those that make a zener or a light-emitting diode of it.
 func Symbols(kind Kind) []Symbol {
 	switch kind {
 	case UJT:

@@ -94,10 +94,12 @@ var sourceSymbols = []Symbol{
 	{"tj", "deg C", Least, "junction temperature rating"},
 }
 
-// zenerSymbols are what makes a zener of a diode card; the rest is SPICE's own.
+// zenerSymbols are what makes a zener, or a light-emitting diode, of a diode card; the rest is
+// SPICE's own.
 var zenerSymbols = []Symbol{
 	{"bv", "V", Either, "breakdown voltage"},
 	{"vz_tol", "", Greatest, "relative tolerance of the breakdown voltage"},
+	{"vf", "V", Either, "forward voltage at 25 deg C"},
 	{"iz_min", "A", Greatest, "least current at which it regulates"},
 	{"iz_test", "A", Condition, "current at which bv holds"},
 	{"zz", "ohm", Greatest, "dynamic impedance at iz_test"},
