@@ -13,10 +13,20 @@ import (
 // trait says what a variable is and how far it can be trusted.
 type trait struct {
 	name, unit string
-	memory     bool   // the figure is from memory: what depends on it is a doubt
-	doubtLow   bool   // the low end is assumed, nobody published it
-	doubtHigh  bool   // the high end is assumed
-	note       string // what is assumed, in words; "" where nothing is
+	memory     bool    // the figure is from memory: what depends on it is a doubt
+	about      float64 // the factor within which a figure from memory is sure, 0 for two
+	doubtLow   bool    // the low end is assumed, nobody published it
+	doubtHigh  bool    // the high end is assumed
+	note       string  // what is assumed, in words; "" where nothing is
+}
+
+// factors returns what a figure from memory is multiplied with to see whether a verdict
+// rests on it.
+func (t trait) factors() [2]float64 {
+	if t.about == 0 {
+		return [2]float64{0.5, 2}
+	}
+	return [2]float64{1 / t.about, t.about}
 }
 
 // bench collects the variables of a stage: everything that differs from board

@@ -126,7 +126,7 @@ func (d drifting) comparisons(target *quantity.Spread) []Comparison {
 }
 
 // memoryOf returns the note of a figure from memory without which a broken end of the
-// target would be kept: with half or twice of it; "" where there is none.
+// target would be kept: with half or twice of it, or what its trait says; "" where there is none.
 func (d drifting) memoryOf(c Comparison) string {
 	if !c.Fails() {
 		return ""
@@ -135,7 +135,7 @@ func (d drifting) memoryOf(c Comparison) string {
 		if !t.memory {
 			continue
 		}
-		for _, factor := range [2]float64{0.5, 2} {
+		for _, factor := range t.factors() {
 			x := d.nominal()
 			x[i] *= factor
 			low, high := d.over(x)

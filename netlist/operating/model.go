@@ -278,7 +278,8 @@ func markWords(mark part.Mark) string {
 // memoryIn returns the note of a figure from memory on which a contest rests at
 // a point, "" where there is none. A contest rests on a figure where half or
 // twice of it would turn the verdict or move the margin by more than a twentieth:
-// a period does not rest on the pulse amplitude that the discharge time uses.
+// a period does not rest on the pulse amplitude that the discharge time uses. Of a figure
+// that is sure within a factor, only what turns the verdict within that factor counts.
 func (m *model) memoryIn(k int, at []float64) string {
 	x := append([]float64(nil), at...)
 	m.evaluate(x)
@@ -288,12 +289,12 @@ func (m *model) memoryIn(k int, at []float64) string {
 		if !t.memory {
 			continue
 		}
-		for _, factor := range [2]float64{0.5, 2} {
+		for _, factor := range t.factors() {
 			x[i] = at[i] * factor
 			m.evaluate(x)
 			there := c.ratio()
 			turned := c.bound == Min && there >= 1 || c.bound == Max && there <= 1
-			if turned || math.Abs(there-here) > math.Abs(here)/20 {
+			if turned || t.about == 0 && math.Abs(there-here) > math.Abs(here)/20 {
 				return t.note
 			}
 		}

@@ -146,7 +146,7 @@ func (m *putModel) device() {
 	if len(m.vt.at) == 0 {
 		m.vt = anywhere(m.assumed("vt", "V", assumedOffset, "offset voltage not published, assumed"))
 	}
-	m.drift = m.add(trait{name: "vt_tc", unit: "V/K", memory: true,
+	m.drift = m.add(trait{name: "vt_tc", unit: "V/K", memory: true, about: 1.5,
 		note: "the drift of the offset voltage is from memory"}, quantity.Exact(offsetDrift))
 	var ok bool
 	if m.igao, ok = m.rating(r, "igao", "A"); !ok {

@@ -88,7 +88,7 @@ func TestDriftFromMemoryIsADoubt(t *testing.T) {
 	for _, c := range []struct {
 		intent  string
 		certain bool
-	}{{"*> X1 period=0.22..0.229\n", false}, {"*> X1 period=0.22..0.229\n*> C1 tempco=-3000\n", true}} {
+	}{{"*> X1 period=0.22..0.23\n", false}, {"*> X1 period=0.22..0.23\n*> C1 tempco=-3000\n", true}} {
 		k, ok := accountOf(t, board+c.intent).Comparison("frequency_drift_lowest")
 		if !ok || !k.Fails() || k.Certain != c.certain {
 			t.Errorf("%s: %+v", c.intent, k)

@@ -1,6 +1,9 @@
 package oscillator
 
-import "standoff/rules/rule"
+import (
+	"standoff/netlist/stage"
+	"standoff/rules/rule"
+)
 
 var putGateVoltage = &rule.Rule{
 	ID: "put-gate-voltage", Group: group,
@@ -37,11 +40,18 @@ R4 k 0 47
 		overVolted("gate_anode_voltage", "the gate over the anode of the empty capacitor"),
 		overVolted("anode_voltage", "the anode over the cathode"),
 		overVolted("gate_reverse_voltage_standby", "the cathode over the gate"),
-		overVolted("gate_reverse_voltage", "the cathode, while it carries the pulse, over a gate pulled down,")),
+		pulledDown()),
 }
 
 // overVolted judges one of the device's voltages.
 func overVolted(comparison, value string) rule.Case {
 	return rule.Case{Comparison: comparison, Place: divider, Mend: divider,
 		Fails: "the {device} may break down", Value: value, Limit: "the sheet allows"}
+}
+
+// pulledDown judges the pulse on the cathode against a gate that a transistor pulls down.
+func pulledDown() rule.Case {
+	c := overVolted("gate_reverse_voltage", "the cathode, while it carries the pulse, over a gate pulled down,")
+	c.Place, c.Mend = []stage.Role{stage.BaseOne}, nil
+	return c
 }
