@@ -198,20 +198,17 @@ func (m *breakoverModel) networks() error {
 func (m *breakoverModel) gateAlone() {
 	s := m.stage
 	m.gate = -1
-	if len(s.Parts[stage.BaseOne]) > 0 || m.w.IsFixed(s.Nodes["outlet"]) {
+	if len(s.Parts[stage.BaseOne]) > 0 || m.w.IsFixed(s.Nodes["outlet"]) || len(s.Drives) == 0 {
 		return
 	}
-	for _, g := range s.Drives {
-		high := usualGateVoltage
-		if r := g.Anchor.Ratings; r != nil {
-			if v, _, ok := r.Limit("vgt"); ok {
-				high = max(v, leastGateVoltage)
-			}
+	g, high := s.Drives[0], usualGateVoltage
+	if r := g.Anchor.Ratings; r != nil {
+		if v, _, ok := r.Limit("vgt"); ok {
+			high = max(v, leastGateVoltage)
 		}
-		m.gate = m.assumed("gate voltage of "+g.Anchor.Designator, "V",
-			quantity.Spread{Low: leastGateVoltage, Nominal: (leastGateVoltage + high) / 2, High: high}, "assumed")
-		return
 	}
+	m.gate = m.assumed("gate voltage of "+g.Anchor.Designator, "V",
+		quantity.Spread{Low: leastGateVoltage, Nominal: (leastGateVoltage + high) / 2, High: high}, "assumed")
 }
 
 // direction finds which way the capacitor charges on the nominal board.

@@ -10,8 +10,6 @@ import (
 // lineFeed is a charging network whose sources swing.
 type lineFeed struct {
 	hertz      float64
-	crest      float64 // swing of the voltage behind the resistance, of a network without diodes
-	ohms       float64
 	plus, less []float64 // values of the branches at the two crests
 	*ride
 }

@@ -21,11 +21,10 @@ const mostRipple = 0.5
 
 // newSmoothFeed works out from the nominal board how far the reservoir falls between crests.
 func (m *breakoverModel) newSmoothFeed(e *circuit.Element) (*smoothFeed, error) {
-	x := m.nominal()
 	s := &smoothFeed{feed: m.line, share: 1, ripple: -1}
 	mesh, lower := m.standing, m.standing.node(m.stage.Nodes["lower"])
 	slot := m.element(e)
-	x = m.nominal()
+	x := m.nominal()
 	s.feed.crests(mesh, x)
 	var net circuit.NodeID
 	for _, n := range e.Nodes {
