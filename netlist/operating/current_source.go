@@ -17,6 +17,7 @@ type regulated struct {
 	greatest   float64                   // its rating, +Inf for none
 	amperes    func(x []float64) float64 // nil for a transistor: the network sets it
 	from, upTo float64                   // the range of currents it can be set to; 0, +Inf for none
+	slope      int                       // variable of its volts per kelvin, where it has a third terminal
 	mark       part.Mark
 	assumed    bool // the least voltage is assumed
 }
@@ -57,11 +58,11 @@ func (b *bench) ends(e *circuit.Element) []circuit.NodeID {
 	if e.Kind == circuit.NPN || e.Kind == circuit.PNP {
 		return e.Nodes
 	}
-	high, low, _, ok := stage.RegulatorEnds(b.w, e)
+	r, ok := stage.RegulatorOf(b.w, e)
 	if !ok {
 		return nil
 	}
-	return []circuit.NodeID{high, low}
+	return []circuit.NodeID{r.High, r.Low}
 }
 
 // touches reports whether an active part hangs on a net of the area that no source
@@ -84,17 +85,17 @@ func (b *bench) within(e *circuit.Element, area *circuit.Area) bool {
 	return true
 }
 
-// inside reports whether a resistor belongs to a regulator whose current it sets: the
+// inside reports whether a part belongs to a regulator whose current it sets: the
 // regulator's law counts it.
 func (b *bench) inside(e *circuit.Element) bool {
-	if e.Kind != circuit.Resistor {
+	if e.Kind != circuit.Resistor && e.Kind != circuit.Diode {
 		return false
 	}
 	for _, a := range b.active {
 		if a.Kind == circuit.NPN || a.Kind == circuit.PNP {
 			continue
 		}
-		if _, _, set, ok := stage.RegulatorEnds(b.w, a); ok && contains(set, e) {
+		if r, ok := stage.RegulatorOf(b.w, a); ok && r.Holds(e) {
 			return true
 		}
 	}

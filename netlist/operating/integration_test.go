@@ -301,10 +301,10 @@ func TestSourcePeriodAgreesWithIntegration(t *testing.T) {
 		}
 		o := b.oracle()
 		amperes := b.regulated(t, o)
-		high, low, set, _ := stage.RegulatorEnds(b.m.w, b.m.source.element)
-		o.skip = func(e *circuit.Element) bool { return contains(set, e) }
+		r, _ := stage.RegulatorOf(b.m.w, b.m.source.element)
+		o.skip = r.Holds
 		o.drive = func(e *circuit.Element) (circuit.NodeID, circuit.NodeID, float64, bool) {
-			return high, low, amperes, e == b.m.source.element
+			return r.High, r.Low, amperes, e == b.m.source.element
 		}
 		condition := func(_ []float64, volts float64) float64 { return volts - b.m.cycle.vp }
 		if b.s.Kind == stage.UJTOscillator {
@@ -326,7 +326,8 @@ func (b built) regulated(t *testing.T, o *oracle) float64 {
 	t.Helper()
 	e := b.m.source.element
 	name := func(symbol string) string { return fmt.Sprintf("%s of %s", symbol, e.Designator) }
-	_, _, set, _ := stage.RegulatorEnds(b.m.w, e)
+	r, _ := stage.RegulatorOf(b.m.w, e)
+	set := r.Set
 	switch {
 	case e.Kind == circuit.NJF:
 		pinch, full, ohms := b.named(t, name("V_P")), b.named(t, name("I_DSS")), o.value(set[0])

@@ -14,15 +14,15 @@ import (
 // bypasses backwards, behind a resistance. Below its least voltage the whole is that
 // resistance, above it the current.
 func (m *mesh) regulator(e *circuit.Element) error {
-	high, low, set, ok := stage.RegulatorEnds(m.bench.w, e)
+	wired, ok := stage.RegulatorOf(m.bench.w, e)
 	if !ok {
 		return fmt.Errorf("how %s is wired as a current source is not understood", e.Designator)
 	}
-	r, err := m.bench.law(e, set, low)
+	r, err := m.bench.law(e, &wired)
 	if err != nil {
 		return err
 	}
-	from, to, middle := m.node(high), m.node(low), m.net.Node()
+	from, to, middle := m.node(wired.High), m.node(wired.Low), m.net.Node()
 	r.element, r.high, r.low = e, from, to
 	drop := m.net.Resistor(from, middle)
 	source := m.net.Current(middle, to)
@@ -42,8 +42,8 @@ func (m *mesh) regulator(e *circuit.Element) error {
 const bypassSlope = 1e-2
 
 // law returns the current of a regulator with what it needs to keep it.
-func (b *bench) law(e *circuit.Element, set []*circuit.Element, low circuit.NodeID) (*regulated, error) {
-	ohms, err := b.setting(set, low)
+func (b *bench) law(e *circuit.Element, wired *stage.Regulator) (*regulated, error) {
+	ohms, err := b.setting(wired.Set, wired.Foot)
 	if err != nil {
 		return nil, err
 	}
@@ -71,6 +71,9 @@ func (b *bench) law(e *circuit.Element, set []*circuit.Element, low circuit.Node
 		}
 		r.amperes = func(x []float64) float64 { return x[i] }
 		return r, nil
+	}
+	if wired.Diode != nil {
+		return r, b.withoutDrift(r, e, wired, ohms)
 	}
 	return r, b.perKelvin(r, e, ohms)
 }
@@ -138,24 +141,71 @@ func (b *bench) named(e *circuit.Element, symbol, unit string) (int, bool) {
 
 // perKelvin gives a regulator the law of a current that a resistor sets:
 //
-//	I = v_per_k T ratio/R_set, T in kelvin
+//	I = ratio v_per_k T/R_set, T in kelvin
 //
 // (LM134/234/334 data sheet, TI SNVS746E: 214 uV/K across the resistor, the whole
-// n/(n - 1) times its current). The error of v_per_k is that of the sheet for the
-// range in which the nominal current lies.
+// n/(n - 1) times its current).
 func (b *bench) perKelvin(r *regulated, e *circuit.Element, ohms func(x []float64) float64) error {
+	volts, err := b.sense(r, e)
+	if err != nil {
+		return err
+	}
+	r.amperes = func(x []float64) float64 { return volts(x) / ohms(x) }
+	b.setError(r, e)
+	return nil
+}
+
+// withoutDrift gives a regulator the law of a current from which a diode takes the drift:
+//
+//	I = ratio (V_R/R_set + (V_R + V_D)/R_bypass), V_R = v_per_k T
+//
+// (LM134/234/334 data sheet, TI SNVS746E: zero temperature coefficient current source).
+func (b *bench) withoutDrift(r *regulated, e *circuit.Element, wired *stage.Regulator, ohms func(x []float64) float64) error {
+	volts, err := b.sense(r, e)
+	if err != nil {
+		return err
+	}
+	ratio, drop, bypass, least := b.ratio(e), b.drop(wired.Diode), b.element(wired.Bypass), r.least
+	across := func(x []float64) float64 { return x[drop] + diodeDrift*(x[b.ambient]-25) }
+	r.amperes = func(x []float64) float64 {
+		v := volts(x)
+		return v/ohms(x) + (v+ratio*across(x))/b.value(bypass, x)
+	}
+	r.least = func(x []float64) float64 { return least(x) + across(x) }
+	b.setError(r, e)
+	return nil
+}
+
+// ratio returns the whole current of a regulator over that of its setting resistor.
+func (b *bench) ratio(e *circuit.Element) float64 {
+	if v, ok := e.Ratings.Test("ratio"); ok {
+		return v
+	}
+	return 1
+}
+
+// sense returns the voltage across the setting resistor of a regulator, times its ratio, and
+// notes between which currents it works.
+func (b *bench) sense(r *regulated, e *circuit.Element) (volts func(x []float64) float64, err error) {
 	slope, ok := b.named(e, "v_per_k", "V/K")
 	if !ok {
-		return fmt.Errorf("how a resistor sets the current of %s is unknown", partName(e))
+		return nil, fmt.Errorf("how a resistor sets the current of %s is unknown", partName(e))
 	}
-	ratio := 1.0
-	if v, ok := e.Ratings.Test("ratio"); ok {
-		ratio = v
+	if v, _, ok := e.Ratings.Limit("i_min"); ok {
+		r.from = v
 	}
-	r.amperes = func(x []float64) float64 {
-		return x[slope] * (x[b.ambient] + 273.15) * ratio / ohms(x)
+	if v, _, ok := e.Ratings.Limit("i_max"); ok {
+		r.upTo = v
 	}
-	typical := b.box[slope].Nominal
+	r.slope = slope
+	ratio := b.ratio(e)
+	return func(x []float64) float64 { return x[slope] * (x[b.ambient] + 273.15) * ratio }, nil
+}
+
+// setError gives the sensing voltage the error of the sheet for the range in which the
+// nominal current lies.
+func (b *bench) setError(r *regulated, e *circuit.Element) {
+	typical := b.box[r.slope].Nominal
 	nominal := r.amperes((&model{bench: b}).nominal())
 	for _, class := range []struct {
 		error, edge string
@@ -166,16 +216,9 @@ func (b *bench) perKelvin(r *regulated, e *circuit.Element, ohms func(x []float6
 	} {
 		edge, ok := e.Ratings.Test(class.edge)
 		if share, _, known := e.Ratings.Limit(class.error); ok && known && class.beyond(edge) {
-			b.box[slope].Low, b.box[slope].High = typical*(1-share), typical*(1+share)
+			b.box[r.slope].Low, b.box[r.slope].High = typical*(1-share), typical*(1+share)
 		}
 	}
-	if v, _, ok := e.Ratings.Limit("i_min"); ok {
-		r.from = v
-	}
-	if v, _, ok := e.Ratings.Limit("i_max"); ok {
-		r.upTo = v
-	}
-	return nil
 }
 
 // fieldEffect gives a junction field-effect transistor with its gate behind its own

@@ -109,8 +109,7 @@ func (m *relaxation) readyToCharge(capacitor circuit.NodeID) error {
 		m.charging.slopes(m.nominal(), m.standing.node(m.stage.Nodes["lower"]))
 	}
 	for _, r := range m.standing.sources {
-		own := contains(m.stage.Parts[stage.CurrentSource], r.element)
-		if own && m.source == nil && (r.high == m.charging.node || r.low == m.charging.node) {
+		if r.element == m.stage.Source {
 			m.source, m.charging.watched = r, r
 		}
 	}

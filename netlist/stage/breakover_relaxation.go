@@ -98,8 +98,8 @@ func (u *breakoverReading) sourceNets(stop func(circuit.NodeID) bool) []circuit.
 		if emitter, ok := p.Element.Pin("emitter"); ok && p.Element != u.stage.Anchor {
 			ends = append(ends, emitter)
 		}
-		if high, low, _, ok := RegulatorEnds(u.w, p.Element); ok {
-			ends = append(ends, high, low)
+		if r, ok := RegulatorOf(u.w, p.Element); ok {
+			ends = append(ends, r.High, r.Low)
 		}
 		for _, n := range ends {
 			if n = u.w.Net(n); n != u.node {

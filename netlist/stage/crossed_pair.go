@@ -33,7 +33,7 @@ func (r *recogniser) crossedPair(anchor *circuit.Element, nets []circuit.NodeID)
 func (u *rampReading) diverting(inner circuit.NodeID) {
 	s := u.stage
 	for _, end := range [2]circuit.NodeID{u.outlet, u.lower} {
-		if list := settingNetwork(u.w, inner, end); len(list) > 0 {
+		if list := resistorsBetween(u.w, inner, end, nil); len(list) > 0 {
 			s.Nodes["diverted"] = end
 			s.add(GateShunt, list...)
 			break

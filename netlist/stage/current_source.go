@@ -6,101 +6,141 @@ import (
 	"standoff/netlist/circuit"
 )
 
-// RegulatorEnds returns the two nets between which a two-terminal current source
-// works and the resistors that set its current, none where none does. ok is false
-// where the part is not wired as one. A junction field-effect transistor is one
-// with its gate on its source or behind its source resistor; a current-source
-// circuit sets its current with a resistor from its third terminal to the low end.
-func RegulatorEnds(w *circuit.Wiring, e *circuit.Element) (high, low circuit.NodeID, set []*circuit.Element, ok bool) {
-	pin := func(role string) circuit.NodeID {
-		n, known := e.Pin(role)
-		ok = ok && known
-		return w.Net(n)
-	}
-	ok = true
-	var free, between, far circuit.NodeID
-	switch e.Kind {
-	case circuit.SourceIC:
-		free, far = pin("v+"), pin("v-")
-		if r, known := e.Pin("r"); known {
-			between = w.Net(r)
-			break
+// sources collects the current sources on the nets from which dc parts lead to the capacitor, and the
+// transistors that can pull it down. It returns the nets on which the sources stand, and
+// whether any charges.
+func (u *rampReading) sources(nets []circuit.NodeID) (at []circuit.NodeID, charge bool) {
+	for _, n := range nets {
+		if n != u.node && u.ends(n) {
+			continue
 		}
-		return free, far, nil, ok && free != far
-	case circuit.NJF, circuit.PJF:
-		free, between, far = pin("drain"), pin("source"), pin("gate")
-	default:
-		return 0, 0, nil, false
-	}
-	if between != far {
-		if set = settingNetwork(w, between, far); len(set) == 0 {
-			return 0, 0, nil, false
+		for _, p := range u.w.On(n) {
+			e, charges := p.Element, false
+			switch {
+			case u.isOwn(e) || u.isSource(e):
+				continue
+			case isBipolar(e):
+				charges = u.transistor(e, n)
+			default:
+				charges = u.regulator(e, n)
+			}
+			if charges {
+				at, charge = append(at, n), true
+				if u.stage.Source == nil {
+					u.stage.Source = e
+				}
+			}
 		}
 	}
-	if e.Kind == circuit.PJF {
-		free, far = far, free
-	}
-	return free, far, set, ok && free != far
+	return at, charge
 }
 
-// settingNetwork returns the resistors between two nets, of which only the second may
-// have anything else on it but the part they set; none where something else hangs on
-// the way.
-func settingNetwork(w *circuit.Wiring, from, to circuit.NodeID) []*circuit.Element {
-	if w.IsFixed(from) {
-		return nil
-	}
-	area := w.Walk([]circuit.NodeID{from}, isResistor, func(n circuit.NodeID) bool { return n == to || w.IsFixed(n) })
-	list := prune(w, area.Elements, func(n circuit.NodeID) bool { return n == from || n == to || w.IsFixed(n) })
-	for _, e := range list {
-		if !e.HasValue || e.Value.Low <= 0 || w.IsFixed(e.Nodes[0]) && w.Net(e.Nodes[0]) != to || w.IsFixed(e.Nodes[1]) && w.Net(e.Nodes[1]) != to {
-			return nil
-		}
-	}
-	return list
-}
-
-// sources collects the current sources on the capacitor's net, and the transistors
-// that can pull it down. It reports whether any charges.
-func (u *rampReading) sources() bool {
-	charges := false
-	for _, p := range u.w.On(u.node) {
-		e := p.Element
-		switch {
-		case u.isOwn(e) || u.isSource(e):
-		case e.Kind == circuit.NPN || e.Kind == circuit.PNP:
-			charges = u.transistor(e) || charges
-		default:
-			charges = u.regulator(e) || charges
-		}
-	}
-	return charges
-}
+func isBipolar(e *circuit.Element) bool { return e.Kind == circuit.NPN || e.Kind == circuit.PNP }
 
 // isSource reports whether an element counts as part of a current source already.
 func (u *rampReading) isSource(e *circuit.Element) bool {
 	return slices.Contains(u.stage.Parts[CurrentSource], e) || slices.Contains(u.stage.Clamps, e)
 }
 
-// regulator takes in a two-terminal current source on the capacitor's net.
-func (u *rampReading) regulator(e *circuit.Element) bool {
-	high, low, set, ok := RegulatorEnds(u.w, e)
-	if !ok || high != u.node && low != u.node {
+// regulator takes in a two-terminal current source on a net.
+func (u *rampReading) regulator(e *circuit.Element, n circuit.NodeID) bool {
+	r, ok := RegulatorOf(u.w, e)
+	if !ok || r.High != n && r.Low != n && r.Foot != n {
 		return false
 	}
 	u.stage.add(CurrentSource, e)
-	u.stage.add(TimingResistor, set...)
-	other := high
-	if high == u.node {
-		other = low
+	u.stage.add(TimingResistor, r.Set...)
+	if r.Diode != nil {
+		u.stage.add(CurrentSource, r.Diode)
+		u.stage.add(TimingResistor, r.Bypass)
 	}
-	return u.leadsAway(other)
+	if r.High == n {
+		return u.leadsAway(r.Low)
+	}
+	return u.leadsAway(r.High)
 }
 
-// leadsAway reports whether a net is, or leads to, a rail other than the lower one.
-func (u *rampReading) leadsAway(n circuit.NodeID) bool {
+// holds reports whether the law of a regulator of the stage counts an element in.
+func (u *rampReading) holds(e *circuit.Element) bool {
+	return slices.ContainsFunc(u.stage.Parts[CurrentSource], func(source *circuit.Element) bool {
+		r, ok := RegulatorOf(u.w, source)
+		return ok && r.Holds(e)
+	})
+}
+
+// leadsAway reports whether a net is, or leads to, a rail other than the lower one; through
+// other transistors too, from collector to emitter.
+func (u *rampReading) leadsAway(n circuit.NodeID) bool { return u.leads(n, maxStack) }
+
+// maxStack is how many transistors may stand in series.
+const maxStack = 4
+
+func (u *rampReading) leads(n circuit.NodeID, depth int) bool {
 	area := u.w.Walk([]circuit.NodeID{n}, carriesDC, u.ends)
-	return slices.ContainsFunc(area.Nets, func(n circuit.NodeID) bool { return n != u.lower && u.isRail(n) })
+	for _, m := range area.Nets {
+		if m != u.lower && u.isRail(m) {
+			return true
+		}
+	}
+	if depth == 0 {
+		return false
+	}
+	return slices.ContainsFunc(u.stacked(area.Nets), func(emitter circuit.NodeID) bool { return u.leads(emitter, depth-1) })
+}
+
+// stacked returns the emitters of transistors whose collectors lie on the inner ones of some nets.
+func (u *rampReading) stacked(nets []circuit.NodeID) []circuit.NodeID {
+	var list []circuit.NodeID
+	for _, n := range nets {
+		if u.ends(n) {
+			continue
+		}
+		for _, p := range u.w.On(n) {
+			collector, ok := p.Element.Pin("collector")
+			emitter, also := p.Element.Pin("emitter")
+			if ok && also && isBipolar(p.Element) && !u.isOwn(p.Element) && u.w.Net(collector) == n && u.w.Net(emitter) != n {
+				list = append(list, u.w.Net(emitter))
+			}
+		}
+	}
+	return list
+}
+
+// feedNets lists the nets over which the capacitor may be fed: its own, and where a pnp or a
+// regulator stands between, the far sides of that.
+func (u *rampReading) feedNets(stop func(circuit.NodeID) bool) []circuit.NodeID {
+	list := []circuit.NodeID{u.node}
+	for done := 0; done < len(list) && done < maxBias; done++ {
+		for _, n := range u.w.Walk(list[done:done+1], u.feeds, stop).Nets {
+			if n != u.node && stop(n) {
+				continue
+			}
+			for _, p := range u.w.On(n) {
+				for _, far := range u.farSides(p.Element, n) {
+					if !slices.Contains(list, far) {
+						list = append(list, far)
+					}
+				}
+			}
+		}
+	}
+	return list
+}
+
+// farSides lists the nets from which a pnp with its collector on a net, or a regulator on it, is fed.
+func (u *rampReading) farSides(e *circuit.Element, n circuit.NodeID) []circuit.NodeID {
+	if u.isOwn(e) {
+		return nil
+	}
+	if collector, ok := e.Pin("collector"); ok && e.Kind == circuit.PNP && u.w.Net(collector) == n {
+		base, _ := e.Pin("base")
+		emitter, _ := e.Pin("emitter")
+		return []circuit.NodeID{u.w.Net(base), u.w.Net(emitter)}
+	}
+	if r, ok := RegulatorOf(u.w, e); ok && r.Low == n {
+		return []circuit.NodeID{r.High}
+	}
+	return nil
 }
 
 // ends reports whether a walk around the stage ends on a net.
@@ -108,26 +148,24 @@ func (u *rampReading) ends(n circuit.NodeID) bool {
 	return u.isRail(n) || n == u.node || n == u.terminal || n == u.outlet || n == u.control
 }
 
-// transistor takes in a bipolar transistor whose collector lies on the capacitor's
-// net: a current source where its emitter leads away from the lower rail, with
-// everything that biases it; else one that can hold the capacitor down.
-func (u *rampReading) transistor(e *circuit.Element) bool {
+// transistor takes in a bipolar transistor whose collector lies on a net: a current
+// source where its emitter leads away from the lower rail, with everything that biases
+// it; else one that can hold the capacitor down.
+func (u *rampReading) transistor(e *circuit.Element, n circuit.NodeID) bool {
 	collector, _ := e.Pin("collector")
 	base, _ := e.Pin("base")
 	emitter, ok := e.Pin("emitter")
-	if !ok || u.w.Net(collector) != u.node || u.w.Net(base) == u.node || u.w.Net(emitter) == u.node {
+	if !ok || u.w.Net(collector) != n || u.w.Net(base) == n || u.w.Net(emitter) == n || u.w.Net(base) == u.node {
 		return false
 	}
 	if !u.leadsAway(emitter) {
-		u.clamp(e, base)
+		if n == u.node {
+			u.clamp(e, base)
+		}
 		return false
 	}
 	u.stage.add(CurrentSource, e)
-	lead := u.w.Walk([]circuit.NodeID{emitter}, isResistor, u.ends)
-	setting := slices.Clone(lead.Elements)
-	if u.w.IsFixed(emitter) || u.isRail(u.w.Net(emitter)) {
-		setting = nil // a rail leads everywhere
-	}
+	setting := u.setting(emitter, maxStack)
 	bias := u.bias(e, setting)
 	for _, b := range bias {
 		if isResistor(b) && len(setting) == 0 {
@@ -138,6 +176,24 @@ func (u *rampReading) transistor(e *circuit.Element) bool {
 	}
 	u.stage.add(TimingResistor, setting...)
 	return true
+}
+
+// setting returns the resistors that set the current of a transistor: those from its emitter,
+// or where another stands on its way from that one's.
+func (u *rampReading) setting(emitter circuit.NodeID, depth int) []*circuit.Element {
+	if emitter = u.w.Net(emitter); u.isRail(emitter) {
+		return nil // a rail leads everywhere
+	}
+	lead := u.w.Walk([]circuit.NodeID{emitter}, isResistor, u.ends)
+	if len(lead.Elements) > 0 || depth == 0 {
+		return slices.Clone(lead.Elements)
+	}
+	for _, next := range u.stacked(lead.Nets) {
+		if list := u.setting(next, depth-1); len(list) > 0 {
+			return list
+		}
+	}
+	return nil
 }
 
 // maxBias bounds the parts that bias a current source.
@@ -152,8 +208,9 @@ func (u *rampReading) bias(e *circuit.Element, setting []*circuit.Element) []*ci
 	for len(queue) > 0 && len(list) < maxBias {
 		at := queue[0]
 		queue = queue[1:]
+		collector, _ := e.Pin("collector")
 		for _, n := range at.Nodes {
-			if n = u.w.Net(n); u.ends(n) {
+			if n = u.w.Net(n); u.ends(n) || at == e && n == u.w.Net(collector) {
 				continue
 			}
 			area := u.w.Walk([]circuit.NodeID{n}, carriesDC, u.ends)
@@ -166,7 +223,7 @@ func (u *rampReading) bias(e *circuit.Element, setting []*circuit.Element) []*ci
 			for _, m := range area.Nets {
 				for _, p := range u.w.On(m) {
 					other := p.Element
-					bipolar := (other.Kind == circuit.NPN || other.Kind == circuit.PNP) && !u.isOwn(other)
+					bipolar := isBipolar(other) && !u.isOwn(other)
 					if !seen[other] && bipolar && !u.ends(m) {
 						seen[other] = true
 						list, queue = append(list, other), append(queue, other)

@@ -79,7 +79,7 @@ func (u *rampReading) rails() string {
 	stop := func(n circuit.NodeID) bool { return fixed(n) || own(n) }
 	u.atControl = u.w.Walk([]circuit.NodeID{u.control}, carriesDC, stop)
 	u.atOutlet = u.w.Walk([]circuit.NodeID{u.outlet}, carriesDC, stop)
-	u.atNode = u.w.Walk([]circuit.NodeID{u.node}, u.feeds, stop)
+	u.atNode = u.w.Walk(u.feedNets(stop), u.feeds, stop)
 	if fixed(u.outlet) {
 		u.lower = u.outlet
 	} else if !u.lowerRail() {
@@ -180,7 +180,11 @@ func (u *rampReading) sharedRail() (circuit.NodeID, bool) {
 // cut reports whether, with the walk stopped at rail, from reaches no fixed
 // net but the lower rail and not the other side.
 func (u *rampReading) cut(from, rail circuit.NodeID, stop func(circuit.NodeID) bool) bool {
-	area := u.w.Walk([]circuit.NodeID{from}, u.feeds, stop)
+	nets := []circuit.NodeID{from}
+	if from == u.node {
+		nets = u.feedNets(stop)
+	}
+	area := u.w.Walk(nets, u.feeds, stop)
 	for _, n := range area.Nets {
 		if n != rail && n != from && (u.w.IsFixed(n) && n != u.lower || n == u.control || n == u.node) {
 			return false
@@ -218,9 +222,12 @@ func (u *rampReading) charging() string {
 		return u.isRail(n) || n == u.outlet || n == u.control
 	})
 	ends := func(n circuit.NodeID) bool { return n == u.node || u.isRail(n) || n == u.control || n == u.outlet }
-	list := prune(u.w, area.Elements, ends)
-	fed := u.sources()
+	sources, fed := u.sources(area.Nets)
+	list := prune(u.w, area.Elements, func(n circuit.NodeID) bool { return ends(n) || slices.Contains(sources, n) })
 	for _, e := range list {
+		if u.holds(e) {
+			continue
+		}
 		for _, n := range e.Nodes {
 			if n = u.w.Net(n); n != u.node && n != u.lower && ends(n) && n != u.outlet {
 				fed = true
@@ -232,10 +239,13 @@ func (u *rampReading) charging() string {
 		}
 		u.stage.add(role, e)
 	}
-	if !fed {
-		return "nothing charges the capacitor"
+	if fed {
+		return ""
 	}
-	return ""
+	if list := u.strangers(area, func(n circuit.NodeID) bool { return ends(n) && n != u.node }); len(list) > 0 {
+		return "what charges the capacitor is not understood: how " + list[0].Designator + " is wired"
+	}
+	return "nothing charges the capacitor"
 }
 
 // isAcross reports whether an element is a resistor from the gate to the anode or its

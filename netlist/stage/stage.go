@@ -76,6 +76,9 @@ type Stage struct {
 	// Partner is the second transistor of a crossed pair that stands in for a device,
 	// else nil.
 	Partner *circuit.Element
+	// Source is the current source that charges the timing capacitor, nil where none does: of
+	// several the first, of transistors in series the one next to the capacitor.
+	Source *circuit.Element
 	// Clamps lists transistors that can hold the timing capacitor down and whose base
 	// dc on the board sets.
 	Clamps []*circuit.Element
