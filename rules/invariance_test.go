@@ -257,7 +257,10 @@ func TestWholeBoardsWrittenAnotherWayGetTheSameVerdicts(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	for _, file := range files {
+	for i, file := range files {
+		if testing.Short() && i%4 > 0 {
+			continue
+		}
 		data, err := fixtures.Files.ReadFile(file)
 		if err != nil {
 			t.Fatal(err)
@@ -276,7 +279,7 @@ func TestWholeBoardsWrittenAnotherWayGetTheSameVerdicts(t *testing.T) {
 			}
 		}
 	}
-	if count < 10 {
+	if count < 10 && !testing.Short() {
 		t.Errorf("only %d boards could be rewritten", count)
 	}
 }
