@@ -94,12 +94,31 @@ func (m *relaxation) sourceLimits(x func() []float64) {
 	}
 	set := func() float64 { return r.amperes(x()) }
 	working = func() string { return "the current that " + r.element.Designator + " is set to" }
+	if f, ok := m.slewOf(r); ok {
+		because = "the slew rate of " + r.element.Designator + " is a typical figure"
+		add("current_source_slew", "slew_c", "F", Min, func() float64 { return m.cycle.c }, func() float64 { return f })
+		because = ""
+	}
 	if r.from > 0 {
 		add("current_source_least", "i_min", "A", Min, set, func() float64 { return r.from })
 	}
 	if !math.IsInf(r.upTo, 1) {
 		add("current_source_greatest", "i_max", "A", Max, set, func() float64 { return r.upTo })
 	}
+}
+
+// slewOf returns the least capacitor whose ramp a source follows: of a current i the
+// ramp rises by i/C, and the source follows i/slew_c (LM134/234/334: 0.01 V/us at 10 uA,
+// 1 V/us at 1 mA, typical).
+func (m *relaxation) slewOf(r *regulated) (farads float64, ok bool) {
+	if r.element.Ratings == nil {
+		return 0, false
+	}
+	f, ok := r.element.Ratings.Figures["slew_c"]
+	if !ok || !f.HasTyp {
+		return f.Max, ok && f.HasMax
+	}
+	return f.Typ, true
 }
 
 // windowLimits hold the charging current against what the device asks for at the

@@ -150,7 +150,7 @@ func sample(r *rand.Rand, box []numeric.Variable, x []float64) {
 
 // No sampled board of 10,000 random stages (with the kinds in the files beside this
 // one) lies outside the computed bounds, and each bound is reached, within 1 %, on a board inside the box.
-func TestNoSampledBoardLiesOutsideTheBounds(t *testing.T) { sampleStages(t, randomDeck, 4000) }
+func TestNoSampledBoardLiesOutsideTheBounds(t *testing.T) { sampleStages(t, randomDeck, 10_000) }
 
 // perKind is how many stages of each kind are sampled, 0 for the usual share: ten
 // thousand of all kinds together.

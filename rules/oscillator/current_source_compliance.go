@@ -14,7 +14,7 @@ var sourceCompliance = &rule.Rule{
 		"empty the most stands across it, and a circuit may break down; and a resistor can ask it for a " +
 		"current outside its range.",
 	Formula: "V_source at V_P > V_CE(sat) of 0.3 V, V_P of the channel, or V_min of the sheet; at the valley " +
-		"< V_max; I_min < I < I_max",
+		"< V_max; I_min < I < I_max; C > I over the slew rate",
 	Source: "LM334: TI SNVS746E, at least 1 V, at most 30 V (ST), 1 uA .. 10 mA; transistor saturated below " +
 		"0.3 V: common practice, no source",
 	Failing: `Seed drill pulse, linear ramp
@@ -45,6 +45,11 @@ R3 b1 0 47
 		Comparison: "current_source_voltage_greatest", Place: source,
 		Fails: "the current source may break down while the capacitor is empty",
 		Value: "the voltage across the current source", Limit: "it stands",
+	}, rule.Case{
+		Comparison: "current_source_slew", Place: []stage.Role{stage.TimingCapacitor},
+		Mend: []stage.Role{stage.TimingCapacitor}, FailsOnly: true,
+		Fails: "the ramp rises faster than the current source follows",
+		Value: "the timing capacitor", Limit: "it follows with",
 	}, rule.Case{
 		Comparison: "current_source_least", Place: timing, Mend: timingOnly, FailsOnly: true,
 		Fails: "the current source is set below its range",
