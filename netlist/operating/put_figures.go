@@ -20,7 +20,7 @@ func (m *putModel) figures() {
 	})
 	m.figure("offset_voltage", "V", func() float64 { return s.vt }, func() string {
 		if m.pair != nil {
-			return "V_BE of the pnp"
+			return "V_BE of the pnp at the peak current, less what the npn pulls the gate down by then"
 		}
 		return fmt.Sprintf("V_T at R_G = %s, straight over log R_G between the sheet's points, -2 mV/K (memory)",
 			show(s.ohms, "ohm"))

@@ -117,6 +117,8 @@ func newPUT(w *circuit.Wiring, s *stage.Stage) (*putModel, error) {
 	m.limits()
 	m.guideByGate()
 	m.bendsKink()
+	m.evaluate(m.nominal())
+	m.follows = m.s.vv > 0.5*m.s.vp
 	return m, nil
 }
 
@@ -309,7 +311,12 @@ func (m *putModel) at(x []float64) {
 	s.standby = mesh.solver.Voltage(n.cathode) - s.lower
 	mesh.solver.Transfer(n.gate, m.gateOf)
 	s.ohms = m.gateOf[n.gate]
-	s.vt = max(m.vt.value(x, s.ohms, true)+x[m.drift]*s.heat, 0)
+	if m.pair != nil {
+		s.ip, s.vt = m.pair.peak(x)
+	} else {
+		s.ip = m.ip.value(x, s.ohms, true)
+		s.vt = max(m.vt.value(x, s.ohms, true)+x[m.drift]*s.heat, 0)
+	}
 	peak := m.charging.meet(func() (float64, float64) {
 		s.vth, s.rth = m.charging.thevenin()
 		pull := m.charging.transfer[n.gate] / s.rth
@@ -323,9 +330,8 @@ func (m *putModel) at(x []float64) {
 	s.atPeak = (s.vth - peak) / s.rth
 	s.atValley = m.whileOn(s.lower+s.vv, m.sourceAtBothEnds(s.lower+s.vv))
 	s.fires = s.atPeak > 0 && s.vp > 0
-	s.ip, s.iv = m.ip.value(x, s.ohms, true), m.iv.value(x, s.ohms, false)
-	if m.pair != nil {
-		s.ip, s.iv = m.pair.currents(x)
+	if s.iv = m.iv.value(x, s.ohms, false); m.pair != nil {
+		s.iv = m.pair.valley(x)
 	}
 	s.c = m.caps.farads(x)
 	m.path(x)

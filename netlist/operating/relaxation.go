@@ -32,6 +32,9 @@ type relaxation struct {
 	leaks    bool   // the device leaks besides the capacitors
 	// bentWindow says that the valley side of the window bends too.
 	bentWindow bool
+	// follows says that the valley may lie so near the peak that it follows it: some
+	// variables count there only.
+	follows bool
 
 	source     *regulated // the current source on the capacitor, nil where none is
 	room, most float64    // voltage across it at the peak and at the valley

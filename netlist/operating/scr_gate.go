@@ -97,6 +97,12 @@ func newSCRGate(w *circuit.Wiring, s *stage.Stage, driver *stage.Stage) (*scrGat
 	m.need = newTrigger(m.scr, w.Circuit.Board.Ambient.Low)
 	m.gateFigures()
 	m.gateLimits()
+	for i := range m.outputs {
+		m.outputs[i].kinked = m.outputs[i].kinked || m.follows
+	}
+	for i := range m.contests {
+		m.contests[i].kinked = m.contests[i].kinked || m.follows
+	}
 	return m, nil
 }
 
