@@ -25,6 +25,7 @@ type charging struct {
 	watched  *regulated     // a current source, nil for none
 	held     float64        // the voltage at which the net was seized last, NaN for none
 	across   float64        // what stood across it when the net was seized last
+	reach    float64        // how far the net may rise from there on the same straight piece
 	grip     network.Branch // what holds the capacitor's net at a voltage, in a network that bends
 }
 
@@ -77,6 +78,8 @@ func (c *charging) seize(volts float64) {
 	if c.watched != nil { // let go, the net of an ideal source hangs on its last digits
 		c.across = c.mesh.across(c.watched)
 	}
+	solver.Transfer(c.node, c.transfer)
+	c.reach = solver.Reach(c.transfer) * c.transfer[c.node]
 	c.held = volts
 	solver.Values[c.probe], solver.Values[c.grip] = amperes, noGrip
 	solver.SolveHeld()
@@ -134,29 +137,19 @@ type piece struct{ vth, rth float64 }
 
 func (p piece) current(volts float64) float64 { return (p.vth - volts) / p.rth }
 
-// crossing returns the voltage at which two pieces carry the same current.
-func (p piece) crossing(q piece) float64 {
-	return (p.vth*q.rth - q.vth*p.rth) / (q.rth - p.rth)
-}
-
 // time returns how long the capacitor takes from the valley to the peak and how
 // far, relative to the swing, its voltage departs from the straight line between
 // them. The current at the peak must be positive.
 func (c *charging) time(s *cycle) (seconds, departure float64) {
 	from, to := s.lower+s.vv, s.lower+s.vp
-	last := piece{s.vth, s.rth}
 	if !c.bends {
 		l := math.Log1p((to - from) / (s.rth * s.atPeak))
 		return s.rth * s.c * l, rampDeparture(l)
 	}
 	r := ramp{charging: c, farads: s.c, at: []moment{{0, from}}}
-	r.climb(c.tangent(from), last, from, to, maxDepth)
+	r.climb(from, to)
 	return r.seconds, r.departure()
 }
-
-// maxDepth bounds how often a stretch of the ramp is split: 2^12 pieces are far
-// more than diodes on a board.
-const maxDepth = 12
 
 // ramp is the capacitor voltage over time.
 type ramp struct {
@@ -169,27 +162,21 @@ type ramp struct {
 
 type moment struct{ seconds, volts float64 }
 
-// climb adds the way from one voltage to the next, given the straight pieces at
-// both ends.
-func (r *ramp) climb(p, q piece, from, to float64, depth int) {
-	near := math.Abs(p.current(to)-q.current(to)) <= 1e-6*math.Abs(q.current(to))
-	if near || depth == 0 {
-		r.add(p, from, to)
-		return
+// beyond is by how much in volt the end of a straight piece is passed to find the next.
+const beyond = 1e-7
+
+// climb adds the way from one voltage to another, piece after piece.
+func (r *ramp) climb(from, to float64) {
+	c, at := r.charging, from
+	for n := 0; from < to; n++ {
+		p := c.tangent(at)
+		end := min(at+c.reach, to)
+		if n == maxPieces {
+			end = to
+		}
+		r.add(p, from, end)
+		from, at = end, min(end+beyond, to)
 	}
-	middle := p.crossing(q)
-	if !(middle > from && middle < to) {
-		middle = (from + to) / 2
-	}
-	between := r.charging.tangent(middle)
-	if math.Abs(between.current(middle)-p.current(middle)) <= 1e-6*math.Abs(p.current(middle)) &&
-		math.Abs(p.current(middle)-q.current(middle)) <= 1e-6*math.Abs(p.current(middle)) {
-		r.add(p, from, middle)
-		r.add(q, middle, to)
-		return
-	}
-	r.climb(p, between, from, middle, depth-1)
-	r.climb(between, q, middle, to, depth-1)
 }
 
 // add appends a straight piece.

@@ -29,11 +29,24 @@ type oracle struct {
 	capped circuit.NodeID
 	skip   func(*circuit.Element) bool
 	drive  func(*circuit.Element) (from, to circuit.NodeID, amperes float64, ok bool)
+	curves []*curve // diodes and junctions
 }
 
 // solve holds the capacitor's net at a voltage over ground and returns all
 // potentials and the current into the capacitor.
 func (o *oracle) solve(volts float64) (v []float64, amperes float64) {
+	for range o.states() {
+		v, amperes = o.straight(volts)
+		if o.agrees(v) {
+			return v, amperes
+		}
+		o.another()
+	}
+	panic("no state of the diodes agrees")
+}
+
+// straight solves with every curve on its straight piece.
+func (o *oracle) straight(volts float64) (v []float64, amperes float64) {
 	n := len(o.c.Nodes)
 	var sources []*circuit.Element
 	for _, e := range o.c.Elements {
@@ -65,6 +78,9 @@ func (o *oracle) solve(volts float64) (v []float64, amperes float64) {
 				b.SetVec(int(o.w.Net(to)), b.AtVec(int(o.w.Net(to)))+i)
 			}
 		}
+	}
+	for _, c := range o.curves {
+		c.stamp(o.w, a, b)
 	}
 	if o.ohms > 0 {
 		resistor(o.bar[0], o.bar[1], o.ohms)
@@ -111,12 +127,27 @@ func (o *oracle) time(from, to, farads float64) float64 {
 		if k == 11 {
 			b = to
 		}
-		sum += quad.Fixed(func(v float64) float64 {
+		sum += o.stretch(a, b, farads, 12)
+	}
+	return sum
+}
+
+// stretch integrates over a stretch; where diodes bend it, by halves until they agree with the whole.
+func (o *oracle) stretch(from, to, farads float64, depth int) float64 {
+	whole := func(a, b float64) float64 {
+		return quad.Fixed(func(v float64) float64 {
 			_, i := o.solve(v)
 			return farads / i
 		}, a, b, 8, nil, 0)
 	}
-	return sum
+	sum, middle := whole(from, to), from/2+to/2
+	if len(o.curves) == 0 || depth == 0 {
+		return sum
+	}
+	if halves := whole(from, middle) + whole(middle, to); math.Abs(halves-sum) < 1e-6*sum {
+		return sum
+	}
+	return o.stretch(from, middle, farads, depth-1) + o.stretch(middle, to, farads, depth-1)
 }
 
 // crossing looks for the voltage at which a condition of the potentials turns
