@@ -74,7 +74,7 @@ func (m *putModel) carried(name string, p *points) string {
 // surge returns the greatest anode current, limited by resistance alone.
 func (m *putModel) surge() float64 {
 	s := &m.s
-	return (s.vp - s.drop - s.rise) / (s.on + s.r1 + s.re)
+	return max(s.vp-s.drop-s.rise, 0) / (s.on + s.r1 + s.re)
 }
 
 func (m *putModel) surgeWorking() string {

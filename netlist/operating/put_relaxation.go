@@ -3,6 +3,7 @@ package operating
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"standoff/netlist/circuit"
 	"standoff/netlist/network"
@@ -112,13 +113,20 @@ func newPUT(w *circuit.Wiring, s *stage.Stage) (*putModel, error) {
 			m.box[slot.index].Bends = true
 		}
 	}
+	for i, t := range m.traits { // a diode behind the outlet lifts the valley
+		if m.pulse.bends && strings.HasPrefix(t.name, "drop of ") {
+			m.box[i].Bends = true
+		}
+	}
 	m.evaluate(m.nominal())
 	m.figures()
 	m.limits()
 	m.guideByGate()
 	m.bendsKink()
 	m.evaluate(m.nominal())
-	m.follows = m.s.vv > 0.5*m.s.vp
+	if m.follows = m.s.vv > 0.5*m.s.vp; m.follows {
+		m.scatter = scattered
+	}
 	return m, nil
 }
 
