@@ -50,10 +50,12 @@ var (
 // crossedPair adds the figures of the two transistors.
 func (m *putModel) crossedPair() error {
 	pnp, npn := m.stage.Anchor, m.stage.Partner
-	m.pair = &pairFigures{m: m, up: m.gain(pnp), pnp: m.baseEmitter(pnp), npn: m.baseEmitter(npn), down: m.gain(npn)}
+	m.pair = &pairFigures{m: m, up: m.gain(pnp), pnp: m.baseEmitter(pnp), npn: m.baseEmitter(npn),
+		down: m.gain(npn)}
 	m.vt = anywhere(m.pair.pnp)
 	m.pair.reverse = m.reverse(npn)
-	m.pair.start = m.assumed("I_0", "A", assumedPairStart, "current at which the gains reach one together, assumed")
+	m.pair.start = m.assumed("I_0", "A", assumedPairStart,
+		"current at which the gains reach one together, assumed")
 	m.vv = m.assumed("vv", "V", assumedPairValley, "valley voltage of a crossed pair, assumed")
 	m.on = m.assumed("ron", "ohm", assumedPairOn, "on-resistance of a crossed pair, assumed")
 	m.igao, m.vo = -1, -1
@@ -126,7 +128,8 @@ func (p *pairFigures) valley(x []float64) float64 {
 // working says how a current of the pair comes about.
 func (p *pairFigures) working(which string) string {
 	if which == "peak" {
-		return fmt.Sprintf("where the gate falls as fast as the junction of the pnp rises, R_G = %s", show(p.m.s.ohms, "ohm"))
+		return fmt.Sprintf("where the gate falls as fast as the junction of the pnp rises, R_G = %s",
+			show(p.m.s.ohms, "ohm"))
 	}
 	return fmt.Sprintf("where the npn, which sinks V_S/R_G = %s/%s, begins to come out of saturation",
 		show(p.m.s.gate, "V"), show(p.m.s.ohms, "ohm"))

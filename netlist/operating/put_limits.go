@@ -33,8 +33,8 @@ func (m *putModel) derated() {
 		return
 	}
 	s := &m.s
-	m.compare(contest{name: "charging_current_at_valley_derated", limitName: "valley_current_available", unit: "A",
-		bound: Max, bent: true, value: func() float64 { return s.atValley },
+	m.compare(contest{name: "charging_current_at_valley_derated", limitName: "valley_current_available",
+		unit: "A", bound: Max, bent: true, value: func() float64 { return s.atValley },
 		limit:   func() float64 { return s.iv * hotValley(s.heat) },
 		because: "the derating of I_V for heat is from memory", working: m.valleyWorking})
 }
@@ -106,8 +106,8 @@ func (m *putModel) dividerLimits() {
 	ohms := func() float64 { return s.ohms }
 	m.compare(contest{name: "gate_source_resistance_least", limitName: "sheet_least", unit: "ohm", bound: Min,
 		because: because, surely: -1, value: ohms, limit: func() float64 { return low / 1.1 }, working: working})
-	m.compare(contest{name: "gate_source_resistance_greatest", limitName: "sheet_greatest", unit: "ohm", bound: Max,
-		because: because, value: ohms, limit: func() float64 { return high * 1.1 }, working: working})
+	m.compare(contest{name: "gate_source_resistance_greatest", limitName: "sheet_greatest", unit: "ohm",
+		bound: Max, because: because, value: ohms, limit: func() float64 { return high * 1.1 }, working: working})
 }
 
 // noLift is a gate voltage in volt that is none: nothing lifts the gate.
@@ -163,7 +163,8 @@ func (m *putModel) unchecked() []Unchecked {
 		list = append(list, Unchecked{"timing-current-above-valley", oneShotNote})
 	} else if len(m.iv.at) == 0 {
 		list = append(list, Unchecked{"timing-current-above-valley",
-			fmt.Sprintf("no least valley current of %s is guaranteed at a gate resistance of %s", m.ratings.Name, show(m.s.ohms, "ohm"))})
+			fmt.Sprintf("no least valley current of %s is guaranteed at a gate resistance of %s", m.ratings.Name,
+				show(m.s.ohms, "ohm"))})
 	}
 	for _, need := range []struct{ symbol, rule, what string }{
 		{"itrm", "emitter-surge-current", "repetitive peak current rating"},
@@ -183,8 +184,8 @@ func (m *putModel) unchecked() []Unchecked {
 // common practice, no source.
 func (m *putModel) reverseNote() string {
 	m.evaluate(m.nominal())
-	return fmt.Sprintf("no rating of the crossed transistors is known; while the capacitor is empty %s stand in reverse across "+
-		"base and emitter of %s, of which common small transistors take about 5 V", show(m.s.gate, "V"),
+	return fmt.Sprintf("no rating of the crossed transistors is known; while the capacitor is empty %s stand "+
+		"in reverse across base and emitter of %s, of which common small transistors take about 5 V", show(m.s.gate, "V"),
 		m.stage.Anchor.Designator)
 }
 
@@ -205,8 +206,8 @@ func (m *putModel) recoveryNote() string {
 	if farads*m.s.ohms <= recovers*m.s.period {
 		return ""
 	}
-	return fmt.Sprintf("%s at the gate comes back with a time constant of %s after each pulse, the period is %s; what that "+
-		"does to the rate is not worked out", names, show(farads*m.s.ohms, "s"), show(m.s.period, "s"))
+	return fmt.Sprintf("%s at the gate comes back with a time constant of %s after each pulse, the period is %s; "+
+		"what that does to the rate is not worked out", names, show(farads*m.s.ohms, "s"), show(m.s.period, "s"))
 }
 
 func joinWords(a, b string) string {

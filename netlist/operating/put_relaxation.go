@@ -230,7 +230,8 @@ func (m *putModel) onResistance() {
 	if v, _, ok := m.ratings.Spread("vo"); ok && v.Nominal > least && v.Nominal < typical-valley {
 		share = ((typical-valley)/v.Nominal - 1) / ((sheetVolts-valley)/least - 1)
 	}
-	m.on = m.add(trait{name: "ron_share", doubtLow: true, note: "least on-resistance assumed at a quarter of the typical one"},
+	m.on = m.add(trait{name: "ron_share", doubtLow: true,
+		note: "least on-resistance assumed at a quarter of the typical one"},
 		quantity.Spread{Low: share / 4, Nominal: share, High: 1})
 	if f := m.ratings.Figures["vo"]; f.HasMin && f.HasMax && f.Min == f.Max {
 		m.box[m.on].Low, m.box[m.on].Nominal = 1, 1
@@ -257,13 +258,15 @@ func (m *putModel) networks() error {
 		return err
 	}
 	m.outlet, m.share, m.pulseFarads = n["cathode"], m.on, 0
-	m.keepOff = append(append([]*circuit.Element{}, m.stage.Parts[stage.TimingResistor]...), m.stage.Parts[stage.GateDivider]...)
-	m.keepOff = append(m.keepOff, m.stage.Parts[stage.GateShunt]...)
+	for _, role := range [...]stage.Role{stage.TimingResistor, stage.GateDivider, stage.GateShunt} {
+		m.keepOff = append(m.keepOff, m.stage.Parts[role]...)
+	}
 	if err := m.readyToEmpty(); err != nil {
 		return err
 	}
 	at := m.standing.node
-	m.at0 = putNodes{gate: at(n["gate"]), cathode: at(n["cathode"]), upper: at(n["upper"]), lower: at(n["lower"])}
+	m.at0 = putNodes{gate: at(n["gate"]), cathode: at(n["cathode"]), upper: at(n["upper"]),
+		lower: at(n["lower"])}
 	m.gateOf = make([]float64, m.standing.solver.Nodes())
 	return m.capacitors(n["capacitor"])
 }

@@ -41,7 +41,8 @@ func (u *rampReading) diverting(inner circuit.NodeID) {
 	}
 	for _, p := range u.w.On(inner) {
 		if e := p.Element; !u.isOwn(e) && !slices.Contains(s.Parts[GateShunt], e) {
-			s.Beside = append(s.Beside, e.Designator+" hangs between the crossed transistors; what it does there is not worked out")
+			s.Beside = append(s.Beside, e.Designator+
+				" hangs between the crossed transistors; what it does there is not worked out")
 		}
 	}
 }

@@ -50,7 +50,9 @@ func (u *rampReading) read() {
 // divider collects what sets the gate's voltage: everything that carries dc from
 // the gate to the rails or to the cathode.
 func (u *rampReading) divider() string {
-	quiet := func(n circuit.NodeID) bool { return u.isRail(n) || n == u.node || n == u.terminal || n == u.outlet }
+	quiet := func(n circuit.NodeID) bool {
+		return u.isRail(n) || n == u.node || n == u.terminal || n == u.outlet
+	}
 	area := u.w.Walk([]circuit.NodeID{u.control}, carriesDC, quiet)
 	list := prune(u.w, area.Elements, func(n circuit.NodeID) bool { return n == u.control || quiet(n) })
 	if len(list) == 0 && !u.w.IsFixed(u.control) {
