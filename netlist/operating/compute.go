@@ -53,6 +53,7 @@ func account(w *circuit.Wiring, s *stage.Stage) *Account {
 	for _, because := range s.Beside {
 		a.Unchecked = append(a.Unchecked, Unchecked{Because: because})
 	}
+	a.Unchecked = append(a.Unchecked, sourceNotes(s)...)
 	switch s.Kind {
 	case stage.UJTOscillator:
 		a.oscillator(w, s)

@@ -3,6 +3,7 @@ package operating
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"standoff/netlist/part"
 	"standoff/netlist/stage"
@@ -38,6 +39,10 @@ func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 	}
 	if m.source != nil {
 		m.figure("current_source_voltage", "V", func() float64 { return m.room }, m.sourceWorking)
+		m.figure("current_source_headroom", "V", func() float64 { return m.room - m.source.least(m.point) }, func() string {
+			return fmt.Sprintf("%s across %s at the peak less the %s that it needs", show(m.room, "V"), m.source.element.Designator,
+				show(m.source.least(m.point), "V"))
+		})
 	}
 	m.figure("timing_capacitance", "F", func() float64 { return s.c }, func() string {
 		return "all capacitors from the " + m.terminal + " to the rails"
@@ -152,6 +157,10 @@ func (m *relaxation) timeFigures(law string) {
 	rate := func(name, unit string, of func() float64, working func() string) {
 		m.figure(name, unit, of, working)
 		m.last().gated = true
+	}
+	m.evaluate(m.nominal())
+	if _, discharge, ok := strings.Cut(law, " + "); ok && s.rth > noPath {
+		law = "T = C (V_P - V_V)/I + " + discharge
 	}
 	rate("period", "s", func() float64 { return s.period }, func() string {
 		return law + " = " + show(s.charge, "s") + " + " + show(s.discharge, "s")

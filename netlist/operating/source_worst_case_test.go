@@ -26,7 +26,7 @@ func (d *deckMaker) source() {
 	case 3: // mirror
 		d.resistor("vcc", "ea", 100, 2e3)
 		d.resistor("vcc", "ee", 100, 2e3)
-		d.card("Q1 e b ee QP\nQ2 b b ea QP\n.model QP PNP(bf=100)")
+		d.card("Q1 e b ee QP\nQ2 b b ea QP\n.model QP PNP(bf=100%s)", [...]string{"", " vaf=40"}[d.IntN(2)])
 		d.resistor("b", "0", 1e4, 1e6)
 	case 4: // junction field-effect transistor
 		d.card("J1 vcc jg s JX\n.model JX NJF(vto_min=-3 vto_max=-1 idss_min=2m idss_max=6m)")

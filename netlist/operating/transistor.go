@@ -23,7 +23,7 @@ const reverseGain = 1
 
 // transistor adds a bipolar transistor: two piecewise-linear junctions, of whose
 // currents the gains' shares flow on to the far side (Ebers and Moll's transistor,
-// straight in pieces). Early's effect is left out.
+// straight in pieces), and the rise of the current with the voltage where the card gives vaf.
 func (m *mesh) transistor(e *circuit.Element) error {
 	c, okC := e.Pin("collector")
 	b, okB := e.Pin("base")
@@ -35,7 +35,7 @@ func (m *mesh) transistor(e *circuit.Element) error {
 	nc, nb, ne := m.node(c), m.node(b), m.node(emitter)
 	forward := m.junction(e, v, [3]network.Node{nb, ne, nc})
 	forward.gain = m.bench.gain(e)
-	j := junctionAt{branch: forward.branch, a: nb, c: ne, slope: leastSlope, own: m.bench.mismatched(e)}
+	j := junctionAt{branch: forward.branch, a: nb, c: ne, own: m.bench.mismatched(e)}
 	if e.Kind == circuit.PNP {
 		j.a, j.c = ne, nb
 	}
@@ -43,6 +43,9 @@ func (m *mesh) transistor(e *circuit.Element) error {
 	back := m.junction(e, v, [3]network.Node{nb, nc, ne})
 	back.gain = m.bench.exactGain(e)
 	m.branches = append(m.branches, forward, back)
+	if v, ok := cardSpread(e, "vaf"); ok && v.Low > 0 {
+		m.early(e, v, [2]network.Node{nc, ne})
+	}
 	high, low := nc, ne
 	if e.Kind == circuit.PNP {
 		high, low = ne, nc
@@ -50,6 +53,20 @@ func (m *mesh) transistor(e *circuit.Element) error {
 	m.sources = append(m.sources, &regulated{element: e, high: high, low: low, greatest: math.Inf(1), upTo: math.Inf(1), assumed: true,
 		least: func([]float64) float64 { return saturation }})
 	return nil
+}
+
+// early adds the output resistance of a transistor, V_AF over the current of its last junction on
+// the nominal board (Early's effect; SPICE's vaf).
+func (m *mesh) early(e *circuit.Element, volts quantity.Spread, ends [2]network.Node) {
+	v := m.bench.add(trait{name: "vaf of " + e.Designator, unit: "V"}, volts)
+	k := len(m.junctions) - 1
+	m.branches = append(m.branches, meshBranch{branch: m.net.Resistor(ends[0], ends[1]), slot: slot{index: -1, tempco: -1}, zener: -1,
+		set: func(x []float64) float64 {
+			if m.junctions[k].slope == 0 {
+				return math.Inf(1)
+			}
+			return x[v] * m.junctions[k].slope / thermal
+		}})
 }
 
 // junction adds one junction of a transistor: from base to near (npn), with its
@@ -115,7 +132,7 @@ func (b *bench) baseEmitter(e *circuit.Element) int {
 }
 
 // junctionAt is a base-emitter junction in the solver: anode and cathode, the slope resistance at
-// its working current, and the variable of its mismatch, -1 for none.
+// its working current - 0 until that is known -, and the variable of its mismatch, -1 for none.
 type junctionAt struct {
 	branch network.Branch
 	a, c   network.Node
@@ -126,7 +143,7 @@ type junctionAt struct {
 // shape sets the slope resistance of a junction at a point. A mismatch counts there: at the same
 // voltage the currents of two junctions stand in the ratio exp(mismatch q/kT), however large they are.
 func (j *junctionAt) shape(s *network.Solver, x []float64) {
-	slope := j.slope
+	slope := max(j.slope, leastSlope)
 	if j.own >= 0 {
 		slope *= math.Exp(x[j.own] / thermal)
 	}
@@ -152,7 +169,7 @@ func (c *charging) slopes(nominal []float64, lower network.Node) {
 			if !m.solver.Conducts(j.branch) {
 				continue
 			}
-			amperes := (m.solver.Voltage(j.a) - m.solver.Voltage(j.c) - m.solver.Values[j.branch]) / j.slope
+			amperes := (m.solver.Voltage(j.a) - m.solver.Voltage(j.c) - m.solver.Values[j.branch]) / max(j.slope, leastSlope)
 			j.slope = min(max(thermal/max(amperes, 1e-12), leastSlope), greatestSlope)
 		}
 	}
