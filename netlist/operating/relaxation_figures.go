@@ -22,7 +22,7 @@ func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 	m.figure("valley_current_available", "A", func() float64 { return s.iv }, valleyWorking)
 	m.last().guided = true
 	m.evaluate(m.nominal())
-	if len(m.stage.Parts[stage.TimingResistor]) > 0 && s.rth < noPath && m.source == nil {
+	if len(m.stage.Parts[stage.TimingResistor]) > 0 && s.rth < noPath && s.vth > s.lower && m.source == nil {
 		m.figure("timing_resistance", "ohm", func() float64 { return s.rth }, func() string {
 			return "resistance of the charging network as the capacitor sees it"
 		})
@@ -51,11 +51,17 @@ func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 
 func (m *relaxation) peakWorking() string {
 	s := m.cycle
-	if s.rth > noPath {
-		return show(s.atPeak, "A") + " from the charging network at V_P = " + show(s.vp, "V")
-	}
-	return fmt.Sprintf("(V_th - V_P)/R_th = (%s - %s)/%s = %s", show(s.vth-s.lower, "V"), show(s.vp, "V"),
+	working := fmt.Sprintf("(V_th - V_P)/R_th = (%s - %s)/%s = %s", show(s.vth-s.lower, "V"), show(s.vp, "V"),
 		show(s.rth, "ohm"), show(s.atPeak, "A"))
+	if s.rth > noPath || s.vth < s.lower {
+		working = show(s.atPeak, "A") + " from the charging network at V_P = " + show(s.vp, "V")
+	}
+	if s.atPeak < 0 {
+		for _, e := range m.stage.Clamps {
+			working += "; " + e.Designator + " can hold the capacitor down, and dc on the board sets its base"
+		}
+	}
+	return working
 }
 
 func (m *relaxation) valleyWorking() string {
