@@ -28,14 +28,15 @@ func (s *Solver) Headroom(to []float64) []float64 {
 }
 
 // Reach returns how far the potentials of the last solution can go on along rise (volt for each
-// unit) until the first diode comes to the end of its segment: in units, +Inf where none does.
-func (s *Solver) Reach(rise []float64) float64 {
+// unit), times a direction of +1 or -1, until the first diode comes to the end of its segment: in
+// units, +Inf where none does.
+func (s *Solver) Reach(rise []float64, direction float64) float64 {
 	units := math.Inf(1)
 	for i := range s.diodes {
 		d := &s.diodes[i]
 		b := s.branches[d.branch]
 		low, high := d.ends(s.Values[d.branch])
-		switch slope := rise[b.a] - rise[b.b]; {
+		switch slope := direction * (rise[b.a] - rise[b.b]); {
 		case slope > 0 && !math.IsInf(high, 1):
 			units = min(units, (high-s.across(d))/slope)
 		case slope < 0 && !math.IsInf(low, -1):

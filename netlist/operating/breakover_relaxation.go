@@ -222,7 +222,7 @@ func (m *breakoverModel) direction() {
 	}
 	m.evaluate(m.nominal())
 	if m.s.reach < 0 {
-		m.sign = -1
+		m.sign, m.falls = -1, true
 	}
 	_, _, oneSided := m.ratings.Limit("vr")
 	m.blocked = oneSided && faces != (m.sign > 0)

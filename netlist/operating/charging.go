@@ -25,7 +25,8 @@ type charging struct {
 	watched  *regulated     // a current source, nil for none
 	held     float64        // the voltage at which the net was seized last, NaN for none
 	across   float64        // what stood across it when the net was seized last
-	reach    float64        // how far the net may rise from there on the same straight piece
+	rise     float64        // how far the net may rise from there on the same straight piece
+	fall     float64        // and how far it may fall
 	grip     network.Branch // what holds the capacitor's net at a voltage, in a network that bends
 }
 
@@ -79,7 +80,8 @@ func (c *charging) seize(volts float64) {
 		c.across = c.mesh.across(c.watched)
 	}
 	solver.Transfer(c.node, c.transfer)
-	c.reach = solver.Reach(c.transfer) * c.transfer[c.node]
+	c.rise = solver.Reach(c.transfer, 1) * c.transfer[c.node]
+	c.fall = solver.Reach(c.transfer, -1) * c.transfer[c.node]
 	c.held = volts
 	solver.Values[c.probe], solver.Values[c.grip] = amperes, noGrip
 	solver.SolveHeld()
@@ -167,15 +169,21 @@ const beyond = 1e-7
 
 // climb adds the way from one voltage to another, piece after piece.
 func (r *ramp) climb(from, to float64) {
-	c, at := r.charging, from
-	for n := 0; from < to; n++ {
-		p := c.tangent(at)
-		end := min(at+c.reach, to)
-		if n == maxPieces {
-			end = to
+	c, at, falls := r.charging, from, to < from
+	for n := 0; from != to; n++ {
+		p, end := c.tangent(at), to
+		switch {
+		case n == maxPieces:
+		case falls:
+			end = max(at-c.fall, to)
+		default:
+			end = min(at+c.rise, to)
 		}
 		r.add(p, from, end)
 		from, at = end, min(end+beyond, to)
+		if falls {
+			at = max(end-beyond, to)
+		}
 	}
 }
 

@@ -30,6 +30,7 @@ type relaxation struct {
 
 	terminal string // where the device takes the charge in, in words
 	leaks    bool   // the device leaks besides the capacitors
+	falls    bool   // the capacitor charges below the lower rail
 	// bentWindow says that the valley side of the window bends too.
 	bentWindow bool
 	// follows says that the valley may lie so near the peak that it follows it: some

@@ -187,6 +187,9 @@ func (m *relaxation) firstPulse() float64 {
 	}
 	empty := *m.cycle
 	empty.vv = 0
+	if m.falls {
+		empty.vp, empty.atPeak = -empty.vp, -empty.atPeak
+	}
 	seconds, _ := m.charging.time(&empty)
 	return seconds
 }

@@ -70,3 +70,26 @@ func TestCurrentSourcesOfEveryKind(t *testing.T) {
 		}
 	}
 }
+
+// A board on a negative supply, its diodes and transistors turned round, does what the board on the
+// positive one does.
+func TestNegativeSupplyMirrorsThePositive(t *testing.T) {
+	const positive = "t\nV1 vcc 0 60\nD1 b vcc DZ\nR1 b 0 47k\nR2 vcc ee 10k\nQ1 e b ee QT\nD2 e f DX\nR3 f vcc 1meg\n" +
+		"C1 e 0 100n\nX1 e k DB3\nR4 k 0 22\n.model QT PNP(bf=150)\n.model DZ D(bv=4.7)\n.model DX D\n"
+	negative := strings.NewReplacer("vcc 0 60", "vcc 0 -60", "D1 b vcc", "D1 vcc b", "D2 e f", "D2 f e", "PNP", "NPN").Replace(positive)
+	a, b := accountOf(t, positive), accountOf(t, negative)
+	for _, name := range []string{"period", "first_pulse", "charging_current_at_peak", "charging_current_at_valley",
+		"current_source_voltage", "ramp_nonlinearity"} {
+		p, ok := a.Figure(name)
+		n, also := b.Figure(name)
+		if !ok || !also {
+			t.Errorf("no %s: %v %v", name, a.Unchecked, b.Unchecked)
+			continue
+		}
+		for k, pair := range [][2]float64{{p.Low, n.Low}, {p.Nominal, n.Nominal}, {p.High, n.High}} {
+			if pair[0] <= 0 && name != "ramp_nonlinearity" || math.Abs(pair[0]-pair[1]) > 1e-6*math.Abs(pair[0]) {
+				t.Errorf("%s: %g on the positive supply, %g on the negative (%d)", name, pair[0], pair[1], k)
+			}
+		}
+	}
+}
