@@ -78,6 +78,9 @@ func (b *bench) law(e *circuit.Element, wired *stage.Regulator) (*regulated, err
 	return r, b.perKelvin(r, e, ohms)
 }
 
+// leastSetting is the least resistance in ohm that sets a current: no more than a wire.
+const leastSetting = 1e-3
+
 // setting returns the resistance of the network that sets a current, nil for none.
 // One end of it is the low end of the source, the other hangs on its third terminal.
 func (b *bench) setting(set []*circuit.Element, low circuit.NodeID) (func(x []float64) float64, error) {
@@ -86,7 +89,7 @@ func (b *bench) setting(set []*circuit.Element, low circuit.NodeID) (func(x []fl
 	}
 	if len(set) == 1 {
 		s := b.element(set[0])
-		return func(x []float64) float64 { return b.value(s, x) }, nil
+		return func(x []float64) float64 { return max(b.value(s, x), leastSetting) }, nil
 	}
 	m := &mesh{bench: b, nodes: map[circuit.NodeID]network.Node{b.w.Net(low): 0}, have: map[*circuit.Element]bool{}}
 	for _, e := range set {
@@ -112,7 +115,7 @@ func (b *bench) setting(set []*circuit.Element, low circuit.NodeID) (func(x []fl
 		m.load(x)
 		m.solver.Solve()
 		m.solver.Transfer(at, rise)
-		return rise[at]
+		return max(rise[at], leastSetting)
 	}, nil
 }
 

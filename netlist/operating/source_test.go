@@ -39,6 +39,9 @@ func TestCurrentSourcesOfEveryKind(t *testing.T) {
 		{"control voltage", "V2 in 0 3\nQ1 b in n QN\nR2 n 0 10k\nQ2 b b vcc QP\nQ3 e b vcc QP\n", "R2", "Q1 Q2 Q3", share * (3 - 0.65) / 10e3 / 1.02, 0.005},
 		{"field-effect transistor", "J1 vcc e s JN\nR2 s e 10k\n.model JN NJF(vto=-2 beta=0.25m)\n", "R2", "J1", 0.128348e-3, 1e-4},
 		{"p channel", "J1 e vcc s JP\nR2 vcc s 10k\n.model JP PJF(vto=2 beta=0.25m)\n", "R2", "J1", 0.128348e-3, 1e-4},
+		{"behind a gate stopper", "J1 vcc g s JN\nR1 g e 1k\nR2 s e 10k\n.model JN NJF(vto=-2 beta=0.25m)\n", "R2", "J1", 0.128348e-3, 1e-4},
+		{"potentiometer", "J1 vcc e s JN\nR2 s m 1k\nR3 m e 9k\n*> R3 travel=0..9k\n.model JN NJF(vto=-2 beta=0.25m)\n", "R2 R3", "J1",
+			0.128348e-3, 1e-4},
 		{"gate on its source", "J1 vcc e e JN\n.model JN NJF(vto=-2 idss=0.2m)\n", "", "J1", 0.2e-3, 1e-6},
 		{"three-terminal source", "X1 vcc r e LM334\nR2 r e 680\n", "R2", "X1", 67.7e-3 / 680, 0.005},
 		// The sheet's circuit without drift: R2 ten times R1, 0.134 V over R1.

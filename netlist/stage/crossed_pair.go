@@ -33,7 +33,9 @@ func (r *recogniser) crossedPair(anchor *circuit.Element, nets []circuit.NodeID)
 func (u *rampReading) diverting(inner circuit.NodeID) {
 	s := u.stage
 	for _, end := range [2]circuit.NodeID{u.outlet, u.lower} {
-		if list := resistorsBetween(u.w, inner, end, nil); len(list) > 0 {
+		list := resistorsBetween(u.w, inner, end, nil)
+		wire := func(e *circuit.Element) bool { return e.Value.Low <= 0 }
+		if len(list) > 0 && !slices.ContainsFunc(list, wire) {
 			s.Nodes["diverted"] = end
 			s.add(GateShunt, list...)
 			break

@@ -10,8 +10,9 @@ import (
 // transistors that can pull it down. It returns the nets on which the sources stand, and
 // whether any charges.
 func (u *rampReading) sources(nets []circuit.NodeID) (at []circuit.NodeID, charge bool) {
+	inside := func(n circuit.NodeID) bool { return n == u.node || slices.Contains(nets, n) && !u.ends(n) }
 	for _, n := range nets {
-		if n != u.node && u.ends(n) {
+		if !inside(n) {
 			continue
 		}
 		for _, p := range u.w.On(n) {
@@ -22,7 +23,7 @@ func (u *rampReading) sources(nets []circuit.NodeID) (at []circuit.NodeID, charg
 			case isBipolar(e):
 				charges = u.transistor(e, n)
 			default:
-				charges = u.regulator(e, n)
+				charges = u.regulator(e, inside)
 			}
 			if charges {
 				at, charge = append(at, n), true
@@ -42,10 +43,10 @@ func (u *rampReading) isSource(e *circuit.Element) bool {
 	return slices.Contains(u.stage.Parts[CurrentSource], e) || slices.Contains(u.stage.Clamps, e)
 }
 
-// regulator takes in a two-terminal current source on a net.
-func (u *rampReading) regulator(e *circuit.Element, n circuit.NodeID) bool {
+// regulator takes in a two-terminal current source of which one end lies inside the charging network.
+func (u *rampReading) regulator(e *circuit.Element, inside func(circuit.NodeID) bool) bool {
 	r, ok := RegulatorOf(u.w, e)
-	if !ok || r.High != n && r.Low != n && r.Foot != n {
+	if !ok || inside(r.High) == inside(r.Low) {
 		return false
 	}
 	u.stage.add(CurrentSource, e)
@@ -54,7 +55,7 @@ func (u *rampReading) regulator(e *circuit.Element, n circuit.NodeID) bool {
 		u.stage.add(CurrentSource, r.Diode)
 		u.stage.add(TimingResistor, r.Bypass)
 	}
-	if r.High == n {
+	if inside(r.High) {
 		return u.leadsAway(r.Low)
 	}
 	return u.leadsAway(r.High)

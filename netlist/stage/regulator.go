@@ -46,7 +46,7 @@ func RegulatorOf(w *circuit.Wiring, e *circuit.Element) (r Regulator, ok bool) {
 		}
 		between = w.Net(n)
 	case circuit.NJF, circuit.PJF:
-		r.High, between, r.Low = pin("drain"), pin("source"), pin("gate")
+		r.High, between, r.Low = pin("drain"), pin("source"), behindStopper(w, pin("gate"))
 	default:
 		return r, false
 	}
@@ -61,6 +61,21 @@ func RegulatorOf(w *circuit.Wiring, e *circuit.Element) (r Regulator, ok bool) {
 		r.High, r.Low = r.Low, r.High
 	}
 	return r, ok && r.High != r.Low
+}
+
+// behindStopper returns the far side of a resistor that stands alone in a gate's lead, else the
+// gate's own net.
+func behindStopper(w *circuit.Wiring, gate circuit.NodeID) circuit.NodeID {
+	pins := w.On(gate)
+	if w.IsFixed(gate) || len(pins) != 2 {
+		return gate
+	}
+	for _, p := range pins {
+		if isResistor(p.Element) {
+			return w.Other(p.Element, gate)
+		}
+	}
+	return gate
 }
 
 // withoutDrift looks for a diode behind the foot and a resistor across both, which take the
@@ -127,7 +142,7 @@ func resistorsBetween(w *circuit.Wiring, from, to circuit.NodeID, but *circuit.E
 		func(n circuit.NodeID) bool { return n == to || w.IsFixed(n) })
 	list := prune(w, area.Elements, func(n circuit.NodeID) bool { return n == from || n == to || w.IsFixed(n) })
 	for _, e := range list {
-		if !e.HasValue || e.Value.Low <= 0 || w.IsFixed(e.Nodes[0]) && w.Net(e.Nodes[0]) != to || w.IsFixed(e.Nodes[1]) && w.Net(e.Nodes[1]) != to {
+		if !e.HasValue || w.IsFixed(e.Nodes[0]) && w.Net(e.Nodes[0]) != to || w.IsFixed(e.Nodes[1]) && w.Net(e.Nodes[1]) != to {
 			return nil
 		}
 	}
