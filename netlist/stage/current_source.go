@@ -16,17 +16,17 @@ func (u *rampReading) sources(nets []circuit.NodeID) (at []circuit.NodeID, charg
 			continue
 		}
 		for _, p := range u.w.On(n) {
-			e, charges := p.Element, false
+			e, end, charges := p.Element, n, false
 			switch {
 			case u.isOwn(e) || u.isSource(e):
 				continue
 			case isBipolar(e):
 				charges = u.transistor(e, n)
 			default:
-				charges = u.regulator(e, inside)
+				end, charges = u.regulator(e, inside)
 			}
 			if charges {
-				at, charge = append(at, n), true
+				at, charge = append(at, end), true
 				if u.stage.Source == nil {
 					u.stage.Source = e
 				}
@@ -43,11 +43,12 @@ func (u *rampReading) isSource(e *circuit.Element) bool {
 	return slices.Contains(u.stage.Parts[CurrentSource], e) || slices.Contains(u.stage.Clamps, e)
 }
 
-// regulator takes in a two-terminal current source of which one end lies inside the charging network.
-func (u *rampReading) regulator(e *circuit.Element, inside func(circuit.NodeID) bool) bool {
+// regulator takes in a two-terminal current source of which one end lies inside the charging network,
+// and returns that end.
+func (u *rampReading) regulator(e *circuit.Element, inside func(circuit.NodeID) bool) (end circuit.NodeID, charges bool) {
 	r, ok := RegulatorOf(u.w, e)
 	if !ok || inside(r.High) == inside(r.Low) {
-		return false
+		return 0, false
 	}
 	u.stage.add(CurrentSource, e)
 	u.stage.add(TimingResistor, r.Set...)
@@ -56,9 +57,9 @@ func (u *rampReading) regulator(e *circuit.Element, inside func(circuit.NodeID) 
 		u.stage.add(TimingResistor, r.Bypass)
 	}
 	if inside(r.High) {
-		return u.leadsAway(r.Low)
+		return r.High, u.leadsAway(r.Low)
 	}
-	return u.leadsAway(r.High)
+	return r.Low, u.leadsAway(r.High)
 }
 
 // holds reports whether the law of a regulator of the stage counts an element in.
