@@ -47,6 +47,9 @@ func TestCurrentSourcesOfEveryKind(t *testing.T) {
 		// The sheet's circuit without drift: R2 ten times R1, 0.134 V over R1.
 		{"without drift", "X1 vcc r f LM334\nR1 r f 680\nR2 r e 6.8k\nD1 f e DX\n", "R1 R2", "X1 D1", 0.134 / 680, 0.08},
 		{"regulator diode", "X1 vcc e 1N5283\n", "", "X1", 0.22e-3, 1e-6},
+		{"follower that sets the voltage", "R7 vcc p 1k\nR8 p 0 9k\nQ5 vcc p f QN\nR9 f 0 10k\nR1 f e 47k\n", "R1 R9", "", (21.6 - 0.65 - 2) / 47e3, 0.02},
+		{"amplifier that sets the voltage", "V2 in 0 1.65\nQ5 x in n QN\nR8 n 0 1k\nR9 vcc x 3k\nR1 x e 47k\n", "R1 R9", "",
+			(24 - 3*share - 2) / 50e3, 0.02},
 		{"ideal source", "I1 vcc e 100u\n", "", "I1", 100e-6, 1e-6},
 	} {
 		text := "t\nV1 vcc 0 24\n" + c.text + rest

@@ -223,6 +223,7 @@ func (u *rampReading) charging() string {
 	})
 	ends := func(n circuit.NodeID) bool { return n == u.node || u.isRail(n) || n == u.control || n == u.outlet }
 	sources, fed := u.sources(area.Nets)
+	fed = u.feeders(area.Nets) || fed
 	list := prune(u.w, area.Elements, func(n circuit.NodeID) bool { return ends(n) || slices.Contains(sources, n) })
 	for _, e := range list {
 		if u.holds(e) {

@@ -28,28 +28,57 @@ func (u *rampReading) taps(charging *circuit.Area) {
 // isFollowable reports whether collector and emitter of a transistor lead through dc
 // parts alone to dc rails, with nothing else on the way.
 func (u *rampReading) isFollowable(e *circuit.Element) bool {
-	for _, role := range [2]string{"collector", "emitter"} {
-		n, ok := e.Pin(role)
-		if n = u.w.Net(n); !ok || n == u.node || n == u.terminal || n == u.outlet || n == u.control {
-			return false
-		}
-		area := u.w.Walk([]circuit.NodeID{n}, carriesDC, u.ends)
-		powered := false
-		for _, m := range append(slices.Clone(area.Nets), n) {
-			if u.w.IsFixed(m) {
-				if _, dc := u.w.Potential(m); !dc {
-					return false
-				}
-				powered = true
+	return u.isSettled(e, "collector") && u.isSettled(e, "emitter")
+}
+
+// isSettled reports whether a terminal of a transistor leads through dc parts alone to dc rails, with
+// nothing else on the way.
+func (u *rampReading) isSettled(e *circuit.Element, role string) bool {
+	n, ok := e.Pin(role)
+	if n = u.w.Net(n); !ok || n == u.node || n == u.terminal || n == u.outlet || n == u.control {
+		return false
+	}
+	area := u.w.Walk([]circuit.NodeID{n}, carriesDC, u.ends)
+	powered := false
+	for _, m := range append(slices.Clone(area.Nets), n) {
+		if u.w.IsFixed(m) {
+			if _, dc := u.w.Potential(m); !dc {
+				return false
 			}
-			powered = powered || u.isRail(m)
+			powered = true
 		}
-		others := slices.DeleteFunc(u.strangers(area, u.ends), func(x *circuit.Element) bool { return x == e })
-		if !powered || len(others) > 0 {
-			return false
+		powered = powered || u.isRail(m)
+	}
+	others := slices.DeleteFunc(u.strangers(area, u.ends), func(x *circuit.Element) bool { return x == e })
+	return powered && len(others) == 0
+}
+
+// feeders takes in the transistors that set the voltage from which the capacitor is charged: followers
+// and amplifiers with collector or emitter inside the charging network, whose other terminals can be worked out. It
+// reports whether any brings current from a rail.
+func (u *rampReading) feeders(nets []circuit.NodeID) bool {
+	fed := false
+	for _, n := range nets {
+		if n == u.node || u.ends(n) {
+			continue
+		}
+		for _, p := range u.w.On(n) {
+			e := p.Element
+			if !isBipolar(e) || u.isOwn(e) || u.isSource(e) || slices.Contains(u.stage.Taps, e) || !u.isSettled(e, "base") {
+				continue
+			}
+			far := "collector"
+			if collector, _ := e.Pin(far); u.w.Net(collector) == n {
+				far = "emitter"
+			}
+			end, _ := e.Pin(far)
+			if end = u.w.Net(end); (u.isRail(end) || !slices.Contains(nets, end)) && u.isSettled(e, far) {
+				u.stage.Taps = append(u.stage.Taps, e)
+				fed = fed || u.leadsAway(end)
+			}
 		}
 	}
-	return true
+	return fed
 }
 
 // isDeaf reports whether a pin draws no current: the gate of a field-effect
