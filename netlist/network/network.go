@@ -93,7 +93,8 @@ type offset struct {
 // elimination. A loop of voltage sources is a LoopError: the source that closes
 // the loop is left out and the solver returned all the same.
 func (n *Network) Compile() (*Solver, error) {
-	s := &Solver{branches: n.branches, follow: n.follow, root: make([]int, n.nodes+1), offsets: make([][]offset, n.nodes+1)}
+	s := &Solver{branches: n.branches, follow: n.follow,
+		root: make([]int, n.nodes+1), offsets: make([][]offset, n.nodes+1)}
 	err := s.tie(n)
 	s.number()
 	s.order()

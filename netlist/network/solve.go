@@ -56,7 +56,8 @@ func (s *Solver) allocate() {
 	s.gains = make([]float64, len(s.follow))
 	for i, b := range s.branches {
 		if b.kind == diode {
-			s.diodes = append(s.diodes, diodeState{branch: Branch(i), slope: 1, breakdown: math.Inf(1), breakdownSlope: 1})
+			d := diodeState{branch: Branch(i), slope: 1, breakdown: math.Inf(1), breakdownSlope: 1}
+			s.diodes = append(s.diodes, d)
 		}
 	}
 }

@@ -28,7 +28,8 @@ func (s *Solver) trace() bool {
 		copy(s.shift, full)
 	}()
 	for seed := range traceStarts {
-		t := tracer{s: s, full: full, residue: make([]float64, s.rows), direction: make([]float64, s.rows), onwards: 1, last: -1}
+		t := tracer{s: s, full: full, onwards: 1, last: -1,
+			residue: make([]float64, s.rows), direction: make([]float64, s.rows)}
 		t.start(seed)
 		if t.arrives() {
 			return true

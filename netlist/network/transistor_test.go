@@ -52,7 +52,8 @@ func TestTransistorNetworksAgreeWithAGeneralSolver(t *testing.T) {
 		}
 		var resistors []resistor
 		add := func(a, b int) {
-			resistors = append(resistors, resistor{a, b, 100 * math.Exp(r.Float64()*7), n.Resistor(network.Node(a), network.Node(b))})
+			at := n.Resistor(network.Node(a), network.Node(b))
+			resistors = append(resistors, resistor{a, b, 100 * math.Exp(r.Float64()*7), at})
 		}
 		for i := 2; i <= nodes; i++ {
 			add(i, r.IntN(i))
@@ -65,7 +66,8 @@ func TestTransistorNetworksAgreeWithAGeneralSolver(t *testing.T) {
 		var list []transistor
 		for range 1 + r.IntN(3) {
 			p := r.Perm(nodes + 1)
-			q := transistor{c: p[0], b: p[1], e: p[2], npn: r.IntN(2) == 0, forward: 0.97 + 0.029*r.Float64(), back: 0.5 * r.Float64()}
+			q := transistor{c: p[0], b: p[1], e: p[2], npn: r.IntN(2) == 0,
+				forward: 0.97 + 0.029*r.Float64(), back: 0.5 * r.Float64()}
 			a, c := q.junction(q.e)
 			q.be = n.Diode(network.Node(a), network.Node(c))
 			a, c = q.junction(q.c)
@@ -131,7 +133,8 @@ func TestTransistorNetworksAgreeWithAGeneralSolver(t *testing.T) {
 }
 
 // stampJunction adds a junction and what follows it to the equations.
-func stampJunction(add func(i, j int, g, inject float64), q transistor, near, far int, gain float64, conducts bool) {
+func stampJunction(add func(i, j int, g, inject float64), q transistor,
+	near, far int, gain float64, conducts bool) {
 	g, e := 1e-12, 0.0
 	if conducts {
 		g, e = 1, threshold

@@ -127,21 +127,22 @@ func (m *mesh) across(r *regulated) float64 {
 // sourceNotes lists what of a stage's current sources is left out.
 func sourceNotes(s *stage.Stage) []Unchecked {
 	var list []Unchecked
+	add := func(rule, because string) { list = append(list, Unchecked{rule, because}) }
 	for _, e := range s.Parts[stage.CurrentSource] {
 		name := e.Designator
 		switch e.Kind {
 		case circuit.NPN, circuit.PNP:
 			if _, ok := cardSpread(e, "vaf"); !ok && e == s.Source {
-				list = append(list, Unchecked{Because: "how the current of " + name + " rises with the voltage across it is left out: its card gives no vaf"})
+				add("", "how the current of "+name+" rises with the voltage across it is left out: its card gives no vaf")
 			}
 		case circuit.NJF, circuit.PJF:
-			list = append(list, Unchecked{"frequency-drift", "the drift of the current of " + name + " with temperature is left out"})
+			add("frequency-drift", "the drift of the current of "+name+" with temperature is left out")
 			if v, ok := cardSpread(e, "vto"); ok && v.IsExact() {
-				list = append(list, Unchecked{Because: "the card of " + name + " gives its pinch-off voltage without a spread: it was taken as exact"})
+				add("", "the card of "+name+" gives its pinch-off voltage without a spread: it was taken as exact")
 			}
 		case circuit.SourceIC:
 			if _, ok := e.Pin("r"); !ok {
-				list = append(list, Unchecked{"frequency-drift", "the temperature coefficient of " + name + " is unknown"})
+				add("frequency-drift", "the temperature coefficient of "+name+" is unknown")
 			}
 		}
 	}

@@ -29,7 +29,8 @@ func (m *mesh) regulator(e *circuit.Element) error {
 	bypass := m.net.Diode(to, middle)
 	none := slot{index: -1, tempco: -1}
 	m.branches = append(m.branches,
-		meshBranch{branch: drop, slot: none, zener: -1, set: func(x []float64) float64 { return r.least(x) / r.amperes(x) }},
+		meshBranch{branch: drop, slot: none, zener: -1,
+			set: func(x []float64) float64 { return r.least(x) / r.amperes(x) }},
 		meshBranch{branch: source, slot: none, zener: -1, set: r.amperes},
 		meshBranch{branch: bypass, slot: none, zener: -1, set: func([]float64) float64 { return 0 }})
 	m.shapes = append(m.shapes, shape{bypass, bypassSlope})
@@ -53,7 +54,7 @@ func (b *bench) law(e *circuit.Element, wired *stage.Regulator) (*regulated, err
 	if e.Ratings == nil {
 		return nil, fmt.Errorf("nothing is known of the part %s", partName(e))
 	}
-	r := &regulated{greatest: math.Inf(1), upTo: math.Inf(1)}
+	r := &regulated{element: e, greatest: math.Inf(1), upTo: math.Inf(1)}
 	least := 1.0
 	if v, _, ok := e.Ratings.Limit("v_min"); ok {
 		least = v
@@ -73,7 +74,7 @@ func (b *bench) law(e *circuit.Element, wired *stage.Regulator) (*regulated, err
 		return r, nil
 	}
 	if wired.Diode != nil {
-		return r, b.withoutDrift(r, e, wired, ohms)
+		return r, b.withoutDrift(r, wired, ohms)
 	}
 	return r, b.perKelvin(r, e, ohms)
 }
@@ -91,7 +92,8 @@ func (b *bench) setting(set []*circuit.Element, low circuit.NodeID) (func(x []fl
 		s := b.element(set[0])
 		return func(x []float64) float64 { return max(b.value(s, x), leastSetting) }, nil
 	}
-	m := &mesh{bench: b, nodes: map[circuit.NodeID]network.Node{b.w.Net(low): 0}, have: map[*circuit.Element]bool{}}
+	m := &mesh{bench: b, nodes: map[circuit.NodeID]network.Node{b.w.Net(low): 0},
+		have: map[*circuit.Element]bool{}}
 	for _, e := range set {
 		for _, n := range e.Nodes {
 			n = b.w.Net(n)
@@ -163,7 +165,8 @@ func (b *bench) perKelvin(r *regulated, e *circuit.Element, ohms func(x []float6
 //	I = ratio (V_R/R_set + (V_R + V_D)/R_bypass), V_R = v_per_k T
 //
 // (LM134/234/334 data sheet, TI SNVS746E: zero temperature coefficient current source).
-func (b *bench) withoutDrift(r *regulated, e *circuit.Element, wired *stage.Regulator, ohms func(x []float64) float64) error {
+func (b *bench) withoutDrift(r *regulated, wired *stage.Regulator, ohms func(x []float64) float64) error {
+	e := r.element
 	volts, err := b.sense(r, e)
 	if err != nil {
 		return err

@@ -39,9 +39,10 @@ func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 	}
 	if m.source != nil {
 		m.figure("current_source_voltage", "V", func() float64 { return m.room }, m.sourceWorking)
-		m.figure("current_source_headroom", "V", func() float64 { return m.room - m.source.least(m.point) }, func() string {
-			return fmt.Sprintf("%s across %s at the peak less the %s that it needs", show(m.room, "V"), m.source.element.Designator,
-				show(m.source.least(m.point), "V"))
+		needs := func() float64 { return m.source.least(m.point) }
+		m.figure("current_source_headroom", "V", func() float64 { return m.room - needs() }, func() string {
+			return fmt.Sprintf("%s across %s at the peak less the %s that it needs", show(m.room, "V"),
+				m.source.element.Designator, show(needs(), "V"))
 		})
 	}
 	m.figure("timing_capacitance", "F", func() float64 { return s.c }, func() string {

@@ -50,7 +50,8 @@ func (m *mesh) transistor(e *circuit.Element) error {
 	if e.Kind == circuit.PNP {
 		high, low = ne, nc
 	}
-	m.sources = append(m.sources, &regulated{element: e, high: high, low: low, greatest: math.Inf(1), upTo: math.Inf(1), assumed: true,
+	m.sources = append(m.sources, &regulated{element: e, high: high, low: low,
+		greatest: math.Inf(1), upTo: math.Inf(1), assumed: true,
 		least: func([]float64) float64 { return saturation }})
 	return nil
 }
@@ -60,7 +61,8 @@ func (m *mesh) transistor(e *circuit.Element) error {
 func (m *mesh) early(e *circuit.Element, volts quantity.Spread, ends [2]network.Node) {
 	v := m.bench.add(trait{name: "vaf of " + e.Designator, unit: "V"}, volts)
 	k := len(m.junctions) - 1
-	m.branches = append(m.branches, meshBranch{branch: m.net.Resistor(ends[0], ends[1]), slot: slot{index: -1, tempco: -1}, zener: -1,
+	m.branches = append(m.branches, meshBranch{branch: m.net.Resistor(ends[0], ends[1]),
+		slot: slot{index: -1, tempco: -1}, zener: -1,
 		set: func(x []float64) float64 {
 			if m.junctions[k].slope == 0 {
 				return math.Inf(1)
@@ -169,7 +171,8 @@ func (c *charging) slopes(nominal []float64, lower network.Node) {
 			if !m.solver.Conducts(j.branch) {
 				continue
 			}
-			amperes := (m.solver.Voltage(j.a) - m.solver.Voltage(j.c) - m.solver.Values[j.branch]) / max(j.slope, leastSlope)
+			volts := m.solver.Voltage(j.a) - m.solver.Voltage(j.c) - m.solver.Values[j.branch]
+			amperes := volts / max(j.slope, leastSlope)
 			j.slope = min(max(thermal/max(amperes, 1e-12), leastSlope), greatestSlope)
 		}
 	}

@@ -44,8 +44,8 @@ func (u *rampReading) isSource(e *circuit.Element) bool {
 }
 
 // regulator takes in a two-terminal current source of which one end lies inside the charging network,
-// and returns that end.
-func (u *rampReading) regulator(e *circuit.Element, inside func(circuit.NodeID) bool) (end circuit.NodeID, charges bool) {
+// and returns that end and whether it charges.
+func (u *rampReading) regulator(e *circuit.Element, inside func(circuit.NodeID) bool) (circuit.NodeID, bool) {
 	r, ok := RegulatorOf(u.w, e)
 	if !ok || inside(r.High) == inside(r.Low) {
 		return 0, false
@@ -87,7 +87,9 @@ func (u *rampReading) leads(n circuit.NodeID, depth int) bool {
 	if depth == 0 {
 		return false
 	}
-	return slices.ContainsFunc(u.stacked(area.Nets), func(emitter circuit.NodeID) bool { return u.leads(emitter, depth-1) })
+	return slices.ContainsFunc(u.stacked(area.Nets), func(emitter circuit.NodeID) bool {
+		return u.leads(emitter, depth-1)
+	})
 }
 
 // stacked returns the emitters of transistors whose collectors lie on the inner ones of some nets.
@@ -98,9 +100,10 @@ func (u *rampReading) stacked(nets []circuit.NodeID) []circuit.NodeID {
 			continue
 		}
 		for _, p := range u.w.On(n) {
-			collector, ok := p.Element.Pin("collector")
-			emitter, also := p.Element.Pin("emitter")
-			if ok && also && isBipolar(p.Element) && !u.isOwn(p.Element) && u.w.Net(collector) == n && u.w.Net(emitter) != n {
+			e := p.Element
+			collector, ok := e.Pin("collector")
+			emitter, also := e.Pin("emitter")
+			if ok && also && isBipolar(e) && !u.isOwn(e) && u.w.Net(collector) == n && u.w.Net(emitter) != n {
 				list = append(list, u.w.Net(emitter))
 			}
 		}
@@ -251,5 +254,5 @@ func (u *rampReading) clamp(e *circuit.Element, base circuit.NodeID) {
 		u.stage.Clamps = append(u.stage.Clamps, e)
 		return
 	}
-	u.stage.Beside = append(u.stage.Beside, e.Designator+" can hold the capacitor down (reset or inhibit); it is taken as off while the stage runs")
+	u.tell(e, "can hold the capacitor down (reset or inhibit); it is taken as off while the stage runs")
 }

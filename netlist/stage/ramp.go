@@ -224,7 +224,8 @@ func (u *rampReading) charging() string {
 	ends := func(n circuit.NodeID) bool { return n == u.node || u.isRail(n) || n == u.control || n == u.outlet }
 	sources, fed := u.sources(area.Nets)
 	fed = u.feeders(area.Nets) || fed
-	list := prune(u.w, area.Elements, func(n circuit.NodeID) bool { return ends(n) || slices.Contains(sources, n) })
+	kept := func(n circuit.NodeID) bool { return ends(n) || slices.Contains(sources, n) }
+	list := prune(u.w, area.Elements, kept)
 	for _, e := range list {
 		if u.holds(e) {
 			continue
@@ -292,8 +293,9 @@ func (u *rampReading) beside() {
 	for _, e := range u.strangers(charging, func(n circuit.NodeID) bool { return own(n) }) {
 		u.tell(e, "hangs on the charging network; the current it draws is not worked out")
 	}
-	base := u.w.Walk([]circuit.NodeID{u.outlet}, carriesDC, func(n circuit.NodeID) bool { return u.isRail(n) || n == u.node || n == u.terminal })
-	for _, e := range u.strangers(base, func(n circuit.NodeID) bool { return u.isRail(n) || n == u.node || n == u.terminal }) {
+	apart := func(n circuit.NodeID) bool { return u.isRail(n) || n == u.node || n == u.terminal }
+	base := u.w.Walk([]circuit.NodeID{u.outlet}, carriesDC, apart)
+	for _, e := range u.strangers(base, apart) {
 		u.tell(e, "hangs on "+u.outletWords+"; what it does there is not worked out")
 	}
 	u.besideControl()
@@ -317,7 +319,9 @@ func (u *rampReading) strangers(area *circuit.Area, outside func(circuit.NodeID)
 		for _, p := range u.w.On(n) {
 			e := p.Element
 			thyristor := e.Kind == circuit.SCR // its gate stage tells
-			if u.isOwn(e) || u.isSource(e) || u.isClamp(e) || isDeaf(p) || slices.Contains(u.stage.Taps, e) || carriesDC(e) || e.Kind == circuit.Capacitor || thyristor || slices.Contains(list, e) {
+			known := u.isOwn(e) || u.isSource(e) || u.isClamp(e) || slices.Contains(u.stage.Taps, e)
+			followed := carriesDC(e) || e.Kind == circuit.Capacitor || isDeaf(p)
+			if known || followed || thyristor || slices.Contains(list, e) {
 				continue
 			}
 			list = append(list, e)

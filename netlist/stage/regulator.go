@@ -111,7 +111,8 @@ func (r *Regulator) withoutDrift(w *circuit.Wiring, e *circuit.Element, from cir
 
 // settingNetwork returns the resistors between the third terminal and the foot; none where
 // something else hangs on the way.
-func (r *Regulator) settingNetwork(w *circuit.Wiring, e *circuit.Element, from circuit.NodeID) []*circuit.Element {
+func (r *Regulator) settingNetwork(w *circuit.Wiring, e *circuit.Element, from circuit.NodeID,
+) []*circuit.Element {
 	list := resistorsBetween(w, from, r.Foot, r.Bypass)
 	nets := []circuit.NodeID{from}
 	for _, set := range list {
@@ -124,7 +125,8 @@ func (r *Regulator) settingNetwork(w *circuit.Wiring, e *circuit.Element, from c
 		for _, p := range w.On(n) {
 			other := p.Element
 			loose := len(other.Nodes) == 2 && len(w.On(w.Other(other, n))) == 1
-			if other != e && !r.Holds(other) && !slices.Contains(list, other) && !loose && other.Kind != circuit.Capacitor {
+			own := other == e || r.Holds(other) || slices.Contains(list, other)
+			if !own && !loose && other.Kind != circuit.Capacitor {
 				return nil
 			}
 		}
@@ -142,7 +144,8 @@ func resistorsBetween(w *circuit.Wiring, from, to circuit.NodeID, but *circuit.E
 		func(n circuit.NodeID) bool { return n == to || w.IsFixed(n) })
 	list := prune(w, area.Elements, func(n circuit.NodeID) bool { return n == from || n == to || w.IsFixed(n) })
 	for _, e := range list {
-		if !e.HasValue || w.IsFixed(e.Nodes[0]) && w.Net(e.Nodes[0]) != to || w.IsFixed(e.Nodes[1]) && w.Net(e.Nodes[1]) != to {
+		third := func(n circuit.NodeID) bool { return w.IsFixed(n) && w.Net(n) != to }
+		if !e.HasValue || slices.ContainsFunc(e.Nodes, third) {
 			return nil
 		}
 	}

@@ -54,8 +54,8 @@ func (u *rampReading) isSettled(e *circuit.Element, role string) bool {
 }
 
 // feeders takes in the transistors that set the voltage from which the capacitor is charged: followers
-// and amplifiers with collector or emitter inside the charging network, whose other terminals can be worked out. It
-// reports whether any brings current from a rail.
+// and amplifiers with collector or emitter inside the charging network, whose other terminals can be
+// worked out. It reports whether any brings current from a rail.
 func (u *rampReading) feeders(nets []circuit.NodeID) bool {
 	fed := false
 	for _, n := range nets {
@@ -64,7 +64,8 @@ func (u *rampReading) feeders(nets []circuit.NodeID) bool {
 		}
 		for _, p := range u.w.On(n) {
 			e := p.Element
-			if !isBipolar(e) || u.isOwn(e) || u.isSource(e) || slices.Contains(u.stage.Taps, e) || !u.isSettled(e, "base") {
+			known := u.isOwn(e) || u.isSource(e) || slices.Contains(u.stage.Taps, e)
+			if known || !isBipolar(e) || !u.isSettled(e, "base") {
 				continue
 			}
 			far := "collector"
