@@ -22,6 +22,7 @@ func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 	m.figure("valley_current_available", "A", func() float64 { return s.iv }, valleyWorking)
 	m.last().guided = true
 	m.evaluate(m.nominal())
+	m.settleSource()
 	if len(m.stage.Parts[stage.TimingResistor]) > 0 && s.rth < noPath && s.vth > s.lower && m.source == nil {
 		m.figure("timing_resistance", "ohm", func() float64 { return s.rth }, func() string {
 			return "resistance of the charging network as the capacitor sees it"
@@ -78,8 +79,21 @@ func (m *relaxation) sourceWorking() string {
 	return fmt.Sprintf("across %s at the peak; %s at the valley", m.source.element.Designator, show(m.most, "V"))
 }
 
+// settleSource lets a transistor that is saturated from the valley on count as a switch where its
+// collector does not lie on the capacitor: what charges is the resistance between. The nominal
+// board was evaluated last.
+func (m *relaxation) settleSource() {
+	if m.source == nil || m.source.high == m.charging.node || m.source.low == m.charging.node {
+		return
+	}
+	if m.source.amperes == nil && max(m.most, m.room) < saturation {
+		m.source, m.charging.watched = nil, nil
+	}
+}
+
 // sourceLimits hold a current source against the range in which it is one.
 func (m *relaxation) sourceLimits(x func() []float64) {
+	m.settleSource()
 	r := m.source
 	if r == nil {
 		return

@@ -99,3 +99,19 @@ func TestNegativeSupplyMirrorsThePositive(t *testing.T) {
 		}
 	}
 }
+
+// A transistor that is saturated all the time and feeds a resistor is a switch: what charges
+// is the resistor, and no range of a current source is left.
+func TestSaturatedTransistorBehindAResistorIsASwitch(t *testing.T) {
+	a := accountOf(t, "t\nV1 vcc 0 24\nQ1 x b vcc QP\nR1 b 0 100k\nR2 x e 100k\n"+rest)
+	if f, ok := a.Figure("timing_resistance"); !ok || math.Abs(f.Nominal-100e3) > 100 {
+		t.Errorf("timing resistance %v", f)
+	}
+	if _, ok := a.Comparison("current_source_voltage"); ok {
+		t.Error("the switch is held against the range of a current source")
+	}
+	a = accountOf(t, "t\nV1 vcc 0 24\nQ1 x b ee QP\nD1 b vcc DZ\nR1 b 0 2k\nR3 vcc ee 10k\nR2 x e 1k\n"+rest)
+	if _, ok := a.Comparison("current_source_voltage"); !ok {
+		t.Error("the current source behind a resistor is not held against its range")
+	}
+}
