@@ -130,6 +130,10 @@ func sourceNotes(s *stage.Stage) []Unchecked {
 	add := func(rule, because string) { list = append(list, Unchecked{rule, because}) }
 	for _, e := range s.Parts[stage.CurrentSource] {
 		name := e.Designator
+		bipolar := e.Kind == circuit.NPN || e.Kind == circuit.PNP
+		if isActive(e.Kind) && !bipolar && e != s.Source && s.Source != nil {
+			add("current-source-compliance", name+" is not held against its range as "+s.Source.Designator+" is")
+		}
 		switch e.Kind {
 		case circuit.NPN, circuit.PNP:
 			if _, ok := cardSpread(e, "vaf"); !ok && e == s.Source {

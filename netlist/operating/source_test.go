@@ -32,6 +32,8 @@ func TestCurrentSourcesOfEveryKind(t *testing.T) {
 		{"mirror", "Q1 e b vcc QP\nQ2 b b vcc QP\nR1 b 0 100k\n", "R1", "Q1 Q2", (24 - 0.65) / 100e3 / 1.02, 0.005},
 		{"Wilson's mirror", "Q1 b a vcc QP\nQ2 a a vcc QP\nQ3 e b a QP\nR1 b 0 100k\n", "R1", "Q1 Q2 Q3", (24 - 1.3) / 100e3, 0.005},
 		{"ring of two", "R2 vcc ee 5k\nQ1 b ee vcc QP\nQ2 e b ee QP\nR1 b 0 47k\n", "R2", "Q1 Q2 R1", 0.65 / 5e3, 0.04},
+		{"zener fed by a regulator diode", "D1 b vcc DZ\nX1 b 0 1N5285\nR2 vcc ee 10k\nQ1 e b ee QP\n", "R2", "D1 X1 Q1",
+			share * (5 - 0.65) / 10e3, 0.005},
 		{"cascode", "D1 z vcc DZ\nR1 z y 1k\nR3 y 0 10k\nR2 vcc ee 10k\nQ1 c z ee QP\nQ2 e y c QP\n", "R2", "D1 R1 R3 Q1 Q2",
 			share * share * (5 - 0.65) / 10e3, 0.005},
 		{"two in cascade", "D1 b vcc DZ\nR1 b 0 2k\nR2 vcc ee 10k\nQ1 e b m QP\nQ2 e m ee QP\n", "R2", "D1 R1 Q1 Q2", (5 - 1.3) / 10e3, 0.005},
@@ -113,5 +115,14 @@ func TestSaturatedTransistorBehindAResistorIsASwitch(t *testing.T) {
 	a = accountOf(t, "t\nV1 vcc 0 24\nQ1 x b ee QP\nD1 b vcc DZ\nR1 b 0 2k\nR3 vcc ee 10k\nR2 x e 1k\n"+rest)
 	if _, ok := a.Comparison("current_source_voltage"); !ok {
 		t.Error("the current source behind a resistor is not held against its range")
+	}
+}
+
+// A source whose bias comes from a part that is not understood is not worked out, rather than taken for
+// dead.
+func TestUnknownBiasIsNamed(t *testing.T) {
+	a := accountOf(t, "t\nV1 vcc 0 24\nQ1 e b ee QP\nR2 vcc ee 10k\nM1 b g 0 0 MN\nR1 g 0 1k\nR3 b vcc 10k\n.model MN NMOS(vto=2)\n"+rest)
+	if !strings.Contains(a.Stage.Gap, "M1") {
+		t.Errorf("gap %q", a.Stage.Gap)
 	}
 }

@@ -225,15 +225,32 @@ func (u *rampReading) bias(e *circuit.Element, setting []*circuit.Element) []*ci
 					list = append(list, part)
 				}
 			}
-			for _, m := range area.Nets {
-				for _, p := range u.w.On(m) {
-					other := p.Element
-					bipolar := isBipolar(other) && !u.isOwn(other)
-					if !seen[other] && bipolar && !u.ends(m) {
-						seen[other] = true
-						list, queue = append(list, other), append(queue, other)
-					}
-				}
+			for _, other := range u.biasing(area, seen) {
+				seen[other] = true
+				list, queue = append(list, other), append(queue, other)
+			}
+		}
+	}
+	return list
+}
+
+// biasing returns the transistors and regulators on the inner nets of an area, and notes a part
+// whose current into one of them is not understood.
+func (u *rampReading) biasing(area *circuit.Area, seen map[*circuit.Element]bool) []*circuit.Element {
+	var list []*circuit.Element
+	for _, m := range area.Nets {
+		if u.ends(m) {
+			continue
+		}
+		for _, p := range u.w.On(m) {
+			e := p.Element
+			if seen[e] || u.isOwn(e) || carriesDC(e) || e.Kind == circuit.Capacitor || isDeaf(p) || slices.Contains(list, e) {
+				continue
+			}
+			if _, ok := RegulatorOf(u.w, e); ok || isBipolar(e) {
+				list = append(list, e)
+			} else if u.unclear == nil {
+				u.unclear = e
 			}
 		}
 	}
@@ -250,7 +267,8 @@ func (u *rampReading) clamp(e *circuit.Element, base circuit.NodeID) {
 			known = false
 		}
 	}
-	if known {
+	others := slices.DeleteFunc(u.strangers(area, u.ends), func(x *circuit.Element) bool { return x == e })
+	if known && len(others) == 0 {
 		u.stage.Clamps = append(u.stage.Clamps, e)
 		return
 	}

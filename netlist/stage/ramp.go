@@ -20,6 +20,8 @@ type rampReading struct {
 	upperVoltsKnown, lowerVoltsKnown bool
 	// unlifted takes a control as it is that leads to the lower rail alone.
 	unlifted bool
+	// unclear is a part that biases a current source in a way that is not understood.
+	unclear *circuit.Element
 	// How a fault names the three.
 	terminalWords, outletWords, controlWords string
 }
@@ -240,6 +242,9 @@ func (u *rampReading) charging() string {
 			role = GateShunt
 		}
 		u.stage.add(role, e)
+	}
+	if u.unclear != nil {
+		return "how " + u.unclear.Designator + " biases the current source is not understood"
 	}
 	if fed {
 		return ""
