@@ -272,5 +272,20 @@ func (u *rampReading) clamp(e *circuit.Element, base circuit.NodeID) {
 		u.stage.Clamps = append(u.stage.Clamps, e)
 		return
 	}
-	u.tell(e, "can hold the capacitor down (reset or inhibit); it is taken as off while the stage runs")
+	u.tell(e, clampWords)
+}
+
+const clampWords = "can hold the capacitor down (reset or inhibit); it is taken as off while the stage runs"
+
+// canClamp reports whether a field-effect transistor lies with its channel across the capacitor.
+func (u *rampReading) canClamp(e *circuit.Element) bool {
+	drain, ok := e.Pin("drain")
+	source, also := e.Pin("source")
+	if !ok || !also {
+		return false
+	}
+	if drain, source = u.w.Net(drain), u.w.Net(source); source == u.node {
+		drain, source = source, drain
+	}
+	return drain == u.node && !u.leadsAway(source)
 }

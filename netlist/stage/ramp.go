@@ -296,7 +296,11 @@ func (u *rampReading) beside() {
 	charging := u.w.Walk([]circuit.NodeID{u.node, u.terminal}, carriesDC, own)
 	u.taps(charging)
 	for _, e := range u.strangers(charging, func(n circuit.NodeID) bool { return own(n) }) {
-		u.tell(e, "hangs on the charging network; the current it draws is not worked out")
+		what := "hangs on the charging network; the current it draws is not worked out"
+		if u.canClamp(e) {
+			what = clampWords
+		}
+		u.tell(e, what)
 	}
 	apart := func(n circuit.NodeID) bool { return u.isRail(n) || n == u.node || n == u.terminal }
 	base := u.w.Walk([]circuit.NodeID{u.outlet}, carriesDC, apart)

@@ -149,6 +149,15 @@ func TestTransistorsThatHoldTheCapacitorDown(t *testing.T) {
 
 const oscillator = "V1 vcc 0 20\nR1 vcc e 100k\nC1 e 0 1u\nXQ1 e b1 b2 2N2646\nR2 vcc b2 330\nR3 b1 0 22\n"
 
+// So does a field-effect transistor across it; what its gate does is not asked.
+func TestFieldEffectTransistorThatHoldsTheCapacitorDown(t *testing.T) {
+	s := recognise(t, "V1 vcc 0 20\nVP g 0 PULSE(0 5 0 1u 1u 1m 20m)\nR1 vcc e 100k\nC1 e 0 1u\nX1 e b1 b2 2N2646\nR2 vcc b2 330\n"+
+		"R3 b1 0 22\nM1 e g 0 0 MN\n.model MN NMOS(vto=2)")[0]
+	if len(s.Beside) != 1 || !strings.HasPrefix(s.Beside[0], "M1 can hold the capacitor down") {
+		t.Errorf("beside: %q", s.Beside)
+	}
+}
+
 func TestGates(t *testing.T) {
 	for _, c := range []struct{ name, text, want string }{
 		{"direct", "XS1 a b1 0 C106D\nRL vcc a 100", "XS1: supply=V1 gate-shunt=R3 driver=XQ1 load=RL"},
