@@ -67,19 +67,19 @@ func (c *charging) seize(volts float64) {
 	solver := c.mesh.solver
 	solver.Values[c.grip] = gripOhms
 	amperes := 0.0
-	for range 4 {
+	for range maxPieces {
 		solver.Values[c.probe] = amperes - volts/gripOhms
 		solver.Solve()
+		solver.Transfer(c.node, c.transfer)
 		miss := volts - solver.Voltage(c.node)
-		amperes -= miss / gripOhms
 		if math.Abs(miss) <= 1e-9*(1+math.Abs(volts)) {
 			break
 		}
+		amperes -= miss / c.transfer[c.node]
 	}
 	if c.watched != nil { // let go, the net of an ideal source hangs on its last digits
 		c.across = c.mesh.across(c.watched)
 	}
-	solver.Transfer(c.node, c.transfer)
 	c.rise = solver.Reach(c.transfer, 1) * c.transfer[c.node]
 	c.fall = solver.Reach(c.transfer, -1) * c.transfer[c.node]
 	c.held = volts

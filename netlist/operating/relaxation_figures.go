@@ -39,10 +39,10 @@ func (m *relaxation) windowFigures(peakWorking, valleyWorking func() string) {
 		m.last().bent = true // a higher peak voltage may come with a lower peak current
 	}
 	if m.source != nil {
-		m.figure("current_source_voltage", "V", func() float64 { return m.room }, m.sourceWorking)
+		m.figure("current_source_voltage", "V", m.left, m.sourceWorking)
 		needs := func() float64 { return m.source.least(m.point) }
-		m.figure("current_source_headroom", "V", func() float64 { return m.room - needs() }, func() string {
-			return fmt.Sprintf("%s across %s at the peak less the %s that it needs", show(m.room, "V"),
+		m.figure("current_source_headroom", "V", func() float64 { return m.left() - needs() }, func() string {
+			return fmt.Sprintf("%s across %s at the peak less the %s that it needs", show(m.left(), "V"),
 				m.source.element.Designator, show(needs(), "V"))
 		})
 	}
@@ -75,8 +75,21 @@ func (m *relaxation) valleyWorking() string {
 		show(s.rth, "ohm"), show(s.atValley, "A"))
 }
 
+// left returns what is left across a current source at the peak: of a transistor no less than where it
+// surely is saturated, since how deep does not matter.
+func (m *relaxation) left() float64 {
+	if m.source.amperes == nil {
+		return max(m.room, saturated)
+	}
+	return m.room
+}
+
 func (m *relaxation) sourceWorking() string {
-	return fmt.Sprintf("across %s at the peak; %s at the valley", m.source.element.Designator, show(m.most, "V"))
+	across := "across " + m.source.element.Designator + " at the peak; "
+	if m.source.amperes == nil && m.room < saturated {
+		across = show(m.room, "V") + " " + across
+	}
+	return across + show(m.most, "V") + " at the valley"
 }
 
 // settleSource lets a transistor that is saturated from the valley on count as a switch where its
@@ -110,7 +123,7 @@ func (m *relaxation) sourceLimits(x func() []float64) {
 		m.compare(contest{name: name, limitName: limitName, unit: unit, bound: bound, value: value, limit: limit,
 			because: because, surely: surely, limitMark: r.mark, working: working})
 	}
-	add("current_source_voltage", "least_voltage", "V", Min, func() float64 { return m.room }, func() float64 { return r.least(x()) })
+	add("current_source_voltage", "least_voltage", "V", Min, m.left, func() float64 { return r.least(x()) })
 	if !math.IsInf(r.greatest, 1) {
 		because = ""
 		add("current_source_voltage_greatest", "v_max", "V", Max, func() float64 { return max(m.room, m.most) }, func() float64 { return r.greatest })

@@ -15,7 +15,7 @@ const saturation = 0.3
 
 // saturated is the collector-emitter voltage in volt below which a transistor surely is
 // no current source any more.
-const saturated = 0.1
+const saturated = 0.15
 
 // reverseGain is the current gain of a transistor run backwards, emitter and
 // collector swapped (common practice, no source).
